@@ -1,0 +1,74 @@
+// One drawing at one size, as SVG: the tolerance scheme with its curves and worst points. Works without script.
+import { useId, type ReactNode } from "react";
+import { BreakMarks, Frame, FrequencyAxis, Grid, LevelAxis, PassbandSigns } from "./drawing-frame";
+import { CurveNames, PanelCurves } from "./drawing-curves";
+import { PanelMarks } from "./drawing-marks";
+import { HatchPattern, PanelWalls, WallHandles, WallNumbers } from "./drawing-walls";
+import type { DrawingScene, PanelScene } from "./scene";
+
+interface DrawingSvgProps {
+  readonly scene: DrawingScene;
+  readonly title: string;
+  readonly description: string;
+  readonly selectedId?: string | undefined;
+}
+
+/** A composed drawing. Scales with its box; made at the size of its box, its type is 12 px. */
+export function DrawingSvg({ scene, title, description, selectedId }: DrawingSvgProps): ReactNode {
+  const id = useId();
+  const { layout, panels } = scene;
+  return (
+    <svg
+      role="img"
+      aria-labelledby={`${id}-title`}
+      aria-describedby={`${id}-description`}
+      viewBox={`0 0 ${layout.width} ${layout.height}`}
+      width="100%"
+      height="100%"
+      fontSize={12}
+      className="block tabular-nums"
+    >
+      <title id={`${id}-title`}>{title}</title>
+      <desc id={`${id}-description`}>{description}</desc>
+      <defs>
+        <HatchPattern id={`${id}-hatch`} phone={layout.phone} />
+        {panels.map((panel) => (
+          <PanelClip key={panel.layout.panel} id={clipId(id, panel)} scene={panel} />
+        ))}
+      </defs>
+      {panels.map((panel) => (
+        <g key={panel.layout.panel}>
+          <Grid layout={layout} panel={panel.layout} />
+          <Frame panel={panel.layout} />
+          <PanelWalls scene={panel} idPrefix={id} selectedId={selectedId} />
+        </g>
+      ))}
+      <PassbandSigns layout={layout} />
+      {panels.map((panel) => (
+        <g key={panel.layout.panel}>
+          <BreakMarks panel={panel.layout} />
+          <LevelAxis layout={layout} panel={panel.layout} />
+          <PanelCurves scene={panel} clipId={clipId(id, panel)} />
+          <WallNumbers scene={panel} selectedId={selectedId} />
+          <WallHandles scene={panel} selectedId={selectedId} />
+          <CurveNames scene={panel} />
+          <PanelMarks scene={panel} />
+        </g>
+      ))}
+      <FrequencyAxis layout={layout} />
+    </svg>
+  );
+}
+
+function clipId(id: string, panel: PanelScene): string {
+  return `${id}-clip-${panel.layout.panel}`;
+}
+
+function PanelClip({ id, scene }: { id: string; scene: PanelScene }) {
+  const { left, right, top, bottom } = scene.layout;
+  return (
+    <clipPath id={id}>
+      <rect x={left} y={top - 1} width={right - left} height={bottom - top + 1} />
+    </clipPath>
+  );
+}

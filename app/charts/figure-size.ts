@@ -1,0 +1,32 @@
+// How wide a figure really is, so that its type is 12 px: measured once the page runs, fixed proportions before.
+import { useEffect, useRef, useState, type RefObject } from "react";
+
+export interface FigureWidths {
+  /** px of the box for desks and of the one for phones; 0 where it is hidden, undefined before it is measured. */
+  readonly desk: number | undefined;
+  readonly phone: number | undefined;
+}
+
+export interface MeasuredFigure extends FigureWidths {
+  readonly deskRef: RefObject<HTMLDivElement | null>;
+  readonly phoneRef: RefObject<HTMLDivElement | null>;
+}
+
+/** Measures both boxes of a figure; one of them is hidden by the page's width. */
+export function useFigureWidths(): MeasuredFigure {
+  const deskRef = useRef<HTMLDivElement>(null);
+  const phoneRef = useRef<HTMLDivElement>(null);
+  const [widths, setWidths] = useState<FigureWidths>({ desk: undefined, phone: undefined });
+  useEffect(() => {
+    const measure = () => {
+      const desk = deskRef.current?.clientWidth;
+      const phone = phoneRef.current?.clientWidth;
+      // Neither shows while an ancestor is hidden: the last known stays.
+      if (desk || phone) setWidths((known) => (known.desk === desk && known.phone === phone ? known : { desk, phone }));
+    };
+    const observer = new ResizeObserver(measure);
+    for (const box of [deskRef.current, phoneRef.current]) if (box) observer.observe(box);
+    return () => observer.disconnect();
+  }, []);
+  return { deskRef, phoneRef, ...widths };
+}

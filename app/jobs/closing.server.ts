@@ -1,0 +1,2 @@
+// Stub.
+export async function runClosingLoop(_options: { signal: AbortSignal }): Promise<void> {}

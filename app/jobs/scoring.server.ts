@@ -1,0 +1,2 @@
+// Stub.
+export async function runScoringLoop(_options: { signal: AbortSignal }): Promise<void> {}

@@ -1,0 +1,113 @@
+// Assessments of group delay and its variation, from the unwrapped phase of S21.
+import { adviseMargin } from "./advice.ts";
+import { assessPoints } from "./assess-points.ts";
+import { assessSpread, statedEnds } from "./assess-spread.ts";
+import { withAdvice } from "./assess-levels.ts";
+import { unreached, type Assessment, type Frame } from "./assessment.ts";
+import type { Band, Requirement, Series } from "./contract.ts";
+import { segmentsWithin, valueBetween, type Segment } from "./coverage.ts";
+import { readingsOf, type Readings } from "./curves.ts";
+import { formatFigure } from "./describe.ts";
+import { locate } from "./frequency.ts";
+import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
+
+type Line<K extends Requirement["kind"]> = Extract<Requirement, { readonly kind: K }>;
+
+/** A margin within this share of the limit is zero. */
+const RELATIVE_TOLERANCE = 1e-9;
+const DEGREES_PER_TURN = 360;
+
+export function assessGroupDelay(line: Line<"group-delay">, band: Band, sweeping: Sweeping): Assessment {
+  const readings = delayReadings(line, band, sweeping, sweeping.setup.groupDelay ?? 0);
+  const tolerance = RELATIVE_TOLERANCE * line.max;
+  if (readings === undefined) return unreached(line.max, nothingOf(band, tolerance), notMeasuredReason("S21"));
+  const points = { band, limit: line.max, isUpperLimit: true, maxStep: line.maxStep, tolerance, standing: true };
+  const found = assessPoints(readings, points);
+  return withAdvice(found, () => adviseMargin(formatFigure(-found.marginInterval[0], line.kind)));
+}
+
+/** Variation: maximum minus minimum of the delay; its uncertainty is √2 times a point's, the errors being independent. */
+export function assessDelayVariation(line: Line<"group-delay-variation">, band: Band, sweeping: Sweeping): Assessment {
+  const readings = delayReadings(line, band, sweeping, 0);
+  const tolerance = RELATIVE_TOLERANCE * line.max;
+  if (readings === undefined) return unreached(line.max, nothingOf(band, tolerance), notMeasuredReason("S21"));
+  const uncertainty = Math.SQRT2 * (sweeping.setup.groupDelay ?? 0);
+  const { kind, max, window, maxStep } = line;
+  const endsOf = (largest: number, least: number) => statedEnds(largest - least, uncertainty);
+  return assessSpread(readings, { kind, band, max, window, maxStep, tolerance, endsOf }).assessment;
+}
+
+function nothingOf(band: Band, tolerance: number): Frame {
+  return { band, standing: true, tolerance, covered: [], missing: [band] };
+}
+
+function delayReadings(
+  line: { readonly aperture?: number; readonly maxStep?: number },
+  band: Band,
+  { curves }: Sweeping,
+  uncertainty: number,
+): Readings | undefined {
+  if (!curves.isMeasured("s21")) return undefined;
+  const { frequency } = curves;
+  const phase = curves.phase();
+  const sweep: Band = [frequency[0]!, frequency[frequency.length - 1]!];
+  const runs = segmentsWithin(frequency, phase, sweep, line.maxStep);
+  const delay =
+    line.aperture === undefined
+      ? { frequency, value: delayOfNeighbours(frequency, phase, runs) }
+      : delayOverAperture(frequency, phase, runs, band, line.aperture);
+  return readingsOf(
+    delay.frequency,
+    delay.value,
+    (value) => [value - uncertainty, value + uncertainty],
+    uncertainty === 0,
+  );
+}
+
+/** Central differences over the neighbours, one-sided at the ends of a run; s, NaN where a run is a lone sample. */
+function delayOfNeighbours(frequency: Series, phase: Series, runs: readonly Segment[]): Series {
+  const delay = new Float64Array(frequency.length).fill(NaN);
+  for (const { first, last } of runs) {
+    if (last === first) continue;
+    for (let index = first; index <= last; index += 1) {
+      const below = Math.max(first, index - 1);
+      const above = Math.min(last, index + 1);
+      const turns = (phase[above]! - phase[below]!) / DEGREES_PER_TURN;
+      delay[index] = -turns / (frequency[above]! - frequency[below]!);
+    }
+  }
+  return delay;
+}
+
+/** Delay over a fixed aperture, phase linear between samples, at the samples and at the edges of the band. */
+function delayOverAperture(
+  frequency: Series,
+  phase: Series,
+  runs: readonly Segment[],
+  band: Band,
+  aperture: number,
+): { readonly frequency: Series; readonly value: Series } {
+  const edges = band.filter((hz, index) => band.indexOf(hz) === index && !locate(frequency, hz).exact);
+  const grid = Float64Array.from([...frequency, ...edges]).sort();
+  const value = new Float64Array(grid.length).fill(NaN);
+  let run = 0;
+  grid.forEach((hz, index) => {
+    while (run < runs.length - 1 && hz > runs[run]!.to) run += 1;
+    const { from, to } = runs[run] ?? { from: Infinity, to: -Infinity };
+    const low = hz - aperture / 2;
+    const high = hz + aperture / 2;
+    if (low < from * (1 - RELATIVE_TOLERANCE) || high > to * (1 + RELATIVE_TOLERANCE)) return;
+    const turns =
+      (phaseAt(frequency, phase, Math.min(high, to)) - phaseAt(frequency, phase, Math.max(low, from))) /
+      DEGREES_PER_TURN;
+    value[index] = -turns / aperture;
+  });
+  return { frequency: grid, value };
+}
+
+function phaseAt(frequency: Series, phase: Series, hz: number): number {
+  const { index, exact } = locate(frequency, hz);
+  if (frequency[index] === hz) return phase[index]!;
+  const below = exact && frequency[index]! < hz ? index : index - 1;
+  return valueBetween(frequency, phase, Math.min(Math.max(below, 0), frequency.length - 2), hz);
+}

@@ -1,0 +1,90 @@
+// Point-wise requirements: every sample of a band, its interpolated edges and the breakpoints of its limit.
+import { unreached, type Assessment } from "./assessment.ts";
+import type { Band, Limit } from "./contract.ts";
+import { coverageOf, segmentsWithin, valueBetween, type Segment } from "./coverage.ts";
+import type { Readings } from "./curves.ts";
+import { limitPieces, pieceLevel, type LimitPiece } from "./limits.ts";
+import { WorstPoint } from "./worst-point.ts";
+
+export interface PointwiseLine {
+  readonly band: Band;
+  readonly limit: Limit;
+  readonly isUpperLimit: boolean;
+  readonly maxStep?: number | undefined;
+  readonly tolerance: number;
+  readonly standing: boolean;
+}
+
+/** What is subtracted from every reading, with its ends: the passband's least loss for relative rejection. */
+export interface Reference {
+  readonly value: number;
+  readonly low: number;
+  readonly high: number;
+}
+
+const NO_REFERENCE: Reference = { value: 0, low: 0, high: 0 };
+
+/** The least margin of readings against a limit over the part of the band that is covered. */
+export function assessPoints(readings: Readings, line: PointwiseLine, reference = NO_REFERENCE): Assessment {
+  const { band, maxStep, tolerance, standing } = line;
+  const segments = segmentsWithin(readings.frequency, readings.value, band, maxStep);
+  const frame = { band, standing, tolerance, ...coverageOf(segments, band) };
+  const pieces = limitPieces(line.limit, band);
+  const worst = new WorstPoint(line.isUpperLimit, tolerance);
+  for (const piece of pieces) {
+    const isWhole = pieces.length === 1;
+    const parts = isWhole
+      ? segments
+      : segmentsWithin(readings.frequency, readings.value, [piece.from, piece.to], maxStep);
+    for (const part of parts) addSegment(worst, readings, part, piece, reference);
+  }
+  if (worst.isEmpty) return unreached(typeof line.limit === "number" ? line.limit : NaN, frame);
+  return { ...frame, ...worst.figures() };
+}
+
+function addSegment(
+  worst: WorstPoint,
+  readings: Readings,
+  part: Segment,
+  piece: LimitPiece,
+  reference: Reference,
+): void {
+  forEachReading(readings, part, (value, low, high, hz) => {
+    const limit = piece.slope === 0 ? piece.level : pieceLevel(piece, hz);
+    worst.add(hz, value - reference.value, limit, low - reference.high, high - reference.low);
+  });
+}
+
+/** Least value over a band on readings that cover it, with the ends of that reading. */
+export function leastReading(readings: Readings, band: Band, maxStep?: number): Reference | undefined {
+  const segments = segmentsWithin(readings.frequency, readings.value, band, maxStep);
+  if (coverageOf(segments, band).missing.length > 0) return undefined;
+  const least = { value: Infinity, low: Infinity, high: Infinity };
+  const take = (value: number, low: number, high: number) => {
+    least.value = Math.min(least.value, value);
+    least.low = Math.min(least.low, low);
+    least.high = Math.min(least.high, high);
+  };
+  for (const part of segments) {
+    forEachReading(readings, part, take);
+  }
+  return least;
+}
+
+/** Every reading of a segment in ascending order, interpolated ends included. */
+export function forEachReading(
+  readings: Readings,
+  part: Segment,
+  visit: (value: number, low: number, high: number, hz: number) => void,
+): void {
+  const { frequency, value, low, high, endsBetween } = readings;
+  const visitBetween = (hz: number, below: number) => {
+    const reading = valueBetween(frequency, value, below, hz);
+    const [lower, upper] = endsBetween(reading, below, hz);
+    visit(reading, lower, upper, hz);
+  };
+  const { first, last } = part;
+  if (first > last || frequency[first]! !== part.from) visitBetween(part.from, first - 1);
+  for (let index = first; index <= last; index += 1) visit(value[index]!, low[index]!, high[index]!, frequency[index]!);
+  if (first > last || frequency[last]! !== part.to) visitBetween(part.to, last);
+}

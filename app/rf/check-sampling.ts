@@ -1,0 +1,83 @@
+// Where the sweep is too coarse to show what a requirement asks: holes, wide steps, few samples.
+
+import type { Note, Requirement, Series, TwoPort } from "./contract.ts";
+import { formatFrequency } from "./describe.ts";
+import { sameFrequency } from "./frequency.ts";
+
+/** A step this many times wider than both its neighbours is a hole in the sweep and no change of its spacing. */
+const HOLE_RATIO = 3;
+const STOPBAND_STEPS = 500;
+const PASSBAND_SAMPLES = 20;
+
+const STOPBAND_KINDS: readonly Requirement["kind"][] = ["rejection", "reverse-isolation"];
+
+export function checkSampling({ frequency }: TwoPort, requirements: readonly Requirement[] = []): Note[] {
+  return [...checkHoles(frequency), ...requirements.flatMap((requirement) => checkRequirement(frequency, requirement))];
+}
+
+const step = (frequency: Series, k: number) => (frequency[k + 1] as number) - (frequency[k] as number);
+
+function checkHoles(frequency: Series): Note[] {
+  let widest = -1;
+  let count = 0;
+  for (let k = 1; k < frequency.length - 2; k += 1) {
+    const neighbours = Math.max(step(frequency, k - 1), step(frequency, k + 1));
+    if (step(frequency, k) <= HOLE_RATIO * neighbours) continue;
+    count += 1;
+    if (widest < 0 || step(frequency, k) > step(frequency, widest)) widest = k;
+  }
+  if (widest < 0) return [];
+  const range = stretch(frequency, widest);
+  const holes = count === 1 ? "A hole in the sweep" : `${count} holes in the sweep, the widest`;
+  const message = `${holes} from ${formatFrequency(range[0])} to ${formatFrequency(range[1])}.`;
+  return [{ code: "hole", severity: "doubtful", message, frequency: range }];
+}
+
+const stretch = (frequency: Series, k: number) => [frequency[k] as number, frequency[k + 1] as number] as const;
+
+function checkRequirement(frequency: Series, requirement: Requirement): Note[] {
+  if (!("band" in requirement)) return [];
+  const isStopband = STOPBAND_KINDS.includes(requirement.kind);
+  if (requirement.maxStep !== undefined || isStopband) return checkSteps(frequency, requirement);
+  return checkSamples(frequency, requirement);
+}
+
+type BandRequirement = Extract<Requirement, { band: unknown }>;
+
+/** Steps within the band wider than maxStep, or than f/500 where none is asked. */
+function checkSteps(frequency: Series, { id, band, maxStep }: BandRequirement): Note[] {
+  let worst = -1;
+  let worstRatio = 1;
+  for (let k = 0; k < frequency.length - 1; k += 1) {
+    const [from, to] = stretch(frequency, k);
+    if (!(to > band[0] && from < band[1])) continue;
+    const allowed = maxStep ?? to / STOPBAND_STEPS;
+    const width = to - from;
+    if (width <= worstRatio * allowed || sameFrequency(width, allowed)) continue;
+    worst = k;
+    worstRatio = width / allowed;
+  }
+  if (worst < 0) return [];
+  const range = stretch(frequency, worst);
+  const width = formatFrequency(range[1] - range[0]);
+  const allowed = formatFrequency(maxStep ?? range[1] / STOPBAND_STEPS);
+  const consequence =
+    maxStep === undefined ? "a response between samples would not show" : "the stretch is not covered";
+  const message = `A step of ${width} at ${formatFrequency(range[0])}, wider than ${allowed}: ${consequence}.`;
+  return [{ code: "wide-step", severity: "doubtful", message, frequency: range, requirementId: id }];
+}
+
+function checkSamples(frequency: Series, { id, band }: BandRequirement): Note[] {
+  if (sameFrequency(band[0], band[1])) return [];
+  const inside = frequency.filter((hz) => hz >= band[0] && hz <= band[1]).length;
+  if (inside >= PASSBAND_SAMPLES || !reaches(frequency, band)) return [];
+  const samples = inside === 1 ? "1 sample" : `${inside} samples`;
+  const where = `from ${formatFrequency(band[0])} to ${formatFrequency(band[1])}`;
+  const message = `${samples} ${where}, fewer than ${PASSBAND_SAMPLES}: the worst value may lie between them.`;
+  return [{ code: "few-samples", severity: "doubtful", message, frequency: band, requirementId: id }];
+}
+
+/** Whether the sweep has a stretch in common with the band; where it has none, the evaluation says so. */
+function reaches(frequency: Series, [from, to]: readonly [number, number]): boolean {
+  return (frequency[0] as number) < to && (frequency[frequency.length - 1] as number) > from;
+}

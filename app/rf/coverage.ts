@@ -1,0 +1,112 @@
+// Coverage: which parts of a band a sweep reaches, sample by sample, and what is missing.
+import type { Band, Series } from "./contract.ts";
+import { isBelow, locate, sameFrequency } from "./frequency.ts";
+
+/**
+ * A stretch of a band without holes. Samples first..last lie in it; an end that is not a sample is interpolated between
+ * its two neighbours. `first` is `last + 1` where both ends lie between the same two samples.
+ */
+export interface Segment {
+  /** Hz. */
+  readonly from: number;
+  readonly to: number;
+  readonly first: number;
+  readonly last: number;
+}
+
+export interface Coverage {
+  readonly covered: readonly Band[];
+  readonly missing: readonly Band[];
+}
+
+/**
+ * The stretches of a band that a sweep reaches. A step wider than `maxStep` is a hole, and a sample whose value is NaN
+ * is no sample; nothing is extrapolated. A lone sample between holes is a segment of no width.
+ *
+ * @param values one per sample
+ * @param maxStep Hz; without it only the ends of the sweep and absent samples are holes
+ */
+export function segmentsWithin(frequency: Series, values: Series, band: Band, maxStep = Infinity): Segment[] {
+  const lower = locate(frequency, band[0]);
+  const upper = locate(frequency, band[1]);
+  const firstInside = lower.index;
+  const lastInside = upper.exact ? upper.index : upper.index - 1;
+  const begin = Math.max(0, lower.exact ? firstInside : firstInside - 1);
+  const end = Math.min(frequency.length - 1, upper.index);
+
+  const segments: Segment[] = [];
+  for (let start = begin; start <= end;) {
+    const stop = endOfRun(frequency, values, start, end, maxStep);
+    const isInside = stop > start || (start >= firstInside && start <= lastInside);
+    if (isInside && !Number.isNaN(values[start]!)) {
+      const first = Math.max(start, firstInside);
+      const last = Math.min(stop, lastInside);
+      const from = start < firstInside ? band[0] : frequency[first]!;
+      const to = stop > lastInside ? band[1] : frequency[last]!;
+      segments.push({ from, to, first, last });
+    }
+    start = stop + 1;
+  }
+  return segments;
+}
+
+/** Last index of the unbroken run of samples that begins at `start`. */
+function endOfRun(frequency: Series, values: Series, start: number, end: number, maxStep: number): number {
+  if (Number.isNaN(values[start]!)) return start;
+  let stop = start;
+  while (stop < end && !Number.isNaN(values[stop + 1]!)) {
+    const reach = frequency[stop]! + maxStep;
+    if (frequency[stop + 1]! > reach && !sameFrequency(frequency[stop + 1]!, reach)) break;
+    stop += 1;
+  }
+  return stop;
+}
+
+/** What a list of segments covers of a band. A lone sample covers nothing, unless the band is that one frequency. */
+export function coverageOf(segments: readonly Segment[], band: Band): Coverage {
+  return coverageOfBands(
+    segments.map(({ from, to }): Band => [from, to]),
+    band,
+  );
+}
+
+/** What a list of stretches, in any order, covers of a band together. Gaps that touch are one. */
+export function coverageOfBands(stretches: readonly Band[], band: Band): Coverage {
+  if (sameFrequency(band[0], band[1])) {
+    return stretches.length > 0 ? { covered: [band], missing: [] } : { covered: [], missing: [band] };
+  }
+  const covered: Band[] = [];
+  for (const [from, to] of stretches.toSorted((a, b) => a[0] - b[0])) {
+    const previous = covered.at(-1);
+    if (!isBelow(from, to)) continue;
+    if (previous !== undefined && !isBelow(previous[1], from)) {
+      covered[covered.length - 1] = [previous[0], Math.max(previous[1], to)];
+    } else covered.push([from, to]);
+  }
+  return { covered, missing: gapsBetween(covered, band) };
+}
+
+function gapsBetween(covered: readonly Band[], band: Band): Band[] {
+  const missing: Band[] = [];
+  let reached = band[0];
+  for (const [from, to] of covered) {
+    if (isBelow(reached, from)) missing.push([reached, from]);
+    reached = Math.max(reached, to);
+  }
+  if (isBelow(reached, band[1])) missing.push([reached, band[1]]);
+  return missing;
+}
+
+/**
+ * Value between two neighbouring samples, linear against frequency. Beside a null (an infinite loss) it is +Infinity,
+ * never NaN.
+ *
+ * @param below index of the sample below
+ */
+export function valueBetween(frequency: Series, values: Series, below: number, hz: number): number {
+  const start = values[below]!;
+  const end = values[below + 1]!;
+  if (!Number.isFinite(start) || !Number.isFinite(end)) return Number.isNaN(start + end) ? NaN : Infinity;
+  const fraction = (hz - frequency[below]!) / (frequency[below + 1]! - frequency[below]!);
+  return start + (end - start) * fraction;
+}

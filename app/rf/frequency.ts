@@ -1,0 +1,42 @@
+// Frequencies: comparison within 1e-9 relative, and the place of a frequency on a grid.
+import type { Series } from "./contract.ts";
+
+const RELATIVE_TOLERANCE = 1e-9;
+
+/** Frequencies within 1e-9 relative are one. */
+export function sameFrequency(a: number, b: number): boolean {
+  return Math.abs(a - b) <= RELATIVE_TOLERANCE * Math.max(Math.abs(a), Math.abs(b));
+}
+
+/** True where a lies below b by more than the tolerance. */
+export function isBelow(a: number, b: number): boolean {
+  return a < b && !sameFrequency(a, b);
+}
+
+/** Index of the first sample at or above a frequency; the number of samples if none is. */
+export function firstAtOrAbove(frequency: Series, hz: number): number {
+  let low = 0;
+  let high = frequency.length;
+  while (low < high) {
+    const middle = (low + high) >>> 1;
+    if (frequency[middle]! < hz) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
+/**
+ * Place of a frequency on an ascending grid.
+ *
+ * @returns `exact`: the index of the nearest sample that is the same frequency; otherwise the index of the sample above
+ */
+export function locate(frequency: Series, hz: number): { readonly index: number; readonly exact: boolean } {
+  const above = firstAtOrAbove(frequency, hz);
+  const candidates = [above - 1, above].filter(
+    (index) => index >= 0 && index < frequency.length && sameFrequency(frequency[index]!, hz),
+  );
+  if (candidates.length === 0) return { index: above, exact: false };
+  const distance = (index: number) => Math.abs(frequency[index]! - hz);
+  const nearest = candidates.reduce((best, index) => (distance(index) < distance(best) ? index : best));
+  return { index: nearest, exact: true };
+}

@@ -1,0 +1,132 @@
+// From numbers as written (DB, MA or RI; S, Y, Z, G or H) to S-parameters at the file's references.
+
+import type { Series, Trace } from "./contract.ts";
+import { TouchstoneError } from "./touchstone-error.ts";
+import type { NumberFormat, Parameter } from "./touchstone-option-line.ts";
+import { SET_STRIDE } from "./touchstone-sets.ts";
+
+/** Four traces in the order 11, 21, 12, 22. */
+export type Matrix = readonly [Trace, Trace, Trace, Trace];
+
+/** Relative size of a determinant below which it is taken for zero. */
+const SINGULAR = 1e-14;
+const RADIANS_PER_DEGREE = Math.PI / 180;
+
+export function newTrace(length: number): Trace {
+  return { re: new Float64Array(length), im: new Float64Array(length) };
+}
+
+/**
+ * One column of pairs as complex numbers.
+ *
+ * @param rows SET_STRIDE numbers a point
+ * @param pair 0 to 3: which pair of the row
+ */
+export function readPairs(rows: Float64Array, count: number, pair: number, format: NumberFormat): Trace {
+  const { re, im } = newTrace(count);
+  for (let k = 0, at = 1 + 2 * pair; k < count; k += 1, at += SET_STRIDE) {
+    const first = rows[at] as number;
+    const second = rows[at + 1] as number;
+    if (format === "RI") {
+      re[k] = first;
+      im[k] = second;
+    } else {
+      const magnitude = format === "DB" ? 10 ** (first / 20) : first;
+      const angle = second * RADIANS_PER_DEGREE;
+      re[k] = magnitude * Math.cos(angle);
+      im[k] = magnitude * Math.sin(angle);
+    }
+  }
+  return { re, im };
+}
+
+/** Refuses a number that overflowed on the way from decibels. */
+export function checkFinite(matrix: Matrix, lines: Uint32Array): void {
+  for (const { re, im } of matrix) {
+    for (let k = 0; k < re.length; k += 1) {
+      if (Number.isFinite((re[k] as number) + (im[k] as number))) continue;
+      const message = "A level too high for any number a computer keeps. Measure or export the point again.";
+      throw new TouchstoneError("not-finite", lines[k] as number, message);
+    }
+  }
+}
+
+/** What multiplies n11, n21, n12 and n22 of version 2 data (ohm, siemens) to make them normalised; version 1 data are. */
+function normalisation(parameter: Parameter, [first, second]: readonly [number, number]): readonly number[] {
+  const mean = Math.sqrt(first * second);
+  const ratio = Math.sqrt(second / first);
+  if (parameter === "Z") return [1 / first, 1 / mean, 1 / mean, 1 / second];
+  if (parameter === "Y") return [first, mean, mean, second];
+  if (parameter === "H") return [1 / first, ratio, ratio, second];
+  return [first, 1 / ratio, 1 / ratio, 1 / second];
+}
+
+export function normalise(matrix: Matrix, parameter: Parameter, references: readonly [number, number]): void {
+  const factors = normalisation(parameter, references);
+  matrix.forEach((trace, k) => {
+    scale(trace.re, factors[k] as number);
+    scale(trace.im, factors[k] as number);
+  });
+}
+
+function scale(series: Series, factor: number): void {
+  for (let k = 0; k < series.length; k += 1) series[k] = (series[k] as number) * factor;
+}
+
+/**
+ * How S follows from normalised Z, Y, H or G: with D = (1 + n11)(1 + n22) - n12 n21,
+ * S11 = sign11 ((n11 - 1)(1 + n22) - n12 n21) / D, S22 = sign22 ((1 + n11)(n22 - 1) - n12 n21) / D,
+ * S21 = 2 sign21 n21 / D, S12 = 2 sign12 n12 / D
+ * (D. A. Frickey, IEEE Trans. MTT 42(2), 1994, for real references; each follows from v = a + b, i = a - b).
+ */
+const SIGNS = {
+  Z: { s11: 1, s21: 1, s12: 1, s22: 1 },
+  Y: { s11: -1, s21: -1, s12: -1, s22: -1 },
+  H: { s11: 1, s21: -1, s12: 1, s22: -1 },
+  G: { s11: -1, s21: 1, s12: -1, s22: 1 },
+} as const;
+
+/**
+ * S-parameters, in place of normalised Y, Z, G or H.
+ *
+ * @param matrix normalised, in the order 11, 21, 12, 22; overwritten
+ * @throws TouchstoneError no-scattering where D is zero: an active network at its own resonance, or a wrong number
+ */
+export function toScattering(matrix: Matrix, parameter: Exclude<Parameter, "S">, lines: Uint32Array): void {
+  const [n11, n21, n12, n22] = matrix;
+  const signs = SIGNS[parameter];
+  for (let k = 0; k < n11.re.length; k += 1) {
+    const re11 = n11.re[k] as number;
+    const im11 = n11.im[k] as number;
+    const re22 = n22.re[k] as number;
+    const im22 = n22.im[k] as number;
+    const re21 = n21.re[k] as number;
+    const im21 = n21.im[k] as number;
+    const re12 = n12.re[k] as number;
+    const im12 = n12.im[k] as number;
+    const loopRe = re12 * re21 - im12 * im21;
+    const loopIm = re12 * im21 + im12 * re21;
+    const productRe = (1 + re11) * (1 + re22) - im11 * im22;
+    const productIm = (1 + re11) * im22 + im11 * (1 + re22);
+    const denominatorRe = productRe - loopRe;
+    const denominatorIm = productIm - loopIm;
+    const size = Math.hypot(denominatorRe, denominatorIm);
+    const terms = Math.hypot(productRe, productIm) + Math.hypot(loopRe, loopIm);
+    if (!(size > SINGULAR * terms) || !Number.isFinite(terms)) throw noScattering(parameter, lines[k] as number);
+    const inverseRe = denominatorRe / size / size;
+    const inverseIm = -denominatorIm / size / size;
+    const put = (trace: Trace, sign: number, re: number, im: number) => {
+      trace.re[k] = sign * (re * inverseRe - im * inverseIm);
+      trace.im[k] = sign * (re * inverseIm + im * inverseRe);
+    };
+    put(n11, signs.s11, (re11 - 1) * (1 + re22) - im11 * im22 - loopRe, (re11 - 1) * im22 + im11 * (1 + re22) - loopIm);
+    put(n22, signs.s22, (1 + re11) * (re22 - 1) - im11 * im22 - loopRe, (1 + re11) * im22 + im11 * (re22 - 1) - loopIm);
+    put(n21, signs.s21, 2 * re21, 2 * im21);
+    put(n12, signs.s12, 2 * re12, 2 * im12);
+  }
+}
+
+function noScattering(parameter: Parameter, line: number): TouchstoneError {
+  const message = `These ${parameter}-parameters have no S-parameters (the conversion divides by zero). Export S-parameters.`;
+  return new TouchstoneError("no-scattering", line, message);
+}

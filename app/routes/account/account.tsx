@@ -1,0 +1,4 @@
+// Stub.
+export default function Account() {
+  return <p>stub</p>;
+}

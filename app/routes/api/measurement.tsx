@@ -1,0 +1,2 @@
+// Stub.
+export const loader = () => new Response("stub");

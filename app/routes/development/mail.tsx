@@ -1,0 +1,4 @@
+// Stub.
+export default function Mail() {
+  return <p>stub</p>;
+}

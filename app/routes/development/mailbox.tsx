@@ -1,0 +1,4 @@
+// Stub.
+export default function Mailbox() {
+  return <p>stub</p>;
+}

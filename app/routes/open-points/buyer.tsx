@@ -1,0 +1,4 @@
+// Stub.
+export default function Buyer() {
+  return <p>stub</p>;
+}

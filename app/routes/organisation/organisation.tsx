@@ -1,0 +1,4 @@
+// Stub.
+export default function Organisation() {
+  return <p>stub</p>;
+}

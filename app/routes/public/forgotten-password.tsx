@@ -1,0 +1,4 @@
+// Stub.
+export default function ForgottenPassword() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function Home() {
+  return <p>stub</p>;
+}

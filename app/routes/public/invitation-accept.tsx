@@ -1,0 +1,4 @@
+// Stub.
+export default function InvitationAccept() {
+  return <p>stub</p>;
+}

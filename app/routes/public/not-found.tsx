@@ -1,0 +1,4 @@
+// Stub.
+export default function NotFound() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function PasswordReset() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function SignIn() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function QuoteFiles() {
+  return <p>stub</p>;
+}

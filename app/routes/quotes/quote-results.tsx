@@ -1,0 +1,4 @@
+// Stub.
+export default function QuoteResults() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqComparison() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqDecision() {
+  return <p>stub</p>;
+}

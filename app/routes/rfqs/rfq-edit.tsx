@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqEdit() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqHistory() {
+  return <p>stub</p>;
+}

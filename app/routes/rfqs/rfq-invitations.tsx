@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqInvitations() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqList() {
+  return <p>stub</p>;
+}

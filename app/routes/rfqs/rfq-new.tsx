@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqNew() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function RfqOverview() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function SpecificationEdit() {
+  return <p>stub</p>;
+}

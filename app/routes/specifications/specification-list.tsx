@@ -1,0 +1,4 @@
+// Stub.
+export default function SpecificationList() {
+  return <p>stub</p>;
+}

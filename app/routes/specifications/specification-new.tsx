@@ -1,0 +1,4 @@
+// Stub.
+export default function SpecificationNew() {
+  return <p>stub</p>;
+}

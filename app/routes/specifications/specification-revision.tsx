@@ -1,0 +1,4 @@
+// Stub.
+export default function SpecificationRevision() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function Specification() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function Invitation() {
+  return <p>stub</p>;
+}

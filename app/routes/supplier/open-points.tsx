@@ -1,0 +1,4 @@
+// Stub.
+export default function OpenPoints() {
+  return <p>stub</p>;
+}

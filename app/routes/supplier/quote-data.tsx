@@ -1,0 +1,4 @@
+// Stub.
+export default function QuoteData() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function QuoteDeclarations() {
+  return <p>stub</p>;
+}

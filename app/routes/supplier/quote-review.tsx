@@ -1,0 +1,4 @@
+// Stub.
+export default function QuoteReview() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,4 @@
+// Stub.
+export default function QuoteTerms() {
+  return <p>stub</p>;
+}

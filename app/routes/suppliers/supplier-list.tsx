@@ -1,0 +1,4 @@
+// Stub.
+export default function SupplierList() {
+  return <p>stub</p>;
+}

@@ -1,0 +1,117 @@
+// The host of the built pages: express, because react-router-serve sends assets without our headers and answers TRACE with 500.
+import { randomBytes, randomUUID } from "node:crypto";
+import path from "node:path";
+import { pathToFileURL } from "node:url";
+import { createRequestHandler } from "@react-router/express";
+import compression from "compression";
+import express, { type NextFunction, type Request, type Response } from "express";
+import type { RouterContextProvider, ServerBuild } from "react-router";
+import { config } from "./config.server";
+import { securityHeaders } from "./security-headers.server";
+import { log } from "./services/log.server";
+import type { RequestFacts } from "./services/request.server";
+
+interface EntryWithContext {
+  createLoadContext(facts: RequestFacts): RouterContextProvider;
+}
+
+const settings = config();
+const development = settings.mode === "development";
+
+/** Headers for every answer, and the nonce for this one. */
+function prepareAnswer(request: Request, response: Response, next: NextFunction): void {
+  const nonce = randomBytes(16).toString("base64");
+  response.locals.nonce = nonce;
+  response.locals.requestId = randomUUID();
+  response.set(securityHeaders({ nonce, secure: settings.appUrl.startsWith("https://"), development }));
+  if (request.method === "TRACE" || request.method === "CONNECT") {
+    response.status(405).type("text/plain").send("Method not allowed\n");
+    return;
+  }
+  next();
+}
+
+const ownHosts = new Set([new URL(settings.appUrl).host, `127.0.0.1:${settings.port}`, `localhost:${settings.port}`]);
+
+/** An unknown Host could be written into links or slip past the origin check. */
+function refuseForeignHost(request: Request, response: Response, next: NextFunction): void {
+  if (ownHosts.has(request.headers.host ?? "")) next();
+  else response.status(421).type("text/plain").send("This server does not answer for that host\n");
+}
+
+function refuseMalformedAddress(request: Request, response: Response, next: NextFunction): void {
+  try {
+    if (decodeURIComponent(request.path).includes("\0") || request.originalUrl.length > 8_000) throw new URIError();
+    next();
+  } catch {
+    response.status(400).type("text/plain").send("Malformed address\n");
+  }
+}
+
+function logRequest(request: Request, response: Response, next: NextFunction): void {
+  const started = performance.now();
+  response.on("finish", () => {
+    const { requestId } = response.locals as { requestId: string };
+    const milliseconds = Math.round(performance.now() - started);
+    log.info({ requestId, method: request.method, path: request.path, status: response.statusCode, milliseconds });
+  });
+  next();
+}
+
+/** Hands the request to the built pages, with what only this host knows. */
+function answer(build: ServerBuild, request: Request, response: Response, next: NextFunction): void {
+  const entry = build.entry.module as unknown as EntryWithContext;
+  const { nonce, requestId } = response.locals as { nonce: string; requestId: string };
+  const getLoadContext = () => entry.createLoadContext({ nonce, requestId, ip: request.ip });
+  void createRequestHandler({ build, mode: settings.mode, getLoadContext })(request, response, next);
+}
+
+async function createHost() {
+  const app = express();
+  app.disable("x-powered-by");
+  app.set("trust proxy", "loopback");
+  app.use(prepareAnswer, refuseForeignHost, refuseMalformedAddress);
+  let load: () => Promise<ServerBuild>;
+  if (development) {
+    const vite = await import("vite");
+    const server = await vite.createServer({ server: { middlewareMode: true } });
+    app.use(server.middlewares);
+    load = () => server.ssrLoadModule("virtual:react-router/server-build") as Promise<ServerBuild>;
+  } else {
+    app.use(compression());
+    app.use("/assets", express.static("build/client/assets", { immutable: true, maxAge: "1y" }));
+    app.use(express.static("build/client", { maxAge: "1h", index: false }));
+    const build = (await import(pathToFileURL(path.resolve("build/server/index.js")).href)) as ServerBuild;
+    load = () => Promise.resolve(build);
+  }
+  app.use(logRequest);
+  app.all("*", (request, response, next) => {
+    load().then((build) => answer(build, request, response, next), next);
+  });
+  return app;
+}
+
+const app = await createHost();
+const server = app.listen(settings.port, settings.host, () =>
+  log.info(`listening on ${settings.host}:${settings.port}`),
+);
+server.on("error", (error: NodeJS.ErrnoException) => {
+  const taken = error.code === "EADDRINUSE";
+  console.error(taken ? `Port ${settings.port} is taken: set PORT to a free one.` : error.message);
+  process.exit(taken ? 98 : 1);
+});
+
+let ending = false;
+function end(): void {
+  if (ending) return;
+  ending = true;
+  server.close(() => process.exit(0));
+  server.closeIdleConnections();
+  setTimeout(() => process.exit(0), 8_000).unref();
+}
+process.on("SIGTERM", end);
+process.on("SIGINT", end);
+process.on("disconnect", end);
+// A database socket that dies emits on its own; the pool replaces it, the process must outlive it.
+process.on("uncaughtException", (error) => log.error({ err: error }, "uncaught"));
+process.on("unhandledRejection", (error) => log.error({ err: error }, "unhandled"));

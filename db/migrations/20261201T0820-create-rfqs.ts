@@ -1,0 +1,97 @@
+// RFQs, their quantities and invitations, and the single-use links of mails.
+import { statements, type Migration } from "../umzug";
+
+export const up: Migration = statements(
+  `CREATE TABLE rfqs (
+    id INT UNSIGNED NOT NULL AUTO_INCREMENT PRIMARY KEY,
+    public_id CHAR(16) CHARACTER SET ascii NOT NULL,
+    buyer_organisation_id INT UNSIGNED NOT NULL,
+    year SMALLINT UNSIGNED NOT NULL,
+    number INT UNSIGNED NOT NULL,
+    title VARCHAR(90) NOT NULL,
+    specification_id INT UNSIGNED NOT NULL,
+    revision_id INT UNSIGNED NOT NULL,
+    owner_id INT UNSIGNED NOT NULL,
+    status ENUM('draft', 'open', 'closed', 'decided', 'cancelled') NOT NULL DEFAULT 'draft',
+    due_at DATETIME(3) NOT NULL,
+    due_zone VARCHAR(64) NOT NULL,
+    opened_at DATETIME(3) NULL,
+    closed_at DATETIME(3) NULL,
+    decision_rule ENUM('simple', 'guarded') NOT NULL,
+    quantity INT UNSIGNED NOT NULL,
+    currency CHAR(3) NOT NULL,
+    text TEXT NULL,
+    units_asked INT UNSIGNED NOT NULL,
+    units_over_range INT UNSIGNED NOT NULL,
+    assumed_setup JSON NOT NULL,
+    lock_version INT UNSIGNED NOT NULL DEFAULT 0,
+    created_at DATETIME(3) NOT NULL,
+    UNIQUE KEY rfqs_public_id (public_id),
+    UNIQUE KEY rfqs_number (buyer_organisation_id, year, number),
+    KEY rfqs_list (buyer_organisation_id, status, due_at, id),
+    KEY rfqs_due (status, due_at),
+    CONSTRAINT fk_rfqs_buyer FOREIGN KEY (buyer_organisation_id) REFERENCES organisations (id) ON DELETE RESTRICT,
+    CONSTRAINT fk_rfqs_specification FOREIGN KEY (specification_id) REFERENCES specifications (id) ON DELETE RESTRICT,
+    CONSTRAINT fk_rfqs_revision FOREIGN KEY (revision_id) REFERENCES specification_revisions (id) ON DELETE RESTRICT,
+    CONSTRAINT fk_rfqs_owner FOREIGN KEY (owner_id) REFERENCES users (id) ON DELETE RESTRICT,
+    CONSTRAINT rfqs_quantity CHECK (quantity > 0),
+    CONSTRAINT rfqs_units CHECK (units_asked > 0 AND units_over_range <= units_asked),
+    CONSTRAINT rfqs_opened CHECK (status IN ('draft', 'cancelled') OR opened_at IS NOT NULL)
+  ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4`,
+  `CREATE TABLE rfq_quantities (
+    buyer_organisation_id INT UNSIGNED NOT NULL,
+    rfq_id INT UNSIGNED NOT NULL,
+    quantity INT UNSIGNED NOT NULL,
+    PRIMARY KEY (rfq_id, quantity),
+    CONSTRAINT fk_rfq_quantities_rfq FOREIGN KEY (rfq_id) REFERENCES rfqs (id) ON DELETE RESTRICT,
+    CONSTRAINT rfq_quantities_positive CHECK (quantity > 0)
+  ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4`,
+  `CREATE TABLE invitations (
+    id INT UNSIGNED NOT NULL AUTO_INCREMENT PRIMARY KEY,
+    public_id CHAR(16) CHARACTER SET ascii NOT NULL,
+    buyer_organisation_id INT UNSIGNED NOT NULL,
+    rfq_id INT UNSIGNED NOT NULL,
+    supplier_id INT UNSIGNED NOT NULL,
+    email VARCHAR(254) NOT NULL,
+    supplier_organisation_id INT UNSIGNED NULL,
+    state ENUM('draft', 'sent', 'accepted', 'declined', 'revoked') NOT NULL DEFAULT 'draft',
+    reason TEXT NULL,
+    sent_at DATETIME(3) NULL,
+    accepted_at DATETIME(3) NULL,
+    declined_at DATETIME(3) NULL,
+    created_at DATETIME(3) NOT NULL,
+    UNIQUE KEY invitations_public_id (public_id),
+    UNIQUE KEY invitations_supplier (rfq_id, supplier_id),
+    UNIQUE KEY invitations_email (rfq_id, email),
+    KEY invitations_supplier_organisation (supplier_organisation_id, state, rfq_id),
+    CONSTRAINT fk_invitations_rfq FOREIGN KEY (rfq_id) REFERENCES rfqs (id) ON DELETE RESTRICT,
+    CONSTRAINT fk_invitations_supplier FOREIGN KEY (supplier_id) REFERENCES suppliers (id) ON DELETE RESTRICT,
+    CONSTRAINT fk_invitations_supplier_organisation FOREIGN KEY (supplier_organisation_id) REFERENCES organisations (id) ON DELETE RESTRICT,
+    CONSTRAINT invitations_accepted CHECK (state <> 'accepted' OR supplier_organisation_id IS NOT NULL)
+  ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4`,
+  `CREATE TABLE one_time_tokens (
+    token_hash BINARY(32) NOT NULL PRIMARY KEY,
+    purpose ENUM('password-reset', 'invitation') NOT NULL,
+    user_id INT UNSIGNED NULL,
+    invitation_id INT UNSIGNED NULL,
+    created_at DATETIME(3) NOT NULL,
+    expires_at DATETIME(3) NOT NULL,
+    used_at DATETIME(3) NULL,
+    revoked_at DATETIME(3) NULL,
+    KEY one_time_tokens_user (user_id),
+    KEY one_time_tokens_invitation (invitation_id),
+    KEY one_time_tokens_expires (expires_at),
+    CONSTRAINT fk_one_time_tokens_user FOREIGN KEY (user_id) REFERENCES users (id) ON DELETE RESTRICT,
+    CONSTRAINT fk_one_time_tokens_invitation FOREIGN KEY (invitation_id) REFERENCES invitations (id) ON DELETE RESTRICT,
+    CONSTRAINT one_time_tokens_subject CHECK (
+      (purpose = 'password-reset' AND user_id IS NOT NULL) OR (purpose = 'invitation' AND invitation_id IS NOT NULL)
+    )
+  ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4`,
+);
+
+export const down: Migration = statements(
+  "DROP TABLE one_time_tokens",
+  "DROP TABLE invitations",
+  "DROP TABLE rfq_quantities",
+  "DROP TABLE rfqs",
+);
