@@ -17,5 +17,9 @@ process.on("uncaughtException", (error) => log.error({ err: error }, "uncaught")
 process.on("unhandledRejection", (error) => log.error({ err: error }, "unhandled"));
 
 log.info("worker started");
-await Promise.all([runMailLoop({ send: sender.send, signal: stop.signal, report: (message) => log.warn(message) }), runScoringLoop({ signal: stop.signal }), runClosingLoop({ signal: stop.signal })]);
+await Promise.all([
+  runMailLoop({ send: (mail) => sender.send(mail), signal: stop.signal, report: (message) => log.warn(message) }),
+  runScoringLoop({ signal: stop.signal }),
+  runClosingLoop({ signal: stop.signal }),
+]);
 process.exit(0);

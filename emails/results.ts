@@ -69,7 +69,7 @@ function resultRow(line: ResultLine): Markup {
     <td class="rule verdict" align="right" style="${CELL}; padding-right: 0; white-space: nowrap">
       ${singleLine(line.margin ?? "")}
       <div class="${tone}" style="font-weight: 600; color: ${palette[tone]}">
-        <span aria-hidden="true">${mark}</span> ${word}
+        <span aria-hidden="true">${mark}&nbsp;</span>${word}
       </div>
     </td>
   </tr>`;

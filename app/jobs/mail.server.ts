@@ -1,10 +1,16 @@
 // Mail dispatch: takes due rows of the outbox one by one under a lease, renders, sends, and marks them sent or puts them off.
 import { randomBytes } from "node:crypto";
 import { setTimeout as sleep } from "node:timers/promises";
-import { QueryTypes } from "sequelize";
 import { ZodError } from "zod";
-import { sequelize } from "~/db/connection.server";
-import { OutboxEmail } from "~/db/models";
+import type { OutboxEmail } from "~/db/models";
+import {
+  leaseMail,
+  lockDueMail,
+  markMailRefused,
+  markMailSent,
+  renewMailLease,
+  type LeasedMail,
+} from "~/db/queries/outbox";
 import { MailEvent, renderMail } from "~/emails/index";
 import type { OutgoingMail } from "~/emails/sender";
 import { inTransaction } from "~/services/transaction.server";
@@ -71,14 +77,14 @@ export async function dispatchMail({
 }: DispatchOptions): Promise<{ sent: number; failed: number }> {
   const done = { sent: 0, failed: 0 };
   while (done.sent + done.failed < limit && signal?.aborted !== true) {
-    const row = await claimNext();
-    if (row === undefined) break;
-    const failure = await underLease(row, () => attempt(row, send));
+    const mail = await claimNext();
+    if (mail === undefined) break;
+    const failure = await underLease(mail.lease, () => attempt(mail.row, send));
     if (failure === undefined) {
-      await markSent(row);
+      await markSent(mail);
       done.sent += 1;
     } else {
-      await markFailed(row, failure);
+      await markFailed(mail, failure);
       done.failed += 1;
       if (failure.kind === "unreachable") break;
     }
@@ -123,8 +129,11 @@ async function attempt(row: OutboxEmail, send: DispatchOptions["send"]): Promise
 }
 
 /** Renews the lease for as long as the work takes, so that a slow server does not let a second dispatcher in. */
-async function underLease<T>(row: OutboxEmail, work: () => Promise<T>): Promise<T> {
-  const renewal = setInterval(() => void renewLease(row).catch(() => undefined), RENEWAL_MILLISECONDS);
+async function underLease<T>(lease: LeasedMail, work: () => Promise<T>): Promise<T> {
+  const renewal = setInterval(
+    () => void renewMailLease(lease, LEASE_SECONDS).catch(() => undefined),
+    RENEWAL_MILLISECONDS,
+  );
   renewal.unref();
   try {
     return await work();
@@ -156,48 +165,29 @@ function smtpDetails(error: Error): { code?: string; command?: string; responseC
   };
 }
 
+/** A mail this dispatcher holds. */
+interface HeldMail {
+  readonly row: OutboxEmail;
+  readonly lease: LeasedMail;
+  readonly attempts: number;
+}
+
 /** The next due row, leased to this call and its attempt counted, or undefined. */
-function claimNext(): Promise<OutboxEmail | undefined> {
+function claimNext(): Promise<HeldMail | undefined> {
   return inTransaction(async (transaction) => {
-    // By next_at, the index's order: only the rows looked at are locked, and a retry does not hold up a new mail.
-    const [row] = await sequelize.query(
-      `SELECT * FROM outbox_emails
-        WHERE state = 'pending' AND next_at <= UTC_TIMESTAMP(3)
-          
-        ORDER BY next_at, id LIMIT 1 FOR UPDATE SKIP LOCKED`,
-      { type: QueryTypes.SELECT, model: OutboxEmail, mapToModel: true, transaction },
-    );
+    const row = await lockDueMail(transaction);
     if (row === undefined) return undefined;
-    const leaseToken = randomBytes(8).toString("hex");
-    await sequelize.query(
-      `UPDATE outbox_emails SET lease_token = ?, attempts = attempts + 1,
-        leased_until = UTC_TIMESTAMP(3) + INTERVAL ? SECOND WHERE id = ?`,
-      { type: QueryTypes.UPDATE, replacements: [leaseToken, LEASE_SECONDS, row.id], transaction },
-    );
-    row.leaseToken = leaseToken;
-    row.attempts += 1;
-    return row;
+    const lease = { id: row.id, leaseToken: randomBytes(8).toString("hex") };
+    await leaseMail(lease, LEASE_SECONDS, transaction);
+    return { row, lease, attempts: row.attempts + 1 };
   });
 }
 
-async function renewLease(row: OutboxEmail): Promise<void> {
-  await sequelize.query(
-    "UPDATE outbox_emails SET leased_until = UTC_TIMESTAMP(3) + INTERVAL ? SECOND WHERE id = ? AND lease_token = ?",
-    { type: QueryTypes.UPDATE, replacements: [LEASE_SECONDS, row.id, row.leaseToken] },
-  );
-}
-
 /** The server has the mail: a database that is away for a moment is waited for, since without the mark it would go out again. */
-async function markSent(row: OutboxEmail): Promise<void> {
-  const props = SINGLE_USE_LINKS.includes(row.template) ? "JSON_SET(props, '$.link', '')" : "props";
+async function markSent({ row, lease }: HeldMail): Promise<void> {
   for (let tries = 1; ; tries += 1) {
     try {
-      await sequelize.query(
-        `UPDATE outbox_emails SET state = 'sent', sent_at = UTC_TIMESTAMP(3), leased_until = NULL, lease_token = NULL,
-          last_error = NULL, props = ${props} WHERE id = ? AND lease_token = ?`,
-        { type: QueryTypes.UPDATE, replacements: [row.id, row.leaseToken] },
-      );
-      return;
+      return await markMailSent(lease, SINGLE_USE_LINKS.includes(row.template));
     } catch (error) {
       if (tries === MARK_TRIES) throw error;
       await sleep(1000);
@@ -205,24 +195,17 @@ async function markSent(row: OutboxEmail): Promise<void> {
   }
 }
 
-async function markFailed(row: OutboxEmail, { reason, kind }: Failure): Promise<void> {
+async function markFailed(mail: HeldMail, { reason, kind }: Failure): Promise<void> {
   const outage = kind === "unreachable";
   const longest = outage ? LONGEST_OUTAGE_DELAY_SECONDS : LONGEST_DELAY_SECONDS;
-  const attempts = outage ? Math.max(row.attempts - 1, Math.min(row.attempts, LONGEST_OUTAGE_ATTEMPTS)) : row.attempts;
+  const attempts = outage
+    ? Math.max(mail.attempts - 1, Math.min(mail.attempts, LONGEST_OUTAGE_ATTEMPTS))
+    : mail.attempts;
   const over = kind === "no-recipient" || attempts >= MOST_ATTEMPTS;
-  await sequelize.query(
-    `UPDATE outbox_emails SET state = ?, attempts = ?, last_error = ?, leased_until = NULL, lease_token = NULL,
-      next_at = UTC_TIMESTAMP(3) + INTERVAL ? SECOND WHERE id = ? AND lease_token = ?`,
-    {
-      type: QueryTypes.UPDATE,
-      replacements: [
-        over ? "failed" : "pending",
-        attempts,
-        reason,
-        Math.min(longest, FIRST_DELAY_SECONDS * 2 ** attempts),
-        row.id,
-        row.leaseToken,
-      ],
-    },
-  );
+  await markMailRefused(mail.lease, {
+    state: over ? "failed" : "pending",
+    attempts,
+    reason,
+    delaySeconds: Math.min(longest, FIRST_DELAY_SECONDS * 2 ** attempts),
+  });
 }
