@@ -12,7 +12,7 @@ const kinds: Record<ButtonKind, string> = {
   outlined: "border-edge px-4 text-ink hover:border-ink",
   plain: "border-transparent px-2 text-signal hover:underline",
 };
-const waiting = "aria-busy:cursor-progress aria-busy:opacity-60 disabled:cursor-not-allowed disabled:opacity-50";
+const waiting = "aria-busy:cursor-progress aria-busy:opacity-80 disabled:cursor-not-allowed disabled:opacity-50";
 
 const classes = (kind: ButtonKind, className = "") => `${common} ${kinds[kind]} ${waiting} ${className}`;
 

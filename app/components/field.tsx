@@ -24,9 +24,7 @@ const control =
   "block w-full min-w-0 bg-transparent px-3 pb-1.5 text-15/5.5 text-ink outline-none file:mr-3 file:font-semibold file:text-signal";
 
 const border = (error: string | undefined) =>
-  error
-    ? "border-fail ring-fail shadow-none outline-fail [box-shadow:inset_0_0_0_1px_var(--color-fail)]"
-    : "border-edge";
+  error ? "border-fail [box-shadow:inset_0_0_0_1px_var(--color-fail)]" : "border-edge";
 
 interface FrameProps extends CellProps {
   id: string;
@@ -34,7 +32,6 @@ interface FrameProps extends CellProps {
   error: string | undefined;
   asideId: string;
   hintId: string;
-  required: boolean | undefined;
   children: ReactNode;
 }
 
@@ -66,21 +63,21 @@ function Frame(props: FrameProps) {
 }
 
 /** Id, value and wiring of a control in its frame. */
-function useCell(props: CellProps & { name: string; required?: boolean | undefined }) {
+function useCell(props: CellProps & { name: string }) {
   const own = useId();
   const hasAside = props.unit !== undefined || props.echo !== undefined;
   const asideId = `${own}aside`;
   const hintId = `${own}hint`;
   const described = [hasAside ? asideId : "", props.hint === undefined ? "" : hintId].filter(Boolean).join(" ");
   const field = useField(props.name, described || undefined);
-  const frame = { id: field.id, errorId: field.errorId, error: field.error, asideId, hintId, required: props.required };
+  const frame = { id: field.id, errorId: field.errorId, error: field.error, asideId, hintId };
   return { field, frame };
 }
 
 /** An entry of one line: text, number, date, e-mail, password, file. */
 export function Field({ label, unit, echo, hint, className, ...input }: ControlProps<"input">) {
   const shared = { label, unit, echo, hint, ...(className === undefined ? {} : { className }) };
-  const { field, frame } = useCell({ ...shared, name: input.name, required: input.required });
+  const { field, frame } = useCell({ ...shared, name: input.name });
   // A password is never sent back, and a file cannot be.
   const kept = input.type === "password" || input.type === "file" ? undefined : field.value;
   const value = input.value === undefined ? { defaultValue: kept ?? input.defaultValue } : {};
@@ -100,7 +97,7 @@ interface Option {
 export function SelectField(props: ControlProps<"select"> & { options: readonly Option[] }) {
   const { label, unit, echo, hint, className, options, ...select } = props;
   const shared = { label, unit, echo, hint, ...(className === undefined ? {} : { className }) };
-  const { field, frame } = useCell({ ...shared, name: select.name, required: select.required });
+  const { field, frame } = useCell({ ...shared, name: select.name });
   const value = select.value === undefined ? { defaultValue: field.value ?? select.defaultValue } : {};
   return (
     <Frame {...shared} {...frame}>
@@ -124,7 +121,7 @@ export function SelectField(props: ControlProps<"select"> & { options: readonly 
 export function TextAreaField(props: ControlProps<"textarea">) {
   const { label, unit, echo, hint, className, rows = 4, ...area } = props;
   const shared = { label, unit, echo, hint, ...(className === undefined ? {} : { className }) };
-  const { field, frame } = useCell({ ...shared, name: area.name, required: area.required });
+  const { field, frame } = useCell({ ...shared, name: area.name });
   const value = area.value === undefined ? { defaultValue: field.value ?? area.defaultValue } : {};
   return (
     <Frame {...shared} {...frame}>

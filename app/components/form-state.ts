@@ -1,5 +1,5 @@
 // What a form tells the fields and buttons inside it: typed values, errors, its id, and what it is sending.
-import { createContext, useContext } from "react";
+import { createContext, useContext, type ComponentProps } from "react";
 import type { FormState } from "~/forms/form";
 
 export interface FormScope extends FormState {
@@ -29,8 +29,8 @@ export function useField(name: string, describedBy?: string) {
 }
 
 /** Whether the form around is sending because of the button with this name and value. */
-export function usePressed(name: string | undefined, value: unknown): boolean {
+export function usePressed(name: string | undefined, value: ComponentProps<"button">["value"] = ""): boolean {
   const { sending } = useContext(FormScopeContext);
   if (sending === null) return false;
-  return name === undefined || sending.get(name) === String(value ?? "");
+  return name === undefined || sending.get(name) === String(value);
 }

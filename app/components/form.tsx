@@ -1,5 +1,5 @@
 // A form that posts to an action and shows what the action sent back: summary of errors, typed input, pending state.
-import { useEffect, useId, useRef, type FormEvent, type ReactNode } from "react";
+import { useEffect, useId, useRef, type ReactNode, type SyntheticEvent } from "react";
 import { Form, useFormAction, useNavigation } from "react-router";
 import type { FieldErrors, FormState } from "~/forms/form";
 import { controlId, FormScopeContext } from "./form-state";
@@ -48,7 +48,7 @@ export function PostForm(props: PostFormProps) {
     >
       <ErrorSummary formId={formId} state={state} />
       {idempotencyKey === undefined ? null : <input type="hidden" name="idempotencyKey" value={idempotencyKey} />}
-      {guardsUnsaved ? <UnsavedGuard form={form} /> : null}
+      {guardsUnsaved ? <UnsavedGuard form={form} state={state} /> : null}
       <FormScopeContext value={{ ...state, formId, sending }}>{children}</FormScopeContext>
     </Form>
   );
@@ -71,7 +71,7 @@ function useSendOnce() {
   useEffect(() => {
     if (navigation.state === "idle") sent.current = false;
   });
-  return (event: FormEvent) => {
+  return (event: SyntheticEvent) => {
     if (sent.current) event.preventDefault();
     sent.current = true;
   };

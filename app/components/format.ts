@@ -97,7 +97,7 @@ interface BandOptions extends FrequencyOptions {
 
 /**
  * A band with both edges exact and in equal decimals: "1.9200 to 1.9800 GHz", "DC (tested from 9 kHz) to 1.8000 GHz".
- * An edge that would need more than six decimals in the other's unit keeps a unit of its own: "9 kHz to 1.0000 GHz".
+ * An edge under a thousandth of the other keeps a unit of its own: "9 kHz to 1.0000 GHz".
  */
 export function formatBand([from, to]: readonly [number, number], options: BandOptions = {}): string {
   const { unit = frequencyUnit(to), lowestTestFrequency } = options;
@@ -105,8 +105,8 @@ export function formatBand([from, to]: readonly [number, number], options: BandO
     const tested = lowestTestFrequency === undefined ? "" : ` (tested from ${shortFrequency(lowestTestFrequency)})`;
     return `DC${tested} to ${exactFrequency(to, unit, options.decimals)}`;
   }
+  if (from < to / 1000) return `${shortFrequency(from)} to ${exactFrequency(to, unit, options.decimals)}`;
   const decimals = options.decimals ?? frequencyDecimals([from, to], unit);
-  if (decimals > 6) return `${shortFrequency(from)} to ${exactFrequency(to, unit)}`;
   const number = (hz: number) => formatNumber(inUnit(hz, unit), decimals);
   return from === to ? exactFrequency(to, unit, decimals) : `${number(from)} to ${number(to)}${noBreakSpace}${unit}`;
 }

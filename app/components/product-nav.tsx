@@ -22,7 +22,7 @@ interface ProductNavProps {
 export function ProductNav(props: ProductNavProps) {
   const { home = "/", user } = props;
   return (
-    <div className="page-frame print-hidden">
+    <header className="page-frame print-hidden">
       <a
         href="#content"
         className="absolute -top-20 left-4 z-30 bg-leaf px-4 py-2 text-13 font-semibold focus-visible:top-2"
@@ -48,7 +48,7 @@ export function ProductNav(props: ProductNavProps) {
         </div>
         <PhoneMenu {...props} />
       </div>
-    </div>
+    </header>
   );
 }
 

@@ -16,7 +16,9 @@ const advanceGroups: readonly (readonly [hundredths: number, characters: string]
 ];
 
 const advance = new Map(
-  advanceGroups.flatMap(([hundredths, characters]) => [...characters].map((character) => [character, hundredths])),
+  advanceGroups.flatMap(([hundredths, characters]) =>
+    Array.from(characters).map((character) => [character, hundredths]),
+  ),
 );
 
 /** Of a character outside the table, such as an accented capital. */
@@ -29,6 +31,9 @@ const unknownAdvance = 72;
  * @returns pixels
  */
 export function titleWidthPx(title: string): number {
-  const hundredths = [...title].reduce((sum, character) => sum + (advance.get(character) ?? unknownAdvance) - 1.5, 0);
+  const hundredths = Array.from(title).reduce(
+    (sum, character) => sum + (advance.get(character) ?? unknownAdvance) - 1.5,
+    0,
+  );
   return Math.ceil((hundredths * 24) / 100);
 }

@@ -1,11 +1,12 @@
 // Asks before typed input that was not sent is left behind, within the app and when the tab closes.
 import { useEffect, useRef, type RefObject } from "react";
 import { useBlocker } from "react-router";
+import type { FormState } from "~/forms/form";
 
 const question = "Leave without saving? What you typed here is lost.";
 
 /** Only one may stand on a page: the router blocks for a single reason at a time. */
-export function UnsavedGuard({ form }: { form: RefObject<HTMLFormElement | null> }) {
+export function UnsavedGuard({ form, state }: { form: RefObject<HTMLFormElement | null>; state: FormState }) {
   const changed = useRef(false);
   const blocker = useBlocker(
     ({ currentLocation, nextLocation }) => changed.current && currentLocation.pathname !== nextLocation.pathname,
@@ -16,6 +17,11 @@ export function UnsavedGuard({ form }: { form: RefObject<HTMLFormElement | null>
     if (window.confirm(question)) blocker.proceed();
     else blocker.reset();
   }, [blocker]);
+
+  // What was sent and refused is unsaved again.
+  useEffect(() => {
+    if (Object.keys(state.errors).length > 0) changed.current = true;
+  }, [state]);
 
   useEffect(() => {
     const element = form.current;

@@ -3,6 +3,7 @@ import { z } from "zod";
 import {
   addError,
   collect,
+  countCharacters,
   emailField,
   formValues,
   hasErrors,
@@ -46,7 +47,10 @@ const givenPassword = z
   .string()
   .default("")
   .refine((text) => text !== "", "Enter your password.")
-  .refine((text) => [...text].length <= LONGEST_PASSWORD, `A password has at most ${LONGEST_PASSWORD} characters.`);
+  .refine(
+    (text) => countCharacters(text) <= LONGEST_PASSWORD,
+    `A password has at most ${LONGEST_PASSWORD} characters.`,
+  );
 
 const SignIn = z.object({ email: emailField, password: givenPassword, returnTo: z.string().max(2000).default("") });
 const Forgot = z.object({ email: emailField });

@@ -2,6 +2,7 @@
 import { z } from "zod";
 import {
   choiceField,
+  countCharacters,
   longTextField,
   parseFields,
   publicIdField,
@@ -40,7 +41,7 @@ export const parseRecommendationForm = (source: FormData | FormValues): FormResu
 export const parseDecisionForm = (source: FormData | FormValues): FormResult<DecisionInput> =>
   parseFields(
     Verdict.superRefine((input, context) => {
-      if (input.intent === "approve" || [...input.remark].length >= SHORTEST_REMARK) return;
+      if (input.intent === "approve" || countCharacters(input.remark) >= SHORTEST_REMARK) return;
       context.addIssue({
         code: "custom",
         path: ["remark"],

@@ -69,7 +69,8 @@ export function groupRows(
   return [...rows].sort(([a], [b]) => a - b).map(([index, fields]) => ({ index, fields }));
 }
 
-const length = (text: string) => [...text].length;
+/** Length in characters (code points), as the database counts them. */
+export const countCharacters = (text: string): number => Array.from(text).length;
 const CONTROL = /[\u0000-\u001F\u007F-\u009F\u2028\u2029]/u;
 
 const typed = z.string().default("");
@@ -80,8 +81,8 @@ export const textField = (empty: string, longest: number) =>
     const trimmed = text.trim();
     if (trimmed === "") context.addIssue(empty);
     else if (CONTROL.test(trimmed)) context.addIssue("Use one line without control characters.");
-    else if (length(trimmed) > longest)
-      context.addIssue(`Use at most ${longest} characters; this has ${length(trimmed)}.`);
+    else if (countCharacters(trimmed) > longest)
+      context.addIssue(`Use at most ${longest} characters; this has ${countCharacters(trimmed)}.`);
     return trimmed;
   });
 
@@ -89,7 +90,8 @@ export const optionalTextField = (longest: number) =>
   typed.transform((text, context) => {
     const trimmed = text.trim();
     if (CONTROL.test(trimmed)) context.addIssue("Use one line without control characters.");
-    if (length(trimmed) > longest) context.addIssue(`Use at most ${longest} characters; this has ${length(trimmed)}.`);
+    if (countCharacters(trimmed) > longest)
+      context.addIssue(`Use at most ${longest} characters; this has ${countCharacters(trimmed)}.`);
     return trimmed === "" ? null : trimmed;
   });
 
@@ -97,8 +99,9 @@ export const optionalTextField = (longest: number) =>
 export const longTextField = (longest: number, shortest = 0, tooShort = "") =>
   typed.transform((text, context) => {
     const trimmed = text.trim();
-    if (length(trimmed) < shortest) context.addIssue(tooShort);
-    if (length(trimmed) > longest) context.addIssue(`Use at most ${longest} characters; this has ${length(trimmed)}.`);
+    if (countCharacters(trimmed) < shortest) context.addIssue(tooShort);
+    if (countCharacters(trimmed) > longest)
+      context.addIssue(`Use at most ${longest} characters; this has ${countCharacters(trimmed)}.`);
     return trimmed;
   });
 

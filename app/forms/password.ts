@@ -1,4 +1,5 @@
 // The password policy: length counts, composition does not; what others would guess first is refused.
+import { countCharacters } from "~/forms/fields";
 
 export const SHORTEST_PASSWORD = 12;
 export const LONGEST_PASSWORD = 256;
@@ -24,7 +25,7 @@ export interface PasswordContext {
  * It is refused where little is left once common words and the person's own names are taken out of it.
  */
 export function passwordProblem(password: string, context: PasswordContext = {}): string | null {
-  const length = [...password].length;
+  const length = countCharacters(password);
   if (length < SHORTEST_PASSWORD) return `Use at least ${SHORTEST_PASSWORD} characters. A few unrelated words do well.`;
   if (length > LONGEST_PASSWORD) return `Use at most ${LONGEST_PASSWORD} characters.`;
   if (new Set(password.toLowerCase()).size < 4) return "Use more than a few different characters.";
@@ -41,7 +42,7 @@ export function passwordProblem(password: string, context: PasswordContext = {})
 function ownWords({ email = "", organisation = "", name = "" }: PasswordContext): string[] {
   const joined = organisation.toLowerCase().replace(/[^\p{L}\p{N}]/gu, "");
   const parts = [email, organisation, name].flatMap((text) => text.toLowerCase().split(/[^\p{L}\p{N}]+/u));
-  return ["tenderband", "tender", joined, ...parts].filter((word) => [...word].length >= 3);
+  return ["tenderband", "tender", joined, ...parts].filter((word) => countCharacters(word) >= 3);
 }
 
 const withoutWords = (text: string, words: readonly string[]) =>
@@ -51,7 +52,7 @@ const letterCount = (text: string) => (text.match(/\p{L}/gu) ?? []).length;
 
 /** Whether every step from one character to the next is the same, as in 123456789012 or abcdefghijkl; 9 goes on to 0. */
 function isRun(password: string): boolean {
-  const codes = [...password].map((character) => character.codePointAt(0) ?? 0);
+  const codes = Array.from(password).map((character) => character.codePointAt(0) ?? 0);
   const steps = codes.slice(1).map((code, index) => code - (codes[index] ?? 0));
   return [1, -1].some((direction) => steps.every((step) => step === direction || step === -9 * direction));
 }

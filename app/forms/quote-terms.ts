@@ -7,6 +7,7 @@ import {
   amountField,
   choiceField,
   collect,
+  countCharacters,
   formValues,
   hasErrors,
   longTextField,
@@ -138,7 +139,7 @@ function readDeclaration(values: FormValues, lineKey: string, errors: FieldError
     return undefined;
   }
   if (answer === "exception" && text === "") addError(errors, `${name}.text`, "Say what you offer instead.");
-  if ([...text].length > LONGEST_DECLARATION)
+  if (countCharacters(text) > LONGEST_DECLARATION)
     addError(errors, `${name}.text`, `Use at most ${LONGEST_DECLARATION} characters.`);
   return { lineKey, answer, text: text === "" ? null : text };
 }

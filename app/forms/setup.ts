@@ -94,7 +94,7 @@ export function setupToValues(setup: Setup): FormValues {
   const texts = SETUP_FIELDS.map(({ field, kind, unit }) => {
     const value = setup[field];
     const text = value === undefined ? "" : formatQuantity(value, kind, kind === "plain" ? { unit } : {});
-    return [`setup.${field}`, text];
+    return [`setup.${field}`, text] as const;
   });
-  return { ...Object.fromEntries(texts), "setup.noiseFloorKind": setup.noiseFloorKind ?? "peak" };
+  return { ...Object.fromEntries<string>(texts), "setup.noiseFloorKind": setup.noiseFloorKind ?? "peak" };
 }

@@ -198,7 +198,7 @@ export function toDefinition(requirement: SpecificationRequirement): {
 
 /** The reverse of `toDefinition`. */
 export function fromDefinition(lineKey: string, definition: RequirementDefinition): SpecificationRequirement {
-  return { ...definition, id: lineKey } as SpecificationRequirement;
+  return { ...definition, id: lineKey };
 }
 
 /** The proposal for the lowest test frequency, Hz: the lower of 10 MHz and a tenth of the lowest edge above DC; null where no band starts at DC. */

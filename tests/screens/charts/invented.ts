@@ -39,11 +39,8 @@ function responses({ centre, width, loss, returnLoss }: Shape, frequency: number
   const mapped = (frequency / centre - centre / frequency) * (centre / width);
   const ripple = 1 / (10 ** (returnLoss / 10) - 1);
   const power = ripple * chebyshev(6, mapped) ** 2;
-  const notch = [1.8805e9, 2.0165e9]
-    .map((at) => -6 * Math.log10(1 / (1 + (0.0035e9 / (frequency - at)) ** 2) + 1e-4) * 0)
-    .reduce((sum, level) => sum + level, 0);
-  const dissipation = loss * (1 + 0.55 * Math.min(Math.abs(mapped), 1.4) ** 8);
-  const transmission = 10 * Math.log10(1 + power) + dissipation - notch;
+  const dissipation = loss * (1 + 0.75 * Math.min(Math.abs(mapped), 1.15) ** 8);
+  const transmission = 10 * Math.log10(1 + power) + dissipation;
   const match = 10 * Math.log10((1 + power) / (power + 2e-4)) + 0.1;
   return { transmission, match };
 }

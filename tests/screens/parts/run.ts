@@ -2,7 +2,7 @@
 import { mkdir, readdir, writeFile } from "node:fs/promises";
 import path from "node:path";
 import tailwindcss from "@tailwindcss/vite";
-import { chromium, type Browser } from "playwright-core";
+import { chromium, type Browser, type Page } from "playwright-core";
 import { createElement } from "react";
 import { renderToStaticMarkup } from "react-dom/server";
 import { createRoutesStub } from "react-router";
@@ -18,7 +18,7 @@ async function buildStyles(): Promise<string> {
     logLevel: "warn",
     base: "./",
     plugins: [tailwindcss()],
-    build: { outDir: folder, emptyOutDir: true, assetsInlineLimit: 0, rollupOptions: { input } },
+    build: { outDir: folder, emptyOutDir: true, assetsInlineLimit: 0, rolldownOptions: { input } },
   });
   const styles = (await readdir(path.join(folder, "assets"))).find((name) => name.endsWith(".css"));
   if (styles === undefined) throw new Error("the build wrote no stylesheet");
@@ -54,9 +54,16 @@ async function photograph(browser: Browser, file: string, width: number): Promis
   await page.screenshot({ path: path.join(folder, `${name}-${width}.png`), fullPage: true });
   const overflow = await page.evaluate("document.documentElement.scrollWidth - document.documentElement.clientWidth");
   console.log(`${name} at ${width}: page wider than the window by ${String(overflow)} px`);
-  if (width === 1440)
-    await page.pdf({ path: path.join(folder, `${name}.pdf`), format: "A4", preferCSSPageSize: false });
+  if (width === 1440) await photographPrint(page, name);
   await page.close();
+}
+
+/** A4 less its margins is 186 mm, 703 px. */
+async function photographPrint(page: Page, name: string): Promise<void> {
+  await page.emulateMedia({ media: "print" });
+  await page.setViewportSize({ width: 703, height: 1000 });
+  await page.screenshot({ path: path.join(folder, `${name}-print.png`), fullPage: true });
+  await page.pdf({ path: path.join(folder, `${name}.pdf`), format: "A4" });
 }
 
 await mkdir(folder, { recursive: true });
