@@ -6,6 +6,7 @@ import type { Band, Requirement } from "./contract.ts";
 import { coverageOf, segmentsWithin } from "./coverage.ts";
 import { crossingsAt, peakIndex, type Crossings } from "./crossings.ts";
 import { formatFigure, formatLevel } from "./describe.ts";
+import { bandOf } from "./frequency.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 import { levelUncertainty, type Ends } from "./uncertainty.ts";
 
@@ -22,9 +23,9 @@ interface MovedCrossings {
 const RELATIVE_TOLERANCE = 1e-9;
 
 export function assessCentre(line: Line<"centre-frequency">, sweeping: Sweeping): Assessment {
-  return assessCrossings(line, [line.level], line.tolerance, sweeping, ([crossings], frame) => {
-    const centre = middle(crossings!.read);
-    const { inner, outer } = crossings!;
+  return assessCrossings(line, [line.level], line.tolerance, sweeping, (frame, crossings) => {
+    const centre = middle(crossings.read);
+    const { inner, outer } = crossings;
     // Any pairing: either edge may stand anywhere between its two places.
     const interval: Ends = [open((outer[0] + inner[1]) / 2, -Infinity), open((inner[0] + outer[1]) / 2, Infinity)];
     const distance = Math.abs(centre - line.nominal);
@@ -47,21 +48,21 @@ export function assessCentre(line: Line<"centre-frequency">, sweeping: Sweeping)
 export function assessBandwidth(line: Line<"bandwidth">, sweeping: Sweeping): Assessment {
   const { min, max } = line;
   const limit = min ?? max ?? NaN;
-  return assessCrossings(line, [line.level], limit, sweeping, ([crossings], frame) => {
-    const width = widthOf(crossings!.read);
-    const centre = middle(crossings!.read);
-    const [low, high] = widthEnds(crossings!);
+  return assessCrossings(line, [line.level], limit, sweeping, (frame, crossings) => {
+    const width = widthOf(crossings.read);
+    const centre = middle(crossings.read);
+    const [low, high] = widthEnds(crossings);
     const above = min === undefined ? [Infinity, Infinity, Infinity] : [width - min, low - min, high - min];
     const below = max === undefined ? [Infinity, Infinity, Infinity] : [max - width, max - high, max - low];
     const [margin = NaN, lowerEnd = NaN, upperEnd = NaN] = above.map((figure, index) =>
-      Math.min(figure, below[index]!),
+      Math.min(figure, below[index] as number),
     );
     return {
       ...frame,
       tolerance: RELATIVE_TOLERANCE * centre,
       value: width,
       frequency: centre,
-      limit: (above[0]! <= below[0]! ? min : max) ?? limit,
+      limit: ((above[0] as number) <= (below[0] as number) ? min : max) ?? limit,
       margin,
       interval: [low, high],
       marginInterval: [lowerEnd, upperEnd],
@@ -71,12 +72,12 @@ export function assessBandwidth(line: Line<"bandwidth">, sweeping: Sweeping): As
 }
 
 export function assessShapeFactor(line: Line<"shape-factor">, sweeping: Sweeping): Assessment {
-  return assessCrossings(line, line.levels, line.max, sweeping, ([first, second], frame) => {
-    const factor = widthOf(second!.read) / widthOf(first!.read);
-    const [firstLow, firstHigh] = widthEnds(first!);
-    const [secondLow, secondHigh] = widthEnds(second!);
+  return assessCrossings(line, line.levels, line.max, sweeping, (frame, first, second) => {
+    const factor = widthOf(second.read) / widthOf(first.read);
+    const [firstLow, firstHigh] = widthEnds(first);
+    const [secondLow, secondHigh] = widthEnds(second);
     const interval: Ends = [secondLow / firstHigh, firstLow > 0 ? secondHigh / firstLow : Infinity];
-    const centre = middle(first!.read);
+    const centre = middle(first.read);
     return {
       ...frame,
       tolerance: RELATIVE_TOLERANCE * line.max,
@@ -94,14 +95,14 @@ export function assessShapeFactor(line: Line<"shape-factor">, sweeping: Sweeping
 /** Finds the peak and the crossings of each level, or says why they cannot be found. */
 function assessCrossings(
   line: CrossingLine,
-  levels: readonly number[],
+  levels: readonly [number] | readonly [number, number],
   limit: number,
   sweeping: Sweeping,
-  assess: (crossings: readonly MovedCrossings[], frame: Frame) => Assessment,
+  assess: (frame: Frame, first: MovedCrossings, second: MovedCrossings) => Assessment,
 ): Assessment {
   const { curves, setup } = sweeping;
   const { frequency } = curves;
-  const sweep: Band = [frequency[0]!, frequency[frequency.length - 1]!];
+  const sweep = bandOf(frequency);
   const within = line.within === undefined ? sweep : sweeping.testBand(line.within);
   const searched = within ?? line.within ?? sweep;
   const common = { band: searched, standing: false, tolerance: 0 };
@@ -116,15 +117,18 @@ function assessCrossings(
   if (peak < 0 || loss[peak] === Infinity) return unreached(limit, frame, "There is no peak within the search band.");
   const shift = levelUncertainty(setup);
   const at = (level: number) => crossingsAt(frequency, loss, peak, level, line.maxStep);
-  const crossings = levels.map((level) => {
+  const crossingsOf = (level: number): MovedCrossings => {
     const read = at(level);
     return shift === 0
       ? { read, inner: read, outer: read }
       : { read, inner: at(level - shift), outer: at(level + shift) };
-  });
-  const lost = levels.findIndex((_, index) => Number.isNaN(widthOf(crossings[index]!.read)));
-  if (lost >= 0) return unreached(limit, frame, describeLost(levels[lost]!, crossings[lost]!.read));
-  const found = assess(crossings, frame);
+  };
+  const [firstLevel, secondLevel = firstLevel] = levels;
+  const first = crossingsOf(firstLevel);
+  const second = secondLevel === firstLevel ? first : crossingsOf(secondLevel);
+  if (Number.isNaN(widthOf(first.read))) return unreached(limit, frame, describeLost(firstLevel, first.read));
+  if (Number.isNaN(widthOf(second.read))) return unreached(limit, frame, describeLost(secondLevel, second.read));
+  const found = assess(frame, first, second);
   return withAdvice(found, () => adviseMargin(formatFigure(-found.marginInterval[0], line.kind)));
 }
 

@@ -8,7 +8,7 @@ import type { Band, Requirement, Series } from "./contract.ts";
 import { segmentsWithin, valueBetween, type Segment } from "./coverage.ts";
 import { readingsOf, type Readings } from "./curves.ts";
 import { formatFigure } from "./describe.ts";
-import { locate } from "./frequency.ts";
+import { bandOf, locate } from "./frequency.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 
 type Line<K extends Requirement["kind"]> = Extract<Requirement, { readonly kind: K }>;
@@ -50,7 +50,7 @@ function delayReadings(
   if (!curves.isMeasured("s21")) return undefined;
   const { frequency } = curves;
   const phase = curves.phase();
-  const sweep: Band = [frequency[0]!, frequency[frequency.length - 1]!];
+  const sweep = bandOf(frequency);
   const runs = segmentsWithin(frequency, phase, sweep, line.maxStep);
   const delay =
     line.aperture === undefined
@@ -72,8 +72,8 @@ function delayOfNeighbours(frequency: Series, phase: Series, runs: readonly Segm
     for (let index = first; index <= last; index += 1) {
       const below = Math.max(first, index - 1);
       const above = Math.min(last, index + 1);
-      const turns = (phase[above]! - phase[below]!) / DEGREES_PER_TURN;
-      delay[index] = -turns / (frequency[above]! - frequency[below]!);
+      const turns = ((phase[above] as number) - (phase[below] as number)) / DEGREES_PER_TURN;
+      delay[index] = -turns / ((frequency[above] as number) - (frequency[below] as number));
     }
   }
   return delay;
@@ -92,7 +92,7 @@ function delayOverAperture(
   const value = new Float64Array(grid.length).fill(NaN);
   let run = 0;
   grid.forEach((hz, index) => {
-    while (run < runs.length - 1 && hz > runs[run]!.to) run += 1;
+    while (run < runs.length - 1 && hz > (runs[run]?.to ?? Infinity)) run += 1;
     const { from, to } = runs[run] ?? { from: Infinity, to: -Infinity };
     const low = hz - aperture / 2;
     const high = hz + aperture / 2;
@@ -107,7 +107,7 @@ function delayOverAperture(
 
 function phaseAt(frequency: Series, phase: Series, hz: number): number {
   const { index, exact } = locate(frequency, hz);
-  if (frequency[index] === hz) return phase[index]!;
-  const below = exact && frequency[index]! < hz ? index : index - 1;
+  if (frequency[index] === hz) return phase[index] as number;
+  const below = exact && (frequency[index] as number) < hz ? index : index - 1;
   return valueBetween(frequency, phase, Math.min(Math.max(below, 0), frequency.length - 2), hz);
 }

@@ -47,19 +47,19 @@ function forEachDistance(
   let cross = 0;
   let square = 0;
   for (let index = first; index <= last; index += 1) {
-    const offset = frequency[index]! - meanFrequency;
-    cross += offset * (phase[index]! - meanPhase);
+    const offset = (frequency[index] as number) - meanFrequency;
+    cross += offset * ((phase[index] as number) - meanPhase);
     square += offset * offset;
   }
   const slope = cross / square;
   for (let index = first; index <= last; index += 1) {
-    const hz = frequency[index]!;
-    visit(hz, Math.abs(phase[index]! - meanPhase - slope * (hz - meanFrequency)));
+    const hz = frequency[index] as number;
+    visit(hz, Math.abs((phase[index] as number) - meanPhase - slope * (hz - meanFrequency)));
   }
 }
 
 function meanOf(values: Series, first: number, last: number): number {
   let sum = 0;
-  for (let index = first; index <= last; index += 1) sum += values[index]! - values[first]!;
-  return values[first]! + sum / (last - first + 1);
+  for (let index = first; index <= last; index += 1) sum += (values[index] as number) - (values[first] as number);
+  return (values[first] as number) + sum / (last - first + 1);
 }

@@ -38,11 +38,11 @@ export function segmentsWithin(frequency: Series, values: Series, band: Band, ma
   for (let start = begin; start <= end;) {
     const stop = endOfRun(frequency, values, start, end, maxStep);
     const isInside = stop > start || (start >= firstInside && start <= lastInside);
-    if (isInside && !Number.isNaN(values[start]!)) {
+    if (isInside && !Number.isNaN(values[start] as number)) {
       const first = Math.max(start, firstInside);
       const last = Math.min(stop, lastInside);
-      const from = start < firstInside ? band[0] : frequency[first]!;
-      const to = stop > lastInside ? band[1] : frequency[last]!;
+      const from = start < firstInside ? band[0] : (frequency[first] as number);
+      const to = stop > lastInside ? band[1] : (frequency[last] as number);
       segments.push({ from, to, first, last });
     }
     start = stop + 1;
@@ -52,11 +52,11 @@ export function segmentsWithin(frequency: Series, values: Series, band: Band, ma
 
 /** Last index of the unbroken run of samples that begins at `start`. */
 function endOfRun(frequency: Series, values: Series, start: number, end: number, maxStep: number): number {
-  if (Number.isNaN(values[start]!)) return start;
+  if (Number.isNaN(values[start] as number)) return start;
   let stop = start;
-  while (stop < end && !Number.isNaN(values[stop + 1]!)) {
-    const reach = frequency[stop]! + maxStep;
-    if (frequency[stop + 1]! > reach && !sameFrequency(frequency[stop + 1]!, reach)) break;
+  while (stop < end && !Number.isNaN(values[stop + 1] as number)) {
+    const reach = (frequency[stop] as number) + maxStep;
+    if ((frequency[stop + 1] as number) > reach && !sameFrequency(frequency[stop + 1] as number, reach)) break;
     stop += 1;
   }
   return stop;
@@ -104,9 +104,10 @@ function gapsBetween(covered: readonly Band[], band: Band): Band[] {
  * @param below index of the sample below
  */
 export function valueBetween(frequency: Series, values: Series, below: number, hz: number): number {
-  const start = values[below]!;
-  const end = values[below + 1]!;
+  const start = values[below] as number;
+  const end = values[below + 1] as number;
   if (!Number.isFinite(start) || !Number.isFinite(end)) return Number.isNaN(start + end) ? NaN : Infinity;
-  const fraction = (hz - frequency[below]!) / (frequency[below + 1]! - frequency[below]!);
+  const fraction =
+    (hz - (frequency[below] as number)) / ((frequency[below + 1] as number) - (frequency[below] as number));
   return start + (end - start) * fraction;
 }

@@ -1,6 +1,7 @@
 // The peak of a passband and the frequencies where it has fallen by a level, searched outwards.
 import type { Band, Series } from "./contract.ts";
 import { segmentsWithin } from "./coverage.ts";
+import { bandOf } from "./frequency.ts";
 
 /** Hz, below and above the peak; NaN on a side that never crosses, or not before a hole. */
 export type Crossings = readonly [lower: number, upper: number];
@@ -10,7 +11,7 @@ export function peakIndex(frequency: Series, loss: Series, within: Band): number
   let peak = -1;
   for (const { first, last } of segmentsWithin(frequency, loss, within)) {
     for (let index = first; index <= last; index += 1) {
-      if (peak < 0 || loss[index]! < loss[peak]!) peak = index;
+      if (peak < 0 || (loss[index] as number) < (loss[peak] as number)) peak = index;
     }
   }
   return peak;
@@ -31,10 +32,10 @@ export function crossingsAt(
   maxStep = Infinity,
 ): Crossings {
   if (level <= 0) return [NaN, NaN];
-  const sweep: Band = [frequency[0]!, frequency[frequency.length - 1]!];
+  const sweep = bandOf(frequency);
   const run = segmentsWithin(frequency, loss, sweep, maxStep).find(({ first, last }) => first <= peak && peak <= last);
   if (run === undefined) return [NaN, NaN];
-  const target = loss[peak]! + level;
+  const target = (loss[peak] as number) + level;
   return [
     crossingTowards(frequency, loss, peak, target, -1, run.first),
     crossingTowards(frequency, loss, peak, target, 1, run.last),
@@ -50,11 +51,14 @@ function crossingTowards(
   end: number,
 ): number {
   for (let index = peak; index !== end; index += direction) {
-    const inner = loss[index]!;
-    const outer = loss[index + direction]!;
+    const inner = loss[index] as number;
+    const outer = loss[index + direction] as number;
     if (outer < target) continue;
     const fraction = outer === Infinity ? 0 : (target - inner) / (outer - inner);
-    return frequency[index]! + (frequency[index + direction]! - frequency[index]!) * fraction;
+    return (
+      (frequency[index] as number) +
+      ((frequency[index + direction] as number) - (frequency[index] as number)) * fraction
+    );
   }
   return NaN;
 }

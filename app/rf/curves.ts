@@ -79,7 +79,11 @@ export class Curves {
       const low = new Float64Array(this.points);
       const high = new Float64Array(this.points);
       for (let index = 0; index < value.length; index += 1) {
-        [low[index], high[index]] = reflectionEnds(value[index]!, magnitudeOf(through[index]!), terms);
+        [low[index], high[index]] = reflectionEnds(
+          value[index] as number,
+          magnitudeOf(through[index] as number),
+          terms,
+        );
       }
       const endsBetween = (reading: number, below: number, hz: number) =>
         reflectionEnds(reading, magnitudeOf(valueBetween(this.frequency, through, below, hz)), terms);
@@ -99,7 +103,7 @@ export class Curves {
       return returnLoss.map((loss) => lossOf(1 - magnitudeOf(2 * loss)));
     }
     const other = this.loss(backward);
-    return this.loss(forward).map((loss, index) => loss + other[index]!);
+    return this.loss(forward).map((loss, index) => loss + (other[index] as number));
   }
 
   #keep(key: string, make: () => Readings): Readings {
@@ -131,7 +135,7 @@ export function readingsOf(
   const low = new Float64Array(value.length);
   const high = new Float64Array(value.length);
   for (let index = 0; index < value.length; index += 1) {
-    [low[index], high[index]] = endsOf(value[index]!);
+    [low[index], high[index]] = endsOf(value[index] as number);
   }
   return { frequency, value, low, high, endsBetween: endsOf };
 }
@@ -152,8 +156,8 @@ function remember<Key, Value>(store: Map<Key, Value>, key: Key, make: () => Valu
 function lossesOf(trace: Trace): Series {
   const loss = new Float64Array(trace.re.length);
   for (let index = 0; index < loss.length; index += 1) {
-    const re = trace.re[index]!;
-    const im = trace.im[index]!;
+    const re = trace.re[index] as number;
+    const im = trace.im[index] as number;
     const power = re * re + im * im;
     loss[index] = power > 1e-290 && power < Infinity ? -10 * Math.log10(power) : lossOfExtreme(re, im);
   }
@@ -169,8 +173,8 @@ function unwrappedPhase(trace: Trace): Series {
   const phase = new Float64Array(trace.re.length);
   let previous = NaN;
   for (let index = 0; index < phase.length; index += 1) {
-    const re = trace.re[index]!;
-    const im = trace.im[index]!;
+    const re = trace.re[index] as number;
+    const im = trace.im[index] as number;
     if (re === 0 && im === 0) {
       phase[index] = NaN;
       continue;

@@ -28,16 +28,16 @@ export function decimate(
   const scale = to > from ? columns / (to - from) : 0;
   const kept: number[] = [];
   for (let start = first; start <= last;) {
-    const column = columnOf(frequency[start]!, from, scale, columns);
+    const column = columnOf(frequency[start] as number, from, scale, columns);
     let stop = start;
-    while (stop < last && columnOf(frequency[stop + 1]!, from, scale, columns) === column) stop += 1;
+    while (stop < last && columnOf(frequency[stop + 1] as number, from, scale, columns) === column) stop += 1;
     keepExtremes(value, start, stop, kept);
     start = stop + 1;
   }
   const points = withEnds(kept, value, first, last);
   return {
-    x: Float64Array.from(points, (index) => frequency[index]!),
-    y: Float64Array.from(points, (index) => Math.min(LARGE, Math.max(-LARGE, value[index]!))),
+    x: Float64Array.from(points, (index) => frequency[index] as number),
+    y: Float64Array.from(points, (index) => Math.min(LARGE, Math.max(-LARGE, value[index] as number))),
   };
 }
 
@@ -61,10 +61,10 @@ function keepExtremes(value: Series, start: number, stop: number, kept: number[]
   let least = -1;
   let largest = -1;
   for (let index = start; index <= stop; index += 1) {
-    const y = value[index]!;
+    const y = value[index] as number;
     if (Number.isNaN(y)) continue;
-    if (least < 0 || y < value[least]!) least = index;
-    if (largest < 0 || y > value[largest]!) largest = index;
+    if (least < 0 || y < (value[least] as number)) least = index;
+    if (largest < 0 || y > (value[largest] as number)) largest = index;
   }
   if (least < 0) return;
   kept.push(Math.min(least, largest));
@@ -75,8 +75,8 @@ function keepExtremes(value: Series, start: number, stop: number, kept: number[]
 function withEnds(kept: readonly number[], value: Series, first: number, last: number): number[] {
   let start = first;
   let stop = last;
-  while (start <= last && Number.isNaN(value[start]!)) start += 1;
-  while (stop > start && Number.isNaN(value[stop]!)) stop -= 1;
+  while (start <= last && Number.isNaN(value[start] as number)) start += 1;
+  while (stop > start && Number.isNaN(value[stop] as number)) stop -= 1;
   if (start > last || stop < start) return [];
   const inner = kept.filter((index) => index !== start && index !== stop);
   return start === stop ? [start] : [start, ...inner, stop];

@@ -7,25 +7,29 @@ function factorsOf({ ppmPerKelvin, either = false, from }: Drift, temperature: n
   return either && shift !== 0 ? [1 + shift, 1 - shift] : [1 + shift];
 }
 
+/** How a sweep changes towards one temperature: frequencies and insertion losses are multiplied. */
+export interface Move {
+  readonly factor: number;
+  readonly lossFactor: number;
+}
+
 /**
- * The sweep at each temperature of a drift and for each of its signs. The mask stays where it is; above the temperature
+ * The moves of a drift: one for each temperature and each of its signs. The mask stays where it is; above the temperature
  * of the measurement insertion loss grows by √(1 + lossPerKelvin (T - T₀)), as the square root of a metal's resistivity.
  *
  * @throws RangeError for a drift without a temperature to predict
  */
-export function driftedSweeps(
-  prepared: Prepared,
-  drift: Drift,
-): readonly { readonly sweep: Prepared; readonly lossFactor: number }[] {
+export function movesOf(drift: Drift): readonly Move[] {
   if (drift.to.length === 0) throw new RangeError("drift: no temperature to predict");
   return drift.to.flatMap((temperature) => {
     const rise = Math.max(0, temperature - drift.from);
     const lossFactor = Math.sqrt(1 + (drift.lossPerKelvin ?? 0) * rise);
-    return factorsOf(drift, temperature).map((factor) => ({ sweep: moved(prepared, factor), lossFactor }));
+    return factorsOf(drift, temperature).map((factor) => ({ factor, lossFactor }));
   });
 }
 
-function moved(prepared: Prepared, factor: number): Prepared {
+/** The sweep with its frequencies multiplied. */
+export function moved(prepared: Prepared, factor: number): Prepared {
   if (factor === 1) return prepared;
   const frequency = prepared.network.frequency.map((hz) => hz * factor);
   return { ...prepared, network: { ...prepared.network, frequency } };

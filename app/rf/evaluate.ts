@@ -3,7 +3,8 @@ import { assess, nothingAssessed } from "./assess.ts";
 import { conclude, verdictOf, type Assessment } from "./assessment.ts";
 import type { Band, Drift, EvaluateOptions, Prepared, Requirement, Result, Setup, TwoPort } from "./contract.ts";
 import { curvesOf } from "./curves.ts";
-import { driftedSweeps } from "./drift.ts";
+import { moved, movesOf } from "./drift.ts";
+import { bandOf } from "./frequency.ts";
 import { isUnknown, preparedAt } from "./prepare.ts";
 import { checkRequirement } from "./requirement-check.ts";
 import { Sweeping } from "./sweeping.ts";
@@ -24,30 +25,30 @@ export function evaluate(
   options: EvaluateOptions = {},
 ): Result[] {
   const { setup = {}, drift, lowestTestFrequency } = options;
-  requirements.forEach((requirement) => checkRequirement(requirement, lowestTestFrequency));
+  requirements.forEach((requirement) => {
+    checkRequirement(requirement, lowestTestFrequency);
+  });
   checkSetup(setup);
   const prepared = preparedAt(network, options.impedance);
   if (drift !== undefined) return predict(prepared, requirements, { setup, drift, lowestTestFrequency });
-  const assessments = assessAll(prepared, requirements, setup, lowestTestFrequency);
-  return assessments.map((assessment, index) => conclude(requirements[index]!, assessment));
+  const assessOne = assessorOf(prepared, setup, lowestTestFrequency);
+  return requirements.map((requirement) => conclude(requirement, assessOne(requirement)));
 }
 
-/** The assessments of one prepared sweep, one per requirement. The requirements are taken as checked. */
-export function assessAll(
+/** What assesses requirements on one prepared sweep. The requirements are taken as checked. */
+export function assessorOf(
   prepared: Prepared,
-  requirements: readonly Requirement[],
   setup: Setup,
   lowestTestFrequency?: number,
   lossFactor?: number,
-): Assessment[] {
-  if (isUnknown(prepared)) return requirements.map((requirement) => notRenormalised(requirement, prepared));
+): (requirement: Requirement) => Assessment {
+  if (isUnknown(prepared)) return (requirement) => notRenormalised(requirement, prepared);
   const sweeping = new Sweeping(curvesOf(prepared), setup, lowestTestFrequency, lossFactor);
-  return requirements.map((requirement) => assess(requirement, sweeping));
+  return (requirement) => assess(requirement, sweeping);
 }
 
 function notRenormalised(requirement: Requirement, prepared: Prepared): Assessment {
-  const { frequency } = prepared.network;
-  const band: Band = "band" in requirement ? requirement.band : [frequency[0]!, frequency[frequency.length - 1]!];
+  const band: Band = "band" in requirement ? requirement.band : bandOf(prepared.network.frequency);
   const impedances = prepared.impedance.join(" and ");
   const reason = `An S-parameter was not measured, so the file cannot be renormalised to ${impedances} Ω.`;
   return nothingAssessed(requirement, band, reason);
@@ -58,18 +59,18 @@ function predict(
   requirements: readonly Requirement[],
   options: { readonly setup: Setup; readonly drift: Drift; readonly lowestTestFrequency?: number | undefined },
 ): Result[] {
-  const moved = driftedSweeps(prepared, options.drift).map(({ sweep, lossFactor }) =>
-    assessAll(sweep, requirements, options.setup, options.lowestTestFrequency, lossFactor),
+  const assessors = movesOf(options.drift).map(({ factor, lossFactor }) =>
+    assessorOf(moved(prepared, factor), options.setup, options.lowestTestFrequency, lossFactor),
   );
-  return requirements.map((requirement, index) => {
-    const worst = worstOf(moved.map((assessments) => assessments[index]!));
+  return requirements.map((requirement) => {
+    const worst = worstOf(assessors.map((assessOne) => assessOne(requirement)));
     const result = conclude(requirement, worst);
     return result.verdict === "pass" ? { ...result, verdict: "conditional-pass" } : result;
   });
 }
 
 /** The assessment with the worst verdict, of equals the one with the least margin. */
-export function worstOf(assessments: readonly Assessment[]): Assessment {
+function worstOf(assessments: readonly Assessment[]): Assessment {
   return assessments.reduce((worst, assessment) => {
     const difference = verdictRank(verdictOf(assessment)) - verdictRank(verdictOf(worst));
     return difference < 0 || (difference === 0 && assessment.margin < worst.margin) ? assessment : worst;

@@ -1,5 +1,5 @@
 // Frequencies: comparison within 1e-9 relative, and the place of a frequency on a grid.
-import type { Series } from "./contract.ts";
+import type { Band, Series } from "./contract.ts";
 
 const RELATIVE_TOLERANCE = 1e-9;
 
@@ -19,7 +19,7 @@ export function firstAtOrAbove(frequency: Series, hz: number): number {
   let high = frequency.length;
   while (low < high) {
     const middle = (low + high) >>> 1;
-    if (frequency[middle]! < hz) low = middle + 1;
+    if ((frequency[middle] as number) < hz) low = middle + 1;
     else high = middle;
   }
   return low;
@@ -33,10 +33,15 @@ export function firstAtOrAbove(frequency: Series, hz: number): number {
 export function locate(frequency: Series, hz: number): { readonly index: number; readonly exact: boolean } {
   const above = firstAtOrAbove(frequency, hz);
   const candidates = [above - 1, above].filter(
-    (index) => index >= 0 && index < frequency.length && sameFrequency(frequency[index]!, hz),
+    (index) => index >= 0 && index < frequency.length && sameFrequency(frequency[index] as number, hz),
   );
   if (candidates.length === 0) return { index: above, exact: false };
-  const distance = (index: number) => Math.abs(frequency[index]! - hz);
+  const distance = (index: number) => Math.abs((frequency[index] as number) - hz);
   const nearest = candidates.reduce((best, index) => (distance(index) < distance(best) ? index : best));
   return { index: nearest, exact: true };
+}
+
+/** The band from the first to the last sample, Hz. */
+export function bandOf(frequency: Series): Band {
+  return [frequency[0] as number, frequency[frequency.length - 1] as number];
 }

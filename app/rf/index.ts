@@ -1,2 +1,34 @@
 // The core's public face: everything outside app/rf imports from here.
 export * from "./contract.ts";
+export { checkNetwork, type CheckContext } from "./check-network.ts";
+export { decimate } from "./decimate.ts";
+export { evaluate } from "./evaluate.ts";
+export { formatTouchstone } from "./format-touchstone.ts";
+export { limitAt } from "./limits.ts";
+export {
+  isMeasured,
+  measuredRequirements,
+  type DeclaredDefinition,
+  type MeasuredDefinition,
+  type RequirementDefinition,
+  type SpecificationLine,
+} from "./line-definition.ts";
+export { evaluateLot } from "./lot.ts";
+export { renormalise, toImpedance } from "./network.ts";
+export { prepare } from "./prepare.ts";
+export { sameData } from "./same-data.ts";
+export {
+  readCell,
+  readNumber,
+  readResult,
+  storeCell,
+  storeNumber,
+  storeResult,
+  type StoredCell,
+  type StoredNumber,
+  type StoredResult,
+} from "./stored-result.ts";
+export { MAX_POINTS, parseTouchstone } from "./touchstone.ts";
+export { TouchstoneError, type TouchstoneErrorCode } from "./touchstone-error.ts";
+export { complies, verdictRank, worstVerdict } from "./verdict.ts";
+export { CORE_VERSION } from "./version.ts";

@@ -48,7 +48,7 @@ function slopedPieces(limit: SlopedLimit, band: Band): LimitPiece[] {
   points.forEach(([from, level], index) => {
     const [to, nextLevel] = points[index + 1] ?? [from, level];
     const isLastPoint = index === points.length - 1;
-    if (isLastPoint && index > 0 && points[index - 1]![0] !== from) return;
+    if (isLastPoint && index > 0 && points[index - 1]?.[0] !== from) return;
     if (isBelow(to, band[0]) || isBelow(band[1], from)) return;
     const width = scale === "log" ? Math.log(to / from) : to - from;
     const slope = width > 0 ? (nextLevel - level) / width : 0;
@@ -65,8 +65,8 @@ export function checkLimit(limit: Limit, band: Band, name: string): void {
     return;
   }
   checkPoints(limit, name);
-  const first = limit.points[0]![0];
-  const last = limit.points.at(-1)![0];
+  const [first = NaN] = limit.points[0] ?? [];
+  const [last = NaN] = limit.points.at(-1) ?? [];
   if (isBelow(band[0], first) || isBelow(last, band[1])) {
     throw new RangeError(`${name}: the band ${band[0]} to ${band[1]} Hz reaches beyond the limit's points`);
   }
@@ -74,14 +74,14 @@ export function checkLimit(limit: Limit, band: Band, name: string): void {
 
 function checkPoints(limit: SlopedLimit, name: string): void {
   const { points, scale } = limit;
-  if (scale !== "linear" && scale !== "log") throw new RangeError(`${name}: unknown scale ${String(scale)}`);
+  if (!["linear", "log"].includes(scale)) throw new RangeError(`${name}: unknown scale ${scale}`);
   if (points.length === 0) throw new RangeError(`${name}: a sloped limit needs points`);
   points.forEach(([hz, level], index) => {
     if (!Number.isFinite(hz) || !Number.isFinite(level) || hz < 0 || (scale === "log" && hz === 0)) {
       throw new RangeError(`${name}: point ${index + 1} of the limit, ${hz} Hz ${level} dB, is not usable`);
     }
-    if (index > 0 && hz < points[index - 1]![0]) throw new RangeError(`${name}: the limit's points must ascend`);
-    if (index > 1 && hz === points[index - 2]![0]) throw new RangeError(`${name}: three limit points at ${hz} Hz`);
+    if (hz < (points[index - 1]?.[0] ?? 0)) throw new RangeError(`${name}: the limit's points must ascend`);
+    if (hz === points[index - 2]?.[0]) throw new RangeError(`${name}: three limit points at ${hz} Hz`);
   });
 }
 

@@ -88,7 +88,7 @@ const REVISION_LETTERS = "ABCDEFGHJKLMNPRTUVWY";
  */
 export function nextRevisionLetter(letter: string | null): string {
   if (letter === null) return "A";
-  const places = [...letter].map((character) => REVISION_LETTERS.indexOf(character));
+  const places = Array.from(letter, (character) => REVISION_LETTERS.indexOf(character));
   if (places.length === 0 || places.includes(-1)) throw new RangeError(`“${letter}” is not a revision letter`);
   for (let place = places.length - 1; place >= 0; place -= 1) {
     const next = (places[place] ?? 0) + 1;

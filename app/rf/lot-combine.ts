@@ -40,7 +40,7 @@ function fromWholeSweeps(sweeps: readonly SweepAssessment[]): SweepAssessment {
 
 function merged(sweeps: readonly SweepAssessment[]): SweepAssessment {
   const reached = sweeps.filter(({ assessment }) => isReached(assessment));
-  if (reached.length === 0) return sweeps[0]!;
+  if (reached.length === 0) return sweeps[0] as SweepAssessment;
   const reported = leastBy(reached, ({ assessment }) => assessment.margin);
   const lower = leastBy(reached, ({ assessment }) => assessment.marginInterval[0]).assessment;
   const upper = leastBy(reached, ({ assessment }) => assessment.marginInterval[1]).assessment;

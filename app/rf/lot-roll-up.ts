@@ -23,10 +23,17 @@ export function capped(result: Result): Result {
  * The line's verdict: the worst of its scored cells, and not covered where too little was measured, a fail excepted.
  * A prediction can make a line worse by what it predicts, never by being a prediction: a supplier who states a drift
  * stands no worse than one who does not.
+ *
+ * @param aliases units that count as another one, because their data is the same
  */
-export function rollUp(requirement: Requirement, scored: readonly ScoredCell[], options: LotOptions): Row {
+export function rollUp(
+  requirement: Requirement,
+  scored: readonly ScoredCell[],
+  options: LotOptions,
+  aliases: ReadonlyMap<string, string> = new Map(),
+): Row {
   const cells = scored.map(({ cell }) => cell);
-  const shortage = shortageOf(requirement, cells, options);
+  const shortage = shortageOf(requirement, cells, options, aliases);
   const verdicts = scored
     .filter(({ cell }) => cell.scored)
     .map(({ cell, own }) => (cell.predicted && isMeasuredBasis(options) ? own : cell.result.verdict));
@@ -48,17 +55,23 @@ function worstCell(cells: readonly Cell[]): number {
 }
 
 /** Why too little was measured for the line, if so. */
-function shortageOf(requirement: Requirement, cells: readonly Cell[], options: LotOptions): string | undefined {
+function shortageOf(
+  requirement: Requirement,
+  cells: readonly Cell[],
+  options: LotOptions,
+  aliases: ReadonlyMap<string, string>,
+): string | undefined {
   const measured = cells.filter(({ predicted, scored }) => scored && !predicted);
   if (scopeOf(requirement, options) === "ambient") {
     return measured.length === 0 ? "There is no measurement at ambient temperature." : undefined;
   }
   if (options.range === undefined) return "The specification gives no temperature range.";
   if (!isMeasuredBasis(options)) return `Data of a ${basisName(options)} does not count over temperature.`;
-  const units = [...new Set(cells.filter(({ predicted }) => !predicted).map(({ unit }) => unit))];
+  const unitOf = (cell: Cell) => aliases.get(cell.unit) ?? cell.unit;
+  const units = [...new Set(cells.filter(({ predicted }) => !predicted).map(unitOf))];
   const covering = units.filter((unit) =>
     coversRange(
-      measured.filter((cell) => cell.unit === unit).map(({ temperature }) => temperature),
+      measured.filter((cell) => unitOf(cell) === unit).map(({ temperature }) => temperature),
       options,
     ),
   );

@@ -48,9 +48,11 @@ export function checkMask(requirements: readonly Requirement[]): Contradiction[]
 export function describeContradiction(contradiction: Contradiction, lineNumber: (id: string) => string): string {
   const [first, second] = contradiction.lines;
   if (second === undefined) return `Line ${lineNumber(first)}: ${contradiction.detail}.`;
-  const where = contradiction.band ? ` at ${formatBand(contradiction.band)}` : "";
+  const where = contradiction.band ? ` ${preposition(contradiction.band)} ${formatBand(contradiction.band)}` : "";
   return `Lines ${lineNumber(first)} and ${lineNumber(second)} cannot both hold${where}: ${contradiction.detail}.`;
 }
+
+const preposition = ([from, to]: Band) => (from === to ? "at" : "from");
 
 function place(requirement: Requirement): { band?: Band } {
   if (!("band" in requirement)) return {};

@@ -18,37 +18,49 @@ export function checkRequirement(requirement: Requirement, lowestTestFrequency?:
 function checkFigures(requirement: Requirement, name: string, lowestTestFrequency: number | undefined): void {
   switch (requirement.kind) {
     case "insertion-loss":
-      return checkLimit(requirement.max, testBand(requirement.band, lowestTestFrequency) ?? requirement.band, name);
     case "rejection":
-      if (requirement.relativeTo !== undefined) checkBand(requirement.relativeTo, name);
-      return checkLimit(requirement.min, testBand(requirement.band, lowestTestFrequency) ?? requirement.band, name);
     case "return-loss":
-      if (![1, 2].includes(requirement.port)) throw new RangeError(`${name}: there is no port ${requirement.port}`);
-      return checkLimit(requirement.min, testBand(requirement.band, lowestTestFrequency) ?? requirement.band, name);
     case "reverse-isolation":
-      return checkLimit(requirement.min, testBand(requirement.band, lowestTestFrequency) ?? requirement.band, name);
+      checkLevel(requirement, name, lowestTestFrequency);
+      break;
     case "ripple":
-    case "group-delay-variation":
-      checkPositive(requirement.window, `${name}: window`);
-      if (requirement.kind !== "ripple") checkPositive(requirement.aperture, `${name}: aperture`);
-      return checkFinite(requirement.max, `${name}: max`);
     case "group-delay":
-      checkPositive(requirement.aperture, `${name}: aperture`);
-      return checkFinite(requirement.max, `${name}: max`);
+    case "group-delay-variation":
     case "phase-linearity":
-      return checkFinite(requirement.max, `${name}: max`);
+      if ("window" in requirement) checkPositive(requirement.window, `${name}: window`);
+      if ("aperture" in requirement) checkPositive(requirement.aperture, `${name}: aperture`);
+      checkFinite(requirement.max, `${name}: max`);
+      break;
     case "centre-frequency":
       checkPositive(requirement.level, `${name}: level`);
       checkPositive(requirement.nominal, `${name}: nominal`);
-      return checkFinite(requirement.tolerance, `${name}: tolerance`);
+      checkFinite(requirement.tolerance, `${name}: tolerance`);
+      break;
     case "bandwidth":
-      return checkBandwidth(requirement, name);
+      checkBandwidth(requirement, name);
+      break;
     case "shape-factor":
-      requirement.levels.forEach((level) => checkPositive(level, `${name}: level`));
-      return checkFinite(requirement.max, `${name}: max`);
+      for (const level of requirement.levels) checkPositive(level, `${name}: level`);
+      checkFinite(requirement.max, `${name}: max`);
+      break;
     default:
       throw new RangeError(`${name}: unknown kind ${String((requirement as { kind: unknown }).kind)}`);
   }
+}
+
+type LevelKind = "insertion-loss" | "rejection" | "return-loss" | "reverse-isolation";
+
+function checkLevel(
+  requirement: Extract<Requirement, { readonly kind: LevelKind }>,
+  name: string,
+  lowestTestFrequency: number | undefined,
+): void {
+  if (requirement.kind === "return-loss" && ![1, 2].includes(requirement.port)) {
+    throw new RangeError(`${name}: there is no port ${requirement.port}`);
+  }
+  if ("relativeTo" in requirement && requirement.relativeTo !== undefined) checkBand(requirement.relativeTo, name);
+  const limit = requirement.kind === "insertion-loss" ? requirement.max : requirement.min;
+  checkLimit(limit, testBand(requirement.band, lowestTestFrequency) ?? requirement.band, name);
 }
 
 function checkBandwidth({ level, min, max }: Extract<Requirement, { readonly kind: "bandwidth" }>, name: string): void {

@@ -61,14 +61,18 @@ export function forEachWindow(
   const beyond = segments.at(-1)?.last ?? -1;
   for (const start of windowStarts(readings, segments, band, window)) {
     const end = start + window;
-    while (incoming <= beyond && !(frequency[incoming]! > end && !sameFrequency(frequency[incoming]!, end))) {
-      if (!Number.isNaN(value[incoming]!)) {
+    while (
+      incoming <= beyond &&
+      !((frequency[incoming] as number) > end && !sameFrequency(frequency[incoming] as number, end))
+    ) {
+      if (!Number.isNaN(value[incoming] as number)) {
         highest.push(incoming);
         lowest.push(incoming);
       }
       incoming += 1;
     }
-    const isGone = (index: number) => frequency[index]! < start && !sameFrequency(frequency[index]!, start);
+    const isGone = (index: number) =>
+      (frequency[index] as number) < start && !sameFrequency(frequency[index] as number, start);
     const startValue = startReader.at(start);
     const endValue = endReader.at(end);
     extent.largest = greaterOf(greaterOf(highest.best(isGone), startValue), endValue);
@@ -92,8 +96,8 @@ function* windowStarts(
   let atEnd = firstAtOrAbove(frequency, band[0] + window);
   yield band[0];
   for (;;) {
-    const byStart = atStart <= stop ? frequency[atStart]! : Infinity;
-    const byEnd = atEnd <= stop ? frequency[atEnd]! - window : Infinity;
+    const byStart = atStart <= stop ? (frequency[atStart] as number) : Infinity;
+    const byEnd = atEnd <= stop ? (frequency[atEnd] as number) - window : Infinity;
     const next = Math.min(byStart, byEnd);
     if (!(next < lastStart)) break;
     if (next > band[0]) yield next;
@@ -118,11 +122,14 @@ class EdgeReader {
 
   at(hz: number): number {
     const { frequency, value } = this.#readings;
-    while (this.#segment < this.#segments.length - 1 && hz > this.#segments[this.#segment]!.to) this.#segment += 1;
+    while (this.#segment < this.#segments.length - 1 && hz > (this.#segments[this.#segment]?.to ?? Infinity))
+      this.#segment += 1;
     const part = this.#segments[this.#segment];
     if (part === undefined || hz < part.from || hz > part.to) return NaN;
-    while (this.#above < frequency.length && frequency[this.#above]! < hz) this.#above += 1;
-    return frequency[this.#above] === hz ? value[this.#above]! : valueBetween(frequency, value, this.#above - 1, hz);
+    while (this.#above < frequency.length && (frequency[this.#above] as number) < hz) this.#above += 1;
+    return frequency[this.#above] === hz
+      ? (value[this.#above] as number)
+      : valueBetween(frequency, value, this.#above - 1, hz);
   }
 }
 
@@ -140,16 +147,19 @@ class MonotoneQueue {
 
   push(index: number): void {
     const indices = this.#indices;
-    while (indices.length > this.#head && this.#replaces(this.#values[index]!, this.#values[indices.at(-1)!]!))
+    while (
+      indices.length > this.#head &&
+      this.#replaces(this.#values[index] as number, this.#values[indices.at(-1) as number] as number)
+    )
       indices.pop();
     indices.push(index);
   }
 
   /** The extreme value of what is not gone, NaN where nothing is left. */
   best(isGone: (index: number) => boolean): number {
-    while (this.#head < this.#indices.length && isGone(this.#indices[this.#head]!)) this.#head += 1;
+    while (this.#head < this.#indices.length && isGone(this.#indices[this.#head] as number)) this.#head += 1;
     const index = this.#indices[this.#head];
-    return index === undefined ? NaN : this.#values[index]!;
+    return index === undefined ? NaN : (this.#values[index] as number);
   }
 }
 

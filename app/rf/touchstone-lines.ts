@@ -55,6 +55,11 @@ export class LineCursor {
     return this.at > this.lineStart;
   }
 
+  /** Bytes from the cursor to the end. */
+  get remaining(): number {
+    return this.bytes.length - this.at;
+  }
+
   /** Takes the rest of the line: nothing, or a comment. The cursor must stand at either or at blanks before it. */
   finishLine(): void {
     this.skipBlanks();

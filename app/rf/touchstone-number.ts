@@ -1,5 +1,7 @@
 // Reads one decimal number from bytes to the very double that the written decimal is nearest to.
 
+import { longQuotient, POWERS_OF_TEN } from "./touchstone-quotient.ts";
+
 const PLUS = 43;
 const MINUS = 45;
 const POINT_AFTER_ZERO = 46 - 48;
@@ -8,12 +10,12 @@ const LOWER_CASE = 32;
 const LETTER_D = 100;
 const LETTER_E = 101;
 const TWO_POW_53 = 9007199254740992;
-/** More digits than this may not fit 53 bits. */
-const EXACT_DIGITS = 16;
+/** Digits kept in each of two 32-bit integers. */
+const HALF_DIGITS = 9;
+const ALL_DIGITS = 18;
 const LARGEST_EXACT_POWER = 22;
 /** Characters; the longest exact decimal of a double has fewer than 800. */
 const LONGEST_NUMBER = 1000;
-const POWERS_OF_TEN = Float64Array.from({ length: LARGEST_EXACT_POWER + 1 }, (_, power) => Number(`1e${power}`));
 
 /** 1 for the bytes that may follow a number: blank, tab, line ends, comment, separator. */
 const ENDS_NUMBER = new Uint8Array(256);
@@ -38,7 +40,8 @@ export class NumberScanner {
    * exponent, so that 1.1 GHz is the double nearest to 1100000000 and not a rounded product.
    *
    * Up to 53 bits of digits times or over a power of ten up to 1e22 are both exact, so one operation rounds once
-   * (W. D. Clinger, How to read floating point numbers accurately, PLDI 1990); all else goes to `Number`.
+   * (W. D. Clinger, How to read floating point numbers accurately, PLDI 1990); up to 18 digits go through `longQuotient`,
+   * all else through `Number`.
    *
    * @returns the position after the number, or NOT_A_NUMBER or OUT_OF_RANGE
    */
@@ -48,15 +51,19 @@ export class NumberScanner {
     const sign = bytes[at] as number;
     if (sign === MINUS || sign === PLUS) at += 1;
     const digitsStart = at;
-    let mantissa = 0;
+    let high = 0;
+    let low = 0;
     let significant = 0;
     let scale = exponentShift;
     let exact = true;
     let digit = (bytes[at] as number) - ZERO;
     while (digit >= 0 && digit <= 9) {
-      if (significant < EXACT_DIGITS) {
-        mantissa = mantissa * 10 + digit;
-        if (mantissa > 0) significant += 1;
+      if (significant < HALF_DIGITS) {
+        high = high * 10 + digit;
+        if (high !== 0) significant += 1;
+      } else if (significant < ALL_DIGITS) {
+        low = low * 10 + digit;
+        significant += 1;
       } else {
         scale += 1;
         if (digit !== 0) exact = false;
@@ -68,9 +75,13 @@ export class NumberScanner {
       const fractionStart = ++at;
       digit = (bytes[at] as number) - ZERO;
       while (digit >= 0 && digit <= 9) {
-        if (significant < EXACT_DIGITS) {
-          mantissa = mantissa * 10 + digit;
-          if (mantissa > 0) significant += 1;
+        if (significant < HALF_DIGITS) {
+          high = high * 10 + digit;
+          if (high !== 0) significant += 1;
+          scale -= 1;
+        } else if (significant < ALL_DIGITS) {
+          low = low * 10 + digit;
+          significant += 1;
           scale -= 1;
         } else if (digit !== 0) exact = false;
         digit = (bytes[++at] as number) - ZERO;
@@ -97,10 +108,15 @@ export class NumberScanner {
     }
     if (ENDS_NUMBER[bytes[at] as number] === 0 || at - start > LONGEST_NUMBER) return NOT_A_NUMBER;
     scale += exponent;
-    let value: number;
+    const lowPower = significant > HALF_DIGITS ? (POWERS_OF_TEN[significant - HALF_DIGITS] as number) : 1;
+    const mantissa = high * lowPower + low;
+    let value = NaN;
     if (exact && mantissa < TWO_POW_53 && scale >= -LARGEST_EXACT_POWER && scale <= LARGEST_EXACT_POWER) {
       value = scale < 0 ? mantissa / (POWERS_OF_TEN[-scale] as number) : mantissa * (POWERS_OF_TEN[scale] as number);
-    } else {
+    } else if (exact && scale <= 0) {
+      value = longQuotient(high, lowPower, low, -scale);
+    }
+    if (Number.isNaN(value)) {
       value = Number(`${this.text(digitsStart, digitsEnd)}e${exponent + exponentShift}`);
       if (value === Infinity) return OUT_OF_RANGE;
     }

@@ -5,11 +5,14 @@ import type { LineCursor } from "./touchstone-lines.ts";
 /** Numbers kept a set: frequency in Hz and at most four pairs. */
 export const SET_STRIDE = 9;
 
+/** Bytes; shorter sets only mean that room is made again. */
+const TYPICAL_SET_BYTES = 80;
+
 export class SetStore {
   /** SET_STRIDE numbers a set; the first `count` sets are valid. */
-  rows = new Float64Array(SET_STRIDE * 1024);
+  rows: Float64Array;
   /** Line where each set begins. */
-  lines = new Uint32Array(1024);
+  lines: Uint32Array;
   /** Sets kept: repeated ones are dropped. */
   count = 0;
   /** Sets in the file, repeated ones too. */
@@ -23,6 +26,9 @@ export class SetStore {
     this.cursor = cursor;
     this.size = size;
     this.maxPoints = maxPoints;
+    const capacity = Math.max(1, Math.min(maxPoints, Math.ceil(cursor.remaining / TYPICAL_SET_BYTES)));
+    this.rows = new Float64Array(SET_STRIDE * capacity);
+    this.lines = new Uint32Array(capacity);
   }
 
   /** Where the next set's numbers go; one place beyond the set may be written to. */

@@ -6,10 +6,11 @@ import type { ReaderNotes } from "./touchstone-notes.ts";
 export const MAX_FILE_BYTES = 64 * 1024 * 1024;
 
 const NEWLINE = 10;
+const RETURN = 13;
 
 /**
- * The file's bytes in UTF-8, copied, with one line end appended: scanning loops stop there without looking at the length.
- * Comments may hold bytes that are not UTF-8.
+ * The file's bytes in UTF-8, with a line end appended if there is none: scanning loops stop there without looking at the
+ * length. Comments may hold bytes that are not UTF-8.
  *
  * @throws TouchstoneError too-large, empty-file
  */
@@ -47,6 +48,8 @@ function encode(text: string, notes?: ReaderNotes): Uint8Array {
 
 function terminated(content: Uint8Array): Uint8Array {
   if (content.length === 0) throw new TouchstoneError("empty-file", 1, "The file is empty. Export it again.");
+  const last = content[content.length - 1];
+  if (last === NEWLINE || last === RETURN) return content;
   const bytes = new Uint8Array(content.length + 1);
   bytes.set(content);
   bytes[content.length] = NEWLINE;

@@ -64,7 +64,10 @@ class Version1Reader {
       const message = `The option line stands after data (line ${this.assumedAt}). Move it above the first number.`;
       throw cursor.fail("option-line-late", message);
     }
-    if (this.options) return cursor.skipLine(); // further option lines mean nothing, wherever they stand
+    if (this.options) {
+      cursor.skipLine(); // further option lines mean nothing, wherever they stand
+      return;
+    }
     const { line } = cursor;
     cursor.at += 1;
     const options = parseOptionLine(cursor.takeWords(), line);
@@ -94,7 +97,8 @@ class Version1Reader {
       if (count > SET_SIZE || count % 2 === 0) throw this.badFirstLine(count, start.line);
       this.setLine = start.line;
     } else if (count % 2 === 1) {
-      return this.endUnfinished(count, start);
+      this.endUnfinished(count, start);
+      return;
     } else if (count > room) {
       throw this.overfull(count, start.line);
     }

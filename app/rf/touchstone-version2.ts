@@ -66,7 +66,10 @@ class Version2Reader {
 
   private readOptionLine(): void {
     const { cursor } = this;
-    if (this.options) return cursor.skipLine(); // further option lines mean nothing, wherever they stand
+    if (this.options) {
+      cursor.skipLine(); // further option lines mean nothing, wherever they stand
+      return;
+    }
     const { line } = cursor;
     cursor.at += 1;
     const options = parseOptionLine(cursor.takeWords(), line);

@@ -17,43 +17,48 @@ export class WorstPoint {
   lowerFrequency = NaN;
   upperFrequency = NaN;
   isEmpty = true;
-  readonly #isUpperLimit: boolean;
-  readonly #tolerance: number;
-  #reportedMargin = Infinity;
-  #reportedLowerEnd = Infinity;
-  #reportedUpperEnd = Infinity;
+  private readonly isUpperLimit: boolean;
+  private readonly tolerance: number;
+  private reportedMargin = Infinity;
+  private reportedLowerEnd = Infinity;
+  private reportedUpperEnd = Infinity;
 
   /** @param isUpperLimit true where the value must not exceed its limit */
   constructor(isUpperLimit: boolean, tolerance: number) {
-    this.#isUpperLimit = isUpperLimit;
-    this.#tolerance = tolerance;
+    this.isUpperLimit = isUpperLimit;
+    this.tolerance = tolerance;
   }
 
   add(frequency: number, value: number, limit: number, low: number, high: number): void {
-    const margin = this.#isUpperLimit ? limit - value : value - limit;
-    const lowerEnd = this.#isUpperLimit ? limit - high : low - limit;
-    const upperEnd = this.#isUpperLimit ? limit - low : high - limit;
-    if (margin < this.margin) this.margin = margin;
-    if (lowerEnd < this.lowerEnd) this.lowerEnd = lowerEnd;
-    if (upperEnd < this.upperEnd) this.upperEnd = upperEnd;
-
+    const margin = this.isUpperLimit ? limit - value : value - limit;
+    const lowerEnd = this.isUpperLimit ? limit - high : low - limit;
+    const upperEnd = this.isUpperLimit ? limit - low : high - limit;
     const isFirst = this.isEmpty;
     this.isEmpty = false;
-    if (isFirst || margin < this.#reportedMargin - this.#tolerance) {
-      this.#reportedMargin = margin;
-      this.value = value;
-      this.frequency = frequency;
-      this.limit = limit;
-      this.low = low;
-      this.high = high;
+    if (isFirst || margin < this.margin) {
+      this.margin = margin;
+      if (isFirst || margin < this.reportedMargin - this.tolerance) {
+        this.reportedMargin = margin;
+        this.value = value;
+        this.frequency = frequency;
+        this.limit = limit;
+        this.low = low;
+        this.high = high;
+      }
     }
-    if (isFirst || lowerEnd < this.#reportedLowerEnd - this.#tolerance) {
-      this.#reportedLowerEnd = lowerEnd;
-      this.lowerFrequency = frequency;
+    if (isFirst || lowerEnd < this.lowerEnd) {
+      this.lowerEnd = lowerEnd;
+      if (isFirst || lowerEnd < this.reportedLowerEnd - this.tolerance) {
+        this.reportedLowerEnd = lowerEnd;
+        this.lowerFrequency = frequency;
+      }
     }
-    if (isFirst || upperEnd < this.#reportedUpperEnd - this.#tolerance) {
-      this.#reportedUpperEnd = upperEnd;
-      this.upperFrequency = frequency;
+    if (isFirst || upperEnd < this.upperEnd) {
+      this.upperEnd = upperEnd;
+      if (isFirst || upperEnd < this.reportedUpperEnd - this.tolerance) {
+        this.reportedUpperEnd = upperEnd;
+        this.upperFrequency = frequency;
+      }
     }
   }
 

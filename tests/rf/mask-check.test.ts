@@ -39,7 +39,7 @@ test("a passband and a stopband that overlap contradict each other over the over
     frequency: 1.92e9,
   });
   expect(found && describeContradiction(found, (id) => ({ loss: "2.1", rejection: "3.1" })[id] ?? id)).toBe(
-    "Lines 2.1 and 3.1 cannot both hold at 1.9200 to 1.9300 GHz: loss max 0.95 dB, rejection min 55.00 dB.",
+    "Lines 2.1 and 3.1 cannot both hold from 1.9200 to 1.9300 GHz: loss max 0.95 dB, rejection min 55.00 dB.",
   );
 });
 

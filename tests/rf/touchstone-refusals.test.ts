@@ -99,6 +99,8 @@ test("a five-number row that falls back is noise, unless an even row makes it a 
   expectRefusal([SOUND, "2e9 .2 0 .8 0", ".8 0 .2 0"].join("\n"), "frequency-order", 5);
   expectRefusal([SOUND, "2e9 1 .3 40 .25", ROWS[1]].join("\n"), "noise-layout", 6);
   expectRefusal([OPTIONS, "1e9 1 .3 40 .25"].join("\n"), "set-incomplete", 2);
+  // Five numbers on two lines are no noise row.
+  expectRefusal([SOUND, "2e9 1 .3", "40 .25", "9e9 1 .3 40 .25"].join("\n"), "set-incomplete", 5);
 });
 
 test("a repeated frequency is dropped when its numbers are equal, wrapped or not, and refused when they differ", () => {

@@ -13,13 +13,14 @@ const PYTHON = "/usr/bin/python3";
  * @returns what the script printed, as JSON; the caller states its shape
  * @throws Error if the script fails, with what it wrote to standard error
  */
-export function runPython<Output>(script: string, args: readonly string[] = [], input?: unknown): Output {
+export function runPython(script: string, args: readonly string[] = [], input?: unknown): unknown {
   const file = path.resolve("tests/reference/recipes", script);
   const output = execFileSync(PYTHON, [file, ...args], {
     input: input === undefined ? "" : JSON.stringify(input),
     encoding: "utf8",
+    env: { ...process.env, PYTHONDONTWRITEBYTECODE: "1" },
     maxBuffer: 256 * 1024 * 1024,
     stdio: ["pipe", "pipe", "pipe"],
   });
-  return JSON.parse(output) as Output;
+  return JSON.parse(output) as unknown;
 }

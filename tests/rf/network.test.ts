@@ -1,0 +1,157 @@
+// Renormalisation and the impedance matrix against scikit-rf, live, and against tables of two-ports.
+import { readFileSync } from "node:fs";
+import fc from "fast-check";
+import { beforeAll, expect, test } from "vitest";
+import { renormalise, toImpedance } from "~/rf/network";
+import { expectMatrix, matricesOf, twoPortOf, type ComplexNumber, type MatrixSeries } from "../support/complex-matrix";
+import { runPython } from "../support/python";
+
+interface Case {
+  readonly s: MatrixSeries;
+  readonly from: readonly [number, number];
+  readonly to: readonly [number, number];
+  readonly through_z?: boolean;
+}
+
+const number = (re: number, im = 0): ComplexNumber => ({ re, im });
+const THROUGH: MatrixSeries = [
+  [
+    [number(0), number(1)],
+    [number(1), number(0)],
+  ],
+];
+const frequencies = (s: MatrixSeries) => s.map((_, k) => 1e9 + k);
+
+/** Numbers in [-1, 1) that are the same in every run (Park and Miller's generator, Communications of the ACM 31, 1988). */
+function generator(seed: number): () => number {
+  let state = seed;
+  return () => {
+    state = (state * 48271) % 2147483647;
+    return (2 * state) / 2147483647 - 1;
+  };
+}
+
+function randomCases(): Case[] {
+  const next = generator(20260101);
+  // Half the largest passive size and less, so that 1 - S is well away from singular.
+  const element = () => number(0.35 * next(), 0.35 * next());
+  const matrix = () => [
+    [element(), element()],
+    [element(), element()],
+  ];
+  const ohm = () => 10 ** (1.7 + next());
+  return Array.from({ length: 20 }, () => ({
+    s: Array.from({ length: 10 }, matrix),
+    from: [ohm(), ohm()] as const,
+    to: [ohm(), ohm()] as const,
+  }));
+}
+
+const random = randomCases();
+const throughs: Case[] = [
+  { s: THROUGH, from: [50, 50], to: [50, 75], through_z: false },
+  { s: THROUGH, from: [50, 50], to: [75, 50], through_z: false },
+  { s: THROUGH, from: [50, 50], to: [12.5, 200], through_z: false },
+  { s: THROUGH, from: [50, 50], to: [75, 75], through_z: false },
+];
+let answers: { cascade: MatrixSeries; through_z?: MatrixSeries }[];
+beforeAll(() => {
+  answers = runPython("renormalise.py", [], [...random, ...throughs]) as typeof answers;
+});
+
+const renormalised = ({ s, from, to }: Case) => renormalise(twoPortOf(frequencies(s), s, from), to);
+
+test("200 random networks between unequal impedances renormalise as in scikit-rf, by Z and by impedance steps", () => {
+  expect(answers).toHaveLength(24);
+  random.forEach((one, k) => {
+    const network = renormalised(one);
+    expect(network.referenceImpedance).toEqual(one.to);
+    expectMatrix(network, answers[k]?.cascade ?? [], 1e-12, `case ${k} by steps`);
+    expectMatrix(network, answers[k]?.through_z ?? [], 1e-12, `case ${k} through Z`);
+  });
+});
+
+test("a through, which has no Z, renormalises as scikit-rf's cascade of impedance steps", () => {
+  throughs.forEach((one, k) => expectMatrix(renormalised(one), answers[random.length + k]?.cascade ?? [], 1e-12));
+  // By hand: from 50 to 50 and 75 ohm, S11 = (75 - 50)/(75 + 50) = 0.2 and S21 = 2 sqrt(50 75)/125.
+  const [matrix] = matricesOf(renormalised(throughs[0] as Case));
+  expect(matrix?.[0]?.[0]?.re).toBeCloseTo(0.2, 15);
+  expect(matrix?.[1]?.[0]?.re).toBeCloseTo((2 * Math.sqrt(50 * 75)) / 125, 15);
+});
+
+interface Conversion {
+  readonly id: string;
+  readonly inputs: { readonly z1: number; readonly z2: number };
+  readonly value: { readonly S: MatrixSeries[number]; readonly Z: MatrixSeries[number] | "does not exist" };
+}
+// Section 2 of the check values: series, shunt, line, transformer and through between 50, 75 and 200 ohm; formulas of
+// D. A. Frickey, IEEE Trans. MTT 42(2), 1994 (citation from memory), computed with numpy.
+const checkValues = JSON.parse(readFileSync("tests/reference/check-values.json", "utf8")) as { values: Conversion[] };
+const conversions = checkValues.values.filter(({ id }) => /^conv-.*@/.test(id));
+
+test("the tabulated two-ports renormalise from 50 ohm to each pair of references", () => {
+  expect(conversions).toHaveLength(50);
+  for (const { id, inputs, value } of conversions) {
+    const at50 = conversions.find((other) => other.id === id.replace(/@.*/, "@50-50"));
+    const network = twoPortOf([1e9], [at50?.value.S ?? []]);
+    expectMatrix(renormalise(network, [inputs.z1, inputs.z2]), [value.S], 1e-14, id);
+  }
+});
+
+test("the impedance matrix is the tabulated one, and NaN where the table says that none exists", () => {
+  const missing = conversions.filter(({ value }) => value.Z === "does not exist");
+  expect(missing.length).toBeGreaterThan(0);
+  expect(missing.length).toBeLessThan(conversions.length);
+  for (const { id, inputs, value } of conversions) {
+    const { z11, z12, z21, z22 } = toImpedance(twoPortOf([1e9], [value.S], [inputs.z1, inputs.z2]));
+    const found = [z11, z12, z21, z22].map(({ re, im }) => [re[0], im[0]]);
+    if (value.Z === "does not exist") expect(found.flat(), id).toEqual(Array(8).fill(NaN));
+    else {
+      value.Z.flat().forEach(({ re, im }, k) => {
+        // The line of 90 degrees has |Z| = 75 ohm off the diagonal and rounding errors on it.
+        expect(Math.hypot((found[k]?.[0] ?? NaN) - re, (found[k]?.[1] ?? NaN) - im), id).toBeLessThan(1e-11);
+      });
+    }
+  }
+});
+
+const unit = fc.double({ min: -0.5, max: 0.5, noNaN: true });
+const ohm = fc.double({ min: 1, max: 1000, noNaN: true });
+const element = fc.record({ re: unit, im: unit });
+const pair = <Value>(value: fc.Arbitrary<Value>) => fc.tuple(value, value);
+
+test("renormalising there and back gives the same network", () => {
+  fc.assert(
+    fc.property(pair(pair(element)), pair(ohm), pair(ohm), (matrix, from, to) => {
+      const network = twoPortOf([1e9], [matrix], from);
+      // Steps of 1 to 1000 ohm lose three digits at most each way.
+      expectMatrix(renormalise(renormalise(network, to), from), [matrix], 1e-9);
+    }),
+  );
+});
+
+test("renormalising keeps reciprocity", () => {
+  fc.assert(
+    fc.property(element, element, element, pair(ohm), (s11, s21, s22, to) => {
+      const { s21: forward, s12: backward } = renormalise(
+        twoPortOf(
+          [1e9],
+          [
+            [
+              [s11, s21],
+              [s21, s22],
+            ],
+          ],
+        ),
+        to,
+      );
+      expect(forward).toEqual(backward);
+    }),
+  );
+});
+
+test("the same references give the same network, and references that are not positive are refused", () => {
+  const network = twoPortOf([1e9], THROUGH);
+  expect(renormalise(network, [50, 50])).toBe(network);
+  for (const wrong of [0, -50, NaN, Infinity]) expect(() => renormalise(network, [50, wrong])).toThrow(RangeError);
+});
