@@ -4,19 +4,24 @@ import type { Box } from "./layout";
 /** px per column of an envelope. */
 export const ENVELOPE_COLUMN = 4;
 
-/** Mean advance of a character of the text face at 1 px size, by kind. */
-const ADVANCE = { digit: 0.6, narrow: 0.3, wide: 0.86, other: 0.56 };
+/** Advance of the text face at 1 px size by kind of character, rounded up a little from its glyphs. */
+const ADVANCES: readonly (readonly [pattern: RegExp, width: number])[] = [
+  [/[ \u00a0]/, 0.2],
+  [/[.,:;ijlI']/, 0.28],
+  [/[frt()°]/, 0.4],
+  [/[mwMW]/, 0.88],
+  [/[0-9]/, 0.62],
+  [/[A-Z]/, 0.68],
+];
+const OTHER_ADVANCE = 0.57;
 
-/** Width of a text in px, a little on the generous side: the server has no font to ask. */
+/** Width of a text in px: the server has no font to ask. */
 export function estimateTextWidth(text: string, size: number, weight = 400): number {
   let units = 0;
   for (const character of text) {
-    if (/[0-9]/.test(character)) units += ADVANCE.digit;
-    else if (/[ \u00a0.,:;ijl'|]/.test(character)) units += ADVANCE.narrow;
-    else if (/[mwMWGH±+−]/.test(character)) units += ADVANCE.wide;
-    else units += ADVANCE.other;
+    units += ADVANCES.find(([pattern]) => pattern.test(character))?.[1] ?? OTHER_ADVANCE;
   }
-  return units * size * (1 + (weight - 400) / 4000);
+  return units * size * (1 + (weight - 400) / 8000);
 }
 
 /** Whether two boxes come closer than `clearance` px. */
@@ -30,7 +35,9 @@ export function overlaps(one: Box, other: Box, clearance = 0): boolean {
 }
 
 export function contains(outer: Box, inner: Box): boolean {
-  return inner.left >= outer.left && inner.right <= outer.right && inner.top >= outer.top && inner.bottom <= outer.bottom;
+  return (
+    inner.left >= outer.left && inner.right <= outer.right && inner.top >= outer.top && inner.bottom <= outer.bottom
+  );
 }
 
 /** How far a curve or an area reaches up and down in each 4 px column; an empty column reaches nowhere. */

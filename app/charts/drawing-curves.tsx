@@ -12,7 +12,11 @@ export function PanelCurves({ scene, clipId }: { scene: PanelScene; clipId: stri
       {scene.curves.map((curve) => (
         <CurveLine key={curve.series.id} curve={curve} />
       ))}
-      <path d={scene.slivers.map((points) => pathOf(points, true)).join("")} fill="var(--color-fail)" fillOpacity={0.3} />
+      <path
+        d={scene.slivers.map((points) => pathOf(points, true)).join("")}
+        fill="var(--color-fail)"
+        fillOpacity={0.3}
+      />
       <path
         d={scene.stretches.map((points) => pathOf(points)).join("")}
         stroke="var(--color-fail)"

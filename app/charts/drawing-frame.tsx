@@ -17,7 +17,13 @@ export function Grid({ layout, panel }: { layout: DrawingLayout; panel: PanelLay
         <line key={label} x1={layout.toX(frequency)} x2={layout.toX(frequency)} y1={panel.top} y2={panel.bottom} />
       ))}
       {panel.level.ticks.map(({ level, label }) => (
-        <line key={label} x1={panel.left} x2={panel.right} y1={panel.level.toPixel(level)} y2={panel.level.toPixel(level)} />
+        <line
+          key={label}
+          x1={panel.left}
+          x2={panel.right}
+          y1={panel.level.toPixel(level)}
+          y2={panel.level.toPixel(level)}
+        />
       ))}
     </g>
   );
@@ -137,20 +143,22 @@ export function PassbandSigns({ layout }: { layout: DrawingLayout }) {
       {bands.map((band) => (
         <DimensionLine key={band[0]} band={band} layout={layout} y={first.top - 12} />
       ))}
-      {bands.filter((band) => hasCentre(band, layout)).map(([from, to]) => {
-        const x = layout.toX((from + to) / 2);
-        return (
-          <line
-            key={from}
-            x1={x}
-            x2={x}
-            y1={first.top - 4}
-            y2={last.bottom}
-            stroke="var(--color-edge)"
-            strokeDasharray="14 3 2 3"
-          />
-        );
-      })}
+      {bands
+        .filter((band) => hasCentre(band, layout))
+        .map(([from, to]) => {
+          const x = layout.toX((from + to) / 2);
+          return (
+            <line
+              key={from}
+              x1={x}
+              x2={x}
+              y1={first.top - 4}
+              y2={last.bottom}
+              stroke="var(--color-edge)"
+              strokeDasharray="14 3 2 3"
+            />
+          );
+        })}
     </g>
   );
 }

@@ -1,5 +1,5 @@
 // One drawing at one size, as SVG: the tolerance scheme with its curves and worst points. Works without script.
-import { useId, type ReactNode } from "react";
+import { memo, useId } from "react";
 import { BreakMarks, Frame, FrequencyAxis, Grid, LevelAxis, PassbandSigns } from "./drawing-frame";
 import { CurveNames, PanelCurves } from "./drawing-curves";
 import { PanelMarks } from "./drawing-marks";
@@ -13,8 +13,8 @@ interface DrawingSvgProps {
   readonly selectedId?: string | undefined;
 }
 
-/** A composed drawing. Scales with its box; made at the size of its box, its type is 12 px. */
-export function DrawingSvg({ scene, title, description, selectedId }: DrawingSvgProps): ReactNode {
+/** A composed drawing. Scales with its box; made at the size of its box, its type is 12 px. Kept while a readout moves over it. */
+export const DrawingSvg = memo(function DrawingSvg({ scene, title, description, selectedId }: DrawingSvgProps) {
   const id = useId();
   const { layout, panels } = scene;
   return (
@@ -58,7 +58,7 @@ export function DrawingSvg({ scene, title, description, selectedId }: DrawingSvg
       <FrequencyAxis layout={layout} />
     </svg>
   );
-}
+});
 
 function clipId(id: string, panel: PanelScene): string {
   return `${id}-clip-${panel.layout.panel}`;

@@ -12,7 +12,14 @@ export function HatchPattern({ id, phone = false }: { id: string; phone?: boolea
   const spacing = phone ? HATCH_SPACING.phone : HATCH_SPACING.desk;
   return (
     <pattern id={id} patternUnits="userSpaceOnUse" width={spacing} height={spacing} patternTransform="rotate(45)">
-      <line x1={0.5} x2={0.5} y1={0} y2={spacing} stroke="var(--color-ink)" style={{ opacity: "var(--hatch-opacity, 0.62)" }} />
+      <line
+        x1={0.5}
+        x2={0.5}
+        y1={0}
+        y2={spacing}
+        stroke="var(--color-ink)"
+        style={{ opacity: "var(--hatch-opacity, 0.62)" }}
+      />
     </pattern>
   );
 }
@@ -32,7 +39,12 @@ export function PanelWalls({ scene, idPrefix, selectedId }: PanelWallsProps) {
     <g>
       {scene.walls.map((shape, wall) =>
         shape.parts.map((part, index) => (
-          <WallArea key={`${wall}-${index}`} part={part} hatchId={`${idPrefix}-hatch`} fadeId={`${prefix}-${wall}-${index}`} />
+          <WallArea
+            key={`${wall}-${index}`}
+            part={part}
+            hatchId={`${idPrefix}-hatch`}
+            fadeId={`${prefix}-${wall}-${index}`}
+          />
         )),
       )}
       {ordered.map((shape) => (
@@ -76,6 +88,7 @@ export function WallNumbers({ scene, selectedId }: Pick<PanelWallsProps, "scene"
     <g textAnchor="middle" fontWeight={650}>
       {scene.walls.map((shape) => {
         const { pill } = shape;
+        if (!pill) return null;
         const colour = isSelected(shape, selectedId) ? "var(--color-signal)" : "var(--color-ink)";
         return (
           <g key={shape.label + shape.wall.ids.join()}>

@@ -17,7 +17,11 @@ export { wallsFromRequirements } from "./walls";
  * 470 px high under 720 px; with `phone` and sizes given it is the bare picture of that size.
  */
 export function Drawing(props: DrawingProps) {
-  return props.phone === undefined && props.width === undefined ? <FittingDrawing {...props} /> : <FixedDrawing {...props} />;
+  return props.phone === undefined && props.width === undefined ? (
+    <FittingDrawing {...props} />
+  ) : (
+    <FixedDrawing {...props} />
+  );
 }
 
 function FixedDrawing(props: DrawingProps) {
@@ -30,26 +34,26 @@ function FixedDrawing(props: DrawingProps) {
 }
 
 function FittingDrawing(props: DrawingProps) {
-  const figure = useFigureWidths();
+  const { widths, deskRef, phoneRef } = useFigureWidths();
   const desk = useMemo(
-    () => composeDrawing({ ...props, phone: false, width: figure.desk || undefined }),
-    [props, figure.desk],
+    () => composeDrawing({ ...props, phone: false, width: widths.desk || undefined }),
+    [props, widths.desk],
   );
   const phone = useMemo(
-    () => composeDrawing({ ...props, phone: true, width: figure.phone || undefined, height: PHONE_HEIGHT }),
-    [props, figure.phone],
+    () => composeDrawing({ ...props, phone: true, width: widths.phone || undefined, height: PHONE_HEIGHT }),
+    [props, widths.phone],
   );
   const words = svgWords(props);
   return (
     <figure className="m-0">
       <FigureBox
-        figure={figure}
+        widths={widths}
+        deskRef={deskRef}
+        phoneRef={phoneRef}
         desk={<DrawingSvg {...words} scene={desk} />}
         phone={<DrawingSvg {...words} scene={phone} />}
       />
-      <figcaption className="pt-2 text-13 text-quiet">
-        {scaleWords(desk.panels[0]?.layout.level.breakLevel)}
-      </figcaption>
+      <figcaption className="pt-2 text-13 text-quiet">{scaleWords(desk.panels[0]?.layout.level.breakLevel)}</figcaption>
       <WorstPointList points={desk.listed} className="max-tablet:hidden" />
       <WorstPointList points={phone.listed} className="tablet:hidden" />
     </figure>

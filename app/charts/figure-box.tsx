@@ -3,8 +3,7 @@ import type { ReactNode } from "react";
 import type { MeasuredFigure } from "./figure-size";
 import { PHONE_HEIGHT } from "./layout";
 
-interface FigureBoxProps {
-  readonly figure: MeasuredFigure;
+interface FigureBoxProps extends MeasuredFigure {
   readonly desk: ReactNode;
   readonly phone: ReactNode;
 }
@@ -13,23 +12,23 @@ interface FigureBoxProps {
  * Keeps its height whatever it shows, so nothing moves when curves arrive or the true width is known. Paper takes the
  * desk's drawing where there is one.
  */
-export function FigureBox({ figure, desk, phone }: FigureBoxProps) {
-  const hasDesk = figure.desk !== 0;
+export function FigureBox({ widths, deskRef, phoneRef, desk, phone }: FigureBoxProps) {
+  const hasDesk = widths.desk !== 0;
   return (
     <>
       <div
-        ref={figure.deskRef}
+        ref={deskRef}
         className={`relative border border-rule bg-leaf max-tablet:hidden ${hasDesk ? "print:block" : ""}`}
         style={{ aspectRatio: "5 / 4" }}
       >
         {hasDesk ? desk : null}
       </div>
       <div
-        ref={figure.phoneRef}
+        ref={phoneRef}
         className={`relative -mx-4 border-y border-rule bg-leaf tablet:hidden ${hasDesk ? "print:hidden" : ""}`}
         style={{ height: PHONE_HEIGHT }}
       >
-        {figure.phone === 0 ? null : phone}
+        {widths.phone === 0 ? null : phone}
       </div>
     </>
   );

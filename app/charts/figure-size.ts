@@ -7,7 +7,8 @@ export interface FigureWidths {
   readonly phone: number | undefined;
 }
 
-export interface MeasuredFigure extends FigureWidths {
+export interface MeasuredFigure {
+  readonly widths: FigureWidths;
   readonly deskRef: RefObject<HTMLDivElement | null>;
   readonly phoneRef: RefObject<HTMLDivElement | null>;
 }
@@ -28,5 +29,5 @@ export function useFigureWidths(): MeasuredFigure {
     for (const box of [deskRef.current, phoneRef.current]) if (box) observer.observe(box);
     return () => observer.disconnect();
   }, []);
-  return { deskRef, phoneRef, ...widths };
+  return { deskRef, phoneRef, widths };
 }

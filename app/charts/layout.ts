@@ -35,8 +35,8 @@ export interface DrawingLayout {
   readonly panels: readonly PanelLayout[];
   readonly frequency: FrequencyTicks;
   readonly walls: readonly DrawnWall[];
-  toX(frequency: number): number;
-  toFrequency(x: number): number;
+  readonly toX: (frequency: number) => number;
+  readonly toFrequency: (x: number) => number;
 }
 
 export const DESK_WIDTH = 860;

@@ -6,6 +6,9 @@ export const STRETCHED_SHARE = 0.36;
 /** px between level ticks, at least. */
 export const LEAST_LEVEL_SPACING = 36;
 
+/** px beyond the panel at which a level that would lie further out is drawn. */
+const BEYOND = 40;
+
 const LEVEL_STEPS = [0.01, 0.02, 0.05, 0.1, 0.2, 0.5, 1, 2, 5, 10, 15, 20, 30, 50, 100, 200];
 
 export interface LevelTick {
@@ -17,8 +20,8 @@ export interface LevelScale {
   /** The bare scale, dB to px, for an axis. */
   readonly scale: ReturnType<typeof scaleLinear<number>>;
   /** px of a level in dB; infinite and huge levels lie just beyond the panel. */
-  toPixel(level: number): number;
-  toLevel(pixel: number): number;
+  readonly toPixel: (level: number) => number;
+  readonly toLevel: (pixel: number) => number;
   /** dB at the panel's lower end. */
   readonly bottom: number;
   /** dB where the stretched part ends; absent on an even scale. */
@@ -73,7 +76,8 @@ export function createLevelScale(bottom: number, range: readonly [number, number
   const scale = scaleLinear<number>({ domain, range: pixels });
   return {
     scale,
-    toPixel: (level) => Math.min(Math.max(scale(level), top - 40), end + 40),
+    toPixel: (level) =>
+      level === Infinity ? end + BEYOND : Math.min(Math.max(scale(level), top - BEYOND), end + BEYOND),
     toLevel: (pixel) => scale.invert(pixel),
     bottom,
     ...(stretch === undefined ? {} : { breakLevel: stretch }),
@@ -82,9 +86,9 @@ export function createLevelScale(bottom: number, range: readonly [number, number
   };
 }
 
-/** Multiples of the smallest step that keeps its distance, from `from` to `to` dB over `height` px. */
+/** Multiples of the smallest step that keeps its distance where 0 to `to` dB take `height` px, from `from` on. */
 function evenTicks(from: number, to: number, height: number): number[] {
-  const step = stepFor(to - from, height);
+  const step = stepFor(to, height);
   const ticks: number[] = [];
   for (let index = Math.ceil(from / step - 1e-9); index * step <= to * (1 + 1e-9); index += 1) {
     ticks.push(clean(index * step));
@@ -96,9 +100,7 @@ function stretchedTicks(breakLevel: number, bottom: number, height: number): num
   const upperHeight = STRETCHED_SHARE * height;
   const lowerHeight = height - upperHeight;
   // Whole dB above the break: a finer step would put a decimal on the labels of the whole axis.
-  const upperStep = LEVEL_STEPS.find(
-    (step) => step >= 1 && (step / breakLevel) * upperHeight >= LEAST_LEVEL_SPACING,
-  );
+  const upperStep = LEVEL_STEPS.find((step) => step >= 1 && (step / breakLevel) * upperHeight >= LEAST_LEVEL_SPACING);
   const upper: number[] = [];
   const spacing = upperStep ?? breakLevel;
   for (let level = 0; level <= breakLevel; level += spacing) upper.push(level);
@@ -111,8 +113,11 @@ function stretchedTicks(breakLevel: number, bottom: number, height: number): num
   return [...upper, ...lower];
 }
 
+/** The smallest step that keeps its distance, if there is one that ends on the last tick. */
 function stepFor(span: number, height: number): number {
-  return LEVEL_STEPS.find((step) => (step / span) * height >= LEAST_LEVEL_SPACING) ?? span;
+  const wide = LEVEL_STEPS.filter((step) => (step / span) * height >= LEAST_LEVEL_SPACING);
+  const ending = wide.find((step) => Math.abs(span / step - Math.round(span / step)) < 1e-9);
+  return ending ?? wide[0] ?? span;
 }
 
 function label(levels: readonly number[]): LevelTick[] {

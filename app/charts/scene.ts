@@ -77,12 +77,13 @@ function composePanel(
   const curves = curvesOf(panel, layout, props.traces ?? []);
   const envelopes = curves.map((curve) => envelopeOf(curve.points, layout.width));
   const walls = wallShapes(layout, panel, envelopes);
+  const pills = walls.flatMap((wall) => (wall.pill ? [wall.pill] : []));
   const cuts = cutsOf(panel, layout, props.traces ?? []);
   const marks = placeMarks(marksOf(panel, layout, props.worstPoints ?? []), plated, panel, {
-    boxes: walls.map((wall) => wall.pill),
+    boxes: pills,
     curves: envelopes,
   });
-  const taken = [...walls.map((wall) => wall.pill), ...marks.flatMap((mark) => (mark.plate ? [mark.plate] : []))];
+  const taken = [...pills, ...marks.flatMap((mark) => (mark.plate ? [mark.plate] : []))];
   return { layout: panel, walls, curves: nameCurves(curves, envelopes, walls, taken, panel, layout), marks, ...cuts };
 }
 
@@ -210,4 +211,3 @@ function nameCurves(
     return name ? { ...curve, name } : curve;
   });
 }
-

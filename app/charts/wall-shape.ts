@@ -38,7 +38,8 @@ export interface WallShape {
   readonly edge: readonly Pixel[];
   readonly sides: readonly WallSide[];
   readonly label: string;
-  readonly pill: Box;
+  /** Absent where the window leaves too little of the wall to number. */
+  readonly pill?: Box;
 }
 
 /**
@@ -55,22 +56,24 @@ export function wallShapes(layout: DrawingLayout, panel: PanelLayout, curves: re
   for (const { wall, edge } of drawn) {
     const end = wall.side === "floor" ? panel.bottom : panel.top;
     const neighbours = drawn.filter((other) => other.wall !== wall && other.wall.side === wall.side);
+    const sides = sidesOf(edge, end, layout, panel, wall).flatMap((side) =>
+      withoutShared(
+        side,
+        neighbours.map((other) => other.edge),
+      ),
+    );
     const label = wall.lineNumbers.join(", ");
-    const taken = shapes.map((shape) => shape.pill);
-    shapes.push({
-      wall,
-      edge,
-      label,
-      parts: partsOf(edge, end, wall.side),
-      sides: sidesOf(edge, end, layout, panel, wall).flatMap((side) =>
-        withoutShared(side, neighbours.map((other) => other.edge)),
-      ),
-      pill: placePill(edge, end, wall.side, estimateTextWidth(label, 12, 650) + 16, panel, (box) =>
-        taken.some((other) => overlaps(box, other, 3)) || curves.some((curve) => meetsEnvelope(box, curve, 2)),
-      ),
-    });
+    const taken = shapes.flatMap((shape) => (shape.pill ? [shape.pill] : []));
+    const isTaken = (box: Box) =>
+      taken.some((other) => overlaps(box, other, 3)) || curves.some((curve) => meetsEnvelope(box, curve, 2));
+    const pill = placePill({ edge, sides, end, side: wall.side, label, panel, isTaken, isCut: isCut(wall, layout) });
+    shapes.push({ wall, edge, label, sides, parts: partsOf(edge, end, wall.side), ...(pill ? { pill } : {}) });
   }
   return shapes;
+}
+
+function isCut(wall: Wall, { window }: DrawingLayout): boolean {
+  return wall.band[0] < window[0] || wall.band[1] > window[1];
 }
 
 /** The limit in px within the window, with a corner where the level scale bends. */
@@ -84,6 +87,8 @@ function edgeOf(wall: Wall, layout: DrawingLayout, panel: PanelLayout): Pixel[] 
   const first = edge[0];
   const last = edge[edge.length - 1];
   if (!first || !last || last.x > first.x) return edge;
+  // Only a spot requirement has no width; a band that touches the window from outside is not in it.
+  if (wall.band[1] > wall.band[0]) return [];
   const half = SPOT_WIDTH / 2;
   return [
     { x: Math.max(first.x - half, panel.left), y: first.y },
@@ -129,8 +134,7 @@ function straightRuns(edge: readonly Pixel[]): Pixel[][] {
     const run = runs[runs.length - 1];
     const last = run?.[run.length - 1];
     const before = run?.[run.length - 2];
-    const alike =
-      last === from && before !== undefined && Math.abs(angle(before, last) - angle(from, to)) < 0.12;
+    const alike = last === from && before !== undefined && Math.abs(angle(before, last) - angle(from, to)) < 0.12;
     if (run && alike) run.push(to);
     else runs.push([from, to]);
   }
@@ -150,7 +154,13 @@ function fadeOf(first: Pixel, last: Pixel, side: Wall["side"]): WallPart["fade"]
 }
 
 /** Upright sides; none where the wall is cut off by the frame. */
-function sidesOf(edge: readonly Pixel[], end: number, layout: DrawingLayout, panel: PanelLayout, wall: Wall): WallSide[] {
+function sidesOf(
+  edge: readonly Pixel[],
+  end: number,
+  layout: DrawingLayout,
+  panel: PanelLayout,
+  wall: Wall,
+): WallSide[] {
   const first = edge[0];
   const last = edge[edge.length - 1];
   const sides: WallSide[] = [];
@@ -184,29 +194,50 @@ function edgeLevelsAt(edge: readonly Pixel[], x: number): number[] {
   return levels;
 }
 
+interface PillRequest {
+  readonly edge: readonly Pixel[];
+  readonly sides: readonly WallSide[];
+  /** px of the panel's end the wall reaches to. */
+  readonly end: number;
+  readonly side: Wall["side"];
+  readonly label: string;
+  readonly panel: PanelLayout;
+  readonly isTaken: (box: Box) => boolean;
+  /** Whether the window cuts the wall off. */
+  readonly isCut: boolean;
+}
+
 /** The number stands 24 px inside the middle of the edge, deeper where something is in its way. */
-function placePill(
-  edge: readonly Pixel[],
-  end: number,
-  side: Wall["side"],
-  width: number,
-  panel: PanelLayout,
-  isTaken: (box: Box) => boolean,
-): Box {
-  const first = edge[0] ?? { x: panel.left, y: end };
-  const last = edge[edge.length - 1] ?? first;
-  const x = (first.x + last.x) / 2;
-  const y = edgeLevelsAt(edge, x)[0] ?? first.y;
+function placePill(request: PillRequest): Box | undefined {
+  const { edge, end, side, label, panel, isTaken } = request;
+  const first = edge[0];
+  const last = edge[edge.length - 1];
+  if (!first || !last) return undefined;
+  const text = estimateTextWidth(label, 12, 650);
+  const room = last.x - first.x;
+  const width = Math.min(text + 16, Math.max(text + 8, room - 6));
+  if (request.isCut && room < width) return undefined;
+  const x = pillCentre(first.x, last.x, width, request);
+  const y = edgeLevelsAt(edge, (first.x + last.x) / 2)[0] ?? first.y;
   const sign = side === "floor" ? 1 : -1;
-  const slope = last.x > first.x ? Math.abs((last.y - first.y) / (last.x - first.x)) : 0;
+  const slope = room > 0 ? Math.abs((last.y - first.y) / room) : 0;
   const depth = NUMBER_DEPTH + Math.min((slope * width) / 2, 40);
-  const centreX = Math.min(Math.max(x, panel.left + width / 2 + 2), panel.right - width / 2 - 2);
-  const nearest = pillBox(centreX, y + sign * depth, width, panel);
-  for (let deeper = 0; deeper <= 144; deeper += 12) {
-    const box = pillBox(centreX, y + sign * (depth + deeper), width, panel);
+  const deepest = Math.max(depth, Math.abs(end - y) - NUMBER_DEPTH);
+  for (let reach = depth; reach <= deepest; reach += 12) {
+    const box = pillBox(x, y + sign * reach, width, panel);
     if (!isTaken(box)) return box;
   }
-  return nearest;
+  return pillBox(x, y + sign * depth, width, panel);
+}
+
+/** The middle of the wall; in a narrow one moved over the neighbouring wall, away from an open side. */
+function pillCentre(from: number, to: number, width: number, { sides, panel }: PillRequest): number {
+  const open = (outward: -1 | 1) => sides.some((side) => side.outward === outward);
+  const middle = (from + to) / 2;
+  const least = open(-1) ? from + 3 + width / 2 : panel.left + width / 2 + 3;
+  const most = open(1) ? to - 3 - width / 2 : panel.right - width / 2 - 3;
+  if (least > most) return Math.min(Math.max(middle, panel.left + width / 2 + 2), panel.right - width / 2 - 2);
+  return Math.min(Math.max(middle, least), most);
 }
 
 function pillBox(x: number, y: number, width: number, panel: PanelLayout): Box {

@@ -94,11 +94,7 @@ export function shiftLimit(limit: Limit, reference: number): Limit {
 }
 
 /** Largest limit among walls of one side of a panel, dB; undefined where there is none. */
-export function largestLimit(
-  walls: readonly Wall[],
-  panel: Wall["panel"],
-  side?: Wall["side"],
-): number | undefined {
+export function largestLimit(walls: readonly Wall[], panel: Wall["panel"], side?: Wall["side"]): number | undefined {
   const levels = walls
     .filter((wall) => wall.panel === panel && (side === undefined || wall.side === side))
     .map((wall) => limitExtent(wall.limit, wall.band)[1]);

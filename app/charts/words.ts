@@ -66,7 +66,12 @@ export function scaleWords(breakLevel: number | undefined): string {
 export function describeDrawing({ walls, traces = [], worstPoints = [] }: Partial<DrawingProps>): string {
   const parts = [
     walls && walls.length > 0 ? `Limits: ${walls.map(describeWall).join("; ")}.` : "No limits.",
-    traces.length > 0 ? describeTraces(traces.filter((trace) => trace.emphasis === "worst"), traces.length) : "",
+    traces.length > 0
+      ? describeTraces(
+          traces.filter((trace) => trace.emphasis === "worst"),
+          traces.length,
+        )
+      : "",
     ...worstPoints.map((point) => `Line ${verdictPhrase(point)}, ${valuePhrase(point)}.`),
   ];
   return parts.filter((part) => part !== "").join(" ");

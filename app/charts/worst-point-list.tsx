@@ -3,6 +3,9 @@ import { VerdictMark, verdictColour } from "~/components/verdict-mark";
 import type { WorstPoint } from "./types";
 import { valuePhrase, verdictPhrase } from "./words";
 
+/** A figure is not parted from its unit at a line's end. */
+const withUnitKept = (text: string | undefined) => (text ?? "").replace(/(\d) (°C|dB|ns|GHz|MHz|kHz)/g, "$1\u00a0$2");
+
 /** The points in their order; nothing where there are none. */
 export function WorstPointList({ points, className = "" }: { points: readonly WorstPoint[]; className?: string }) {
   if (points.length === 0) return null;
@@ -16,7 +19,7 @@ export function WorstPointList({ points, className = "" }: { points: readonly Wo
           <VerdictMark verdict={point.verdict} silent />
           <div>
             <p className={`font-semibold ${verdictColour(point.verdict)}`}>{verdictPhrase(point)}</p>
-            <p>{[valuePhrase(point), point.limitText, point.label].filter(Boolean).join(", ")}</p>
+            <p>{[valuePhrase(point), point.limitText, point.label].filter(Boolean).map(withUnitKept).join(", ")}</p>
           </div>
         </li>
       ))}
