@@ -2,7 +2,7 @@
 import { adviseMargin } from "./advice.ts";
 import { withAdvice } from "./assess-levels.ts";
 import { unreached, type Assessment, type Frame } from "./assessment.ts";
-import type { Band, Requirement } from "./contract.ts";
+import type { Requirement } from "./contract.ts";
 import { coverageOf, segmentsWithin } from "./coverage.ts";
 import { crossingsAt, peakIndex, type Crossings } from "./crossings.ts";
 import { formatFigure, formatLevel } from "./describe.ts";

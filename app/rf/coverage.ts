@@ -38,7 +38,7 @@ export function segmentsWithin(frequency: Series, values: Series, band: Band, ma
   for (let start = begin; start <= end;) {
     const stop = endOfRun(frequency, values, start, end, maxStep);
     const isInside = stop > start || (start >= firstInside && start <= lastInside);
-    if (isInside && !Number.isNaN(values[start] as number)) {
+    if (isInside && !Number.isNaN(values[start])) {
       const first = Math.max(start, firstInside);
       const last = Math.min(stop, lastInside);
       const from = start < firstInside ? band[0] : (frequency[first] as number);
@@ -52,9 +52,9 @@ export function segmentsWithin(frequency: Series, values: Series, band: Band, ma
 
 /** Last index of the unbroken run of samples that begins at `start`. */
 function endOfRun(frequency: Series, values: Series, start: number, end: number, maxStep: number): number {
-  if (Number.isNaN(values[start] as number)) return start;
+  if (Number.isNaN(values[start])) return start;
   let stop = start;
-  while (stop < end && !Number.isNaN(values[stop + 1] as number)) {
+  while (stop < end && !Number.isNaN(values[stop + 1])) {
     const reach = (frequency[stop] as number) + maxStep;
     if ((frequency[stop + 1] as number) > reach && !sameFrequency(frequency[stop + 1] as number, reach)) break;
     stop += 1;

@@ -75,8 +75,8 @@ function keepExtremes(value: Series, start: number, stop: number, kept: number[]
 function withEnds(kept: readonly number[], value: Series, first: number, last: number): number[] {
   let start = first;
   let stop = last;
-  while (start <= last && Number.isNaN(value[start] as number)) start += 1;
-  while (stop > start && Number.isNaN(value[stop] as number)) stop -= 1;
+  while (start <= last && Number.isNaN(value[start])) start += 1;
+  while (stop > start && Number.isNaN(value[stop])) stop -= 1;
   if (start > last || stop < start) return [];
   const inner = kept.filter((index) => index !== start && index !== stop);
   return start === stop ? [start] : [start, ...inner, stop];

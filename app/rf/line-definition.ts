@@ -25,7 +25,5 @@ export const isMeasured = (definition: RequirementDefinition): definition is Mea
 
 /** The measured lines as the evaluation takes them, with the line key as id. */
 export function measuredRequirements(lines: readonly SpecificationLine[]): Requirement[] {
-  return lines.flatMap(({ lineKey, definition }) =>
-    isMeasured(definition) ? [{ ...definition, id: lineKey } as Requirement] : [],
-  );
+  return lines.flatMap(({ lineKey, definition }) => (isMeasured(definition) ? [{ ...definition, id: lineKey }] : []));
 }

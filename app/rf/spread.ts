@@ -65,7 +65,7 @@ export function forEachWindow(
       incoming <= beyond &&
       !((frequency[incoming] as number) > end && !sameFrequency(frequency[incoming] as number, end))
     ) {
-      if (!Number.isNaN(value[incoming] as number)) {
+      if (!Number.isNaN(value[incoming])) {
         highest.push(incoming);
         lowest.push(incoming);
       }

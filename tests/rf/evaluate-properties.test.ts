@@ -75,8 +75,9 @@ test("tightening a limit never improves a verdict", () => {
         const band = bandOf(text.frequency, edges);
         const isMax = kind === "insertion-loss" || kind === "ripple";
         const tight = isMax ? Math.max(0, limit - step) : limit + step;
-        const [loose, tightened] = evaluate(network, [lineOf(kind, band, limit), lineOf(kind, band, tight)], { setup });
-        expect(verdictRank(tightened?.verdict)).toBeLessThanOrEqual(verdictRank(loose?.verdict));
+        const loose = item(evaluate(network, [lineOf(kind, band, limit)], { setup }));
+        const tightened = item(evaluate(network, [lineOf(kind, band, tight)], { setup }));
+        expect(verdictRank(tightened.verdict)).toBeLessThanOrEqual(verdictRank(loose.verdict));
       },
     ),
   );
@@ -136,11 +137,11 @@ test("adding samples on the interpolated line changes nothing for point-wise kin
         fc.pre(dense.frequency.length === dense.loss.length);
         // The ends of a return loss hold a term of S21 S12 too and need not be least at a sample: its verdict is left out.
         const line = lineOf(kind, bandOf(text.frequency, edges), limit);
-        const [thin] = evaluate(sweepOf(text), [line], { setup });
-        const [thick] = evaluate(sweepOf(dense), [line], { setup });
-        expect(Math.abs(thick?.margin - thin?.margin)).toBeLessThan(1e-8);
-        expect(Math.abs(thick?.value - thin?.value)).toBeLessThan(1e-8);
-        if (kind !== "return-loss") expect(thick?.verdict).toBe(thin?.verdict);
+        const thin = item(evaluate(sweepOf(text), [line], { setup }));
+        const thick = item(evaluate(sweepOf(dense), [line], { setup }));
+        expect(Math.abs(thick.margin - thin.margin)).toBeLessThan(1e-8);
+        expect(Math.abs(thick.value - thin.value)).toBeLessThan(1e-8);
+        if (kind !== "return-loss") expect(thick.verdict).toBe(thin.verdict);
       },
     ),
   );
@@ -160,14 +161,13 @@ test("splitting a band gives the worse of its halves", () => {
         const [from, to] = bandOf(text.frequency, edges);
         const middle = from + place * (to - from);
         const line = (band: [number, number]) => lineOf(kind, band, limit);
-        const [whole, low, high] = evaluate(network, [line([from, to]), line([from, middle]), line([middle, to])], {
-          setup,
-        });
-        const least = Math.min(low?.margin, high?.margin);
+        const over = (band: [number, number]) => item(evaluate(network, [line(band)], { setup }));
+        const [whole, low, high] = [over([from, to]), over([from, middle]), over([middle, to])];
+        const least = Math.min(low.margin, high.margin);
         // The dividing line adds one interpolated point, whose reading lies between its neighbours'.
-        expect(whole?.margin).toBeLessThanOrEqual(least + 1e-9);
-        expect(least).toBeLessThanOrEqual(whole?.margin + 1e-9);
-        if (kind !== "return-loss") expect(whole?.verdict).toBe(worstVerdict([low?.verdict, high?.verdict]));
+        expect(whole.margin).toBeLessThanOrEqual(least + 1e-9);
+        expect(least).toBeLessThanOrEqual(whole.margin + 1e-9);
+        if (kind !== "return-loss") expect(whole.verdict).toBe(worstVerdict([low.verdict, high.verdict]));
       },
     ),
   );
@@ -213,7 +213,7 @@ test("two sweeps cut from one at a shared sample give what the whole gives", () 
 test("a margin lies within its ends, and a value within its own", () => {
   fc.assert(
     fc.property(sweeps, setups, kinds, shares, level, (text, setup, kind, edges, limit) => {
-      const [result] = evaluate(sweepOf(text), [lineOf(kind, bandOf(text.frequency, edges), limit)], { setup });
+      const line = lineOf(kind, bandOf(text.frequency, edges), limit);
       const { value, interval, margin, marginInterval } = item(evaluate(sweepOf(text), [line], { setup }));
       expect(interval[0]).toBeLessThanOrEqual(value + 1e-9);
       expect(interval[1]).toBeGreaterThanOrEqual(value - 1e-9);

@@ -4,6 +4,7 @@ import type { Requirement, Setup, TwoPort } from "~/rf/contract";
 import { evaluate } from "~/rf/evaluate";
 import { readNumber, type StoredNumber } from "~/rf/stored-result";
 import truth from "../reference/evaluation.json";
+import { item } from "./sweep-of";
 
 interface Expected {
   verdict: string;
@@ -68,7 +69,7 @@ function isClose(actual: number, expected: StoredNumber | undefined, scale: numb
 
 function differences({ requirement, setup, network, impedance, expected }: Case): string[] {
   const options = { setup, ...(impedance === undefined ? {} : { impedance }) };
-  const [result] = evaluate(networkOf(network), [requirement], options);
+  const result = item(evaluate(networkOf(network), [requirement], options));
   const scale = Math.max(
     1e-9,
     Math.abs(readNumber(expected.limit)),
@@ -78,15 +79,15 @@ function differences({ requirement, setup, network, impedance, expected }: Case)
   const check = (name: string, actual: number, wanted: StoredNumber | undefined, size: number) => {
     if (!isClose(actual, wanted, size)) wrong.push(`${name} ${actual} instead of ${wanted}`);
   };
-  if (result?.verdict !== expected.verdict) wrong.push(`verdict ${result?.verdict} instead of ${expected.verdict}`);
-  check("value", result?.value, expected.value, scale);
-  check("frequency", result?.frequency, expected.frequency, 2e9);
-  check("limit", result?.limit, expected.limit, scale);
-  check("margin", result?.margin, expected.margin, scale);
-  check("deciding frequency", result?.decidingFrequency, expected.decidingFrequency, 2e9);
+  if (result.verdict !== expected.verdict) wrong.push(`verdict ${result.verdict} instead of ${expected.verdict}`);
+  check("value", result.value, expected.value, scale);
+  check("frequency", result.frequency, expected.frequency, 2e9);
+  check("limit", result.limit, expected.limit, scale);
+  check("margin", result.margin, expected.margin, scale);
+  check("deciding frequency", result.decidingFrequency, expected.decidingFrequency, 2e9);
   for (const end of [0, 1] as const) {
-    check(`interval[${end}]`, result?.interval[end], expected.interval[end], scale);
-    check(`marginInterval[${end}]`, result?.marginInterval[end], expected.marginInterval[end], scale);
+    check(`interval[${end}]`, result.interval[end], expected.interval[end], scale);
+    check(`marginInterval[${end}]`, result.marginInterval[end], expected.marginInterval[end], scale);
   }
   return wrong.map((text) => `${requirement.id} ${requirement.kind} ${network}: ${text}`);
 }

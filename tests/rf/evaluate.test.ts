@@ -201,7 +201,7 @@ test("a sloped limit is read between its points and at its breakpoints, where bo
   expect(one(step, falling)).toMatchObject({ verdict: "pass", frequency: 2e9, limit: 29 });
   expect(one(step, falling).margin).toBeCloseTo(1, 12);
   // A band that starts at the step still meets the limit that ends there.
-  expect(one({ ...step, band: [2e9, 3e9] } as Requirement, falling).limit).toBe(29);
+  expect(one({ ...step, band: [2e9, 3e9] }, falling).limit).toBe(29);
 });
 
 test("a limit that slopes with the logarithm is halfway at the geometric mean", () => {

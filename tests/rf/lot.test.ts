@@ -88,7 +88,7 @@ test("ripple comes only from a sweep that reaches the whole band", () => {
   const failing: Sweep = { id: "failing", network: sweepOf({ frequency: [1.5e9, 1.8e9], loss: [1, 3] }) };
   expect(row([at("1", 25, low, high)], ripple)).toMatchObject({
     verdict: "not-covered",
-    reason: "No single sweep reaches the whole band.",
+    reason: "No single sweep reaches the whole band. Worst on the covered part: 0.20 dB at 1.5000 GHz, limit 1.00 dB.",
   });
   expect(row([at("1", 25, low, failing)], ripple)).toMatchObject({ verdict: "fail", worst: 0 });
   expect(row([at("1", 25, failing, flat(1, "whole"))], ripple).cells[0]).toMatchObject({

@@ -100,14 +100,21 @@ export const SHORT_LINES: readonly SpecificationLine[] = [
   },
 ];
 
+interface BuildSpecification {
+  readonly lines?: readonly SpecificationLine[] | undefined;
+  readonly status?: "draft" | "released";
+  readonly title?: string;
+  readonly range?: readonly [number, number] | null;
+}
+
 export async function buildSpecification(
   owner: Person,
   {
     lines = SHORT_LINES,
-    status = "released" as "draft" | "released",
+    status = "released",
     title = "Transmit band-pass",
-    range = [-30, 70] as readonly [number, number] | null,
-  } = {},
+    range = [-30, 70],
+  }: BuildSpecification = {},
 ) {
   const specification = await Specification.create({
     publicId: newPublicId(),
