@@ -1,10 +1,11 @@
 // The host of the built pages: express, because react-router-serve sends assets without our headers and answers TRACE with 500.
 import { randomBytes, randomUUID } from "node:crypto";
+import { createServer, type Server } from "node:http";
 import path from "node:path";
 import { pathToFileURL } from "node:url";
 import { createRequestHandler } from "@react-router/express";
 import compression from "compression";
-import express, { type NextFunction, type Request, type Response } from "express";
+import express, { type Express, type NextFunction, type Request, type Response } from "express";
 import type { RouterContextProvider, ServerBuild } from "react-router";
 import { config } from "./config.server";
 import { securityHeaders } from "./security-headers.server";
@@ -66,15 +67,14 @@ function answer(build: ServerBuild, request: Request, response: Response, next: 
   void createRequestHandler({ build, mode: settings.mode, getLoadContext })(request, response, next);
 }
 
-async function createHost() {
-  const app = express();
+async function createHost(app: Express, host: Server): Promise<void> {
   app.disable("x-powered-by");
   app.set("trust proxy", "loopback");
   app.use(prepareAnswer, refuseForeignHost, refuseMalformedAddress);
   let load: () => Promise<ServerBuild>;
   if (development) {
     const vite = await import("vite");
-    const server = await vite.createServer({ server: { middlewareMode: true } });
+    const server = await vite.createServer({ server: { middlewareMode: true, hmr: { server: host } } });
     app.use(server.middlewares);
     load = () => server.ssrLoadModule("virtual:react-router/server-build") as Promise<ServerBuild>;
   } else {

@@ -93,11 +93,9 @@ async function keep(name: string, run: () => Promise<Child>): Promise<void> {
 }
 
 async function waitUntilHealthy(child: Child, host: string, port: number): Promise<void> {
-  let ended = false;
-  void child.exited.then(() => (ended = true));
   const address = `http://${host === "0.0.0.0" ? "127.0.0.1" : host}:${port}/health`;
   const deadline = Date.now() + HEALTHY_WITHIN_MS;
-  while (!ended && Date.now() < deadline) {
+  while (!child.hasExited() && Date.now() < deadline) {
     const healthy = await fetch(address, { signal: AbortSignal.timeout(5_000) }).then(
       (response) => response.ok,
       () => false,
@@ -117,7 +115,7 @@ async function tellAddress({ config, mariadb, sink }: StartSettings): Promise<vo
     console.log("Demo sign-ins:");
     for (const { email, password, role } of demoSignIns) console.log(`  ${email}  ${password}  ${role}`);
   }
-  if (sink) console.log(`Mail goes nowhere but to ${config.appUrl}/mailbox`);
+  if (sink) console.log(`Mail stays here: ${config.appUrl}/development/mailbox`);
   console.log(`Logs: ${path.join(folder, "logs")}. Ctrl-C ends all.`);
 }
 

@@ -12,8 +12,8 @@ exec 9<&0 </dev/null
   read -r line <&9 && exit 0
   trap '' TERM
   kill -s TERM -- "-$$"
-  seconds=0
-  while kill -0 "$$" && [ "$seconds" -lt 10 ]; do sleep 1; seconds=$((seconds + 1)); done
+  checks=0
+  while kill -0 "$$" && [ "$checks" -lt 50 ]; do sleep 0.2; checks=$((checks + 1)); done
   kill -s KILL -- "-$$"
 ) >/dev/null 2>&1 &
 exec 9<&-

@@ -89,6 +89,8 @@ export async function startMariadb({ folder, port, log = () => undefined }: Mari
     exited: child.exited,
     stop: async (graceMs = STOP_WITHIN_MS) => {
       await child.stop(graceMs);
+      if (path.dirname(places.socket) !== absolute)
+        await rm(path.dirname(places.socket), { recursive: true, force: true });
     },
   };
 }

@@ -29,6 +29,7 @@ export async function keepRunning(
   report: (line: string) => void,
 ): Promise<Kept> {
   const stopping = new AbortController();
+  const isStopping = () => stopping.signal.aborted;
   let running = await start();
   const startAgain = async () => {
     try {
@@ -44,15 +45,15 @@ export async function keepRunning(
     for (;;) {
       const startedAt = Date.now();
       await running.exited;
-      if (stopping.signal.aborted) return;
+      if (isStopping()) return;
       report(`${name} ended unexpectedly; starting it again`);
       if (Date.now() - startedAt > WELL_AFTER_MS) pauseMs = SHORTEST_PAUSE_MS;
       do {
         await delay(pauseMs, undefined, { signal: stopping.signal }).catch(() => undefined);
-        if (stopping.signal.aborted) return;
+        if (isStopping()) return;
         pauseMs = Math.min(pauseMs * 2, LONGEST_PAUSE_MS);
       } while (!(await startAgain()));
-      if (stopping.signal.aborted) await running.stop(0);
+      if (isStopping()) await running.stop(0);
     }
   };
   const watching = watch();

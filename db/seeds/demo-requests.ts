@@ -1,0 +1,70 @@
+// The demo's two RFQs for the receive filter: one to decide on, one open for quotes.
+import { Temporal } from "temporal-polyfill";
+import { PROPOSED_SETUP } from "~/forms/setup";
+import { closeRfq } from "~/services/closing.server";
+import { newIdempotencyKey } from "~/services/identifiers.server";
+import { addInvitations } from "~/services/invitations.server";
+import type { Person } from "~/services/person.server";
+import { createRfq, openRfq, type RfqFields } from "~/services/rfqs.server";
+import { PEOPLE, TIME_ZONE } from "./demo-people";
+import { made } from "./demo-steps";
+
+const HALDEN = { company: "Halden Resonator Works", email: PEOPLE.halden.email };
+const KESTREL = { company: "Kestrel Cavity Filters", email: PEOPLE.kestrel.email };
+const ORME = { company: "Orme Microwave", email: PEOPLE.orme.email };
+
+/** Seventeen o'clock, so many days from now, where the buyer is. */
+const dueIn = (days: number): Date =>
+  new Date(
+    Temporal.Now.plainDateISO(TIME_ZONE).add({ days }).toZonedDateTime({ timeZone: TIME_ZONE, plainTime: "17:00" })
+      .epochMilliseconds,
+  );
+
+const COMMON = {
+  dueZone: TIME_ZONE,
+  decisionRule: "simple",
+  currency: "EUR",
+  unitsAsked: 3,
+  unitsOverRange: 1,
+  assumedSetup: PROPOSED_SETUP,
+} as const;
+
+/** Opens the RFQ that is to be decided, and returns its public id. */
+export const requestFirstSeries = (engineer: Person, specification: string): Promise<string> =>
+  request(engineer, specification, [HALDEN, KESTREL, ORME], {
+    ...COMMON,
+    title: "Receive band-pass, first series",
+    breaks: [100, 500, 1000],
+    askedQuantity: 500,
+    dueAt: dueIn(2),
+    text: "Measured data of three units, one of them at −30, 25 and 70 °C. Lead time counts from the order.",
+  });
+
+/** Opens the RFQ that stays open. */
+export const requestOutdoorSeries = (engineer: Person, specification: string): Promise<string> =>
+  request(engineer, specification, [HALDEN, KESTREL], {
+    ...COMMON,
+    title: "Receive band-pass, outdoor series",
+    breaks: [500, 2000],
+    askedQuantity: 2000,
+    dueAt: dueIn(16),
+    text: "",
+  });
+
+async function request(
+  engineer: Person,
+  specification: string,
+  invited: readonly { readonly company: string; readonly email: string }[],
+  fields: RfqFields,
+): Promise<string> {
+  const written = await createRfq(engineer, newIdempotencyKey(), specification, fields);
+  const { publicId } = made("write an RFQ", written);
+  const rows = invited.map((row, index) => ({ ...row, index }));
+  made("invite suppliers", await addInvitations(engineer, newIdempotencyKey(), publicId, rows));
+  made("open an RFQ", await openRfq(engineer, newIdempotencyKey(), publicId));
+  return publicId;
+}
+
+export async function closeRequest(engineer: Person, rfq: string): Promise<void> {
+  made("close an RFQ", await closeRfq(engineer, rfq));
+}
