@@ -59,42 +59,49 @@ function logRequest(request: Request, response: Response, next: NextFunction): v
   next();
 }
 
-/** Hands the request to the built pages, with what only this host knows. */
-function answer(build: ServerBuild, request: Request, response: Response, next: NextFunction): void {
+/** The handler of a build, with what only this host knows of a request; made once, for it indexes all routes. */
+function handlerOf(build: ServerBuild) {
   const entry = build.entry.module as unknown as EntryWithContext;
-  const { nonce, requestId } = response.locals as { nonce: string; requestId: string };
-  const getLoadContext = () => entry.createLoadContext({ nonce, requestId, ip: request.ip });
-  void createRequestHandler({ build, mode: settings.mode, getLoadContext })(request, response, next);
+  return createRequestHandler({
+    build,
+    mode: settings.mode,
+    getLoadContext: (request, response) => {
+      const { nonce, requestId } = response.locals as { nonce: string; requestId: string };
+      return entry.createLoadContext({ nonce, requestId, ip: request.ip });
+    },
+  });
 }
 
-async function createHost(app: Express, host: Server): Promise<void> {
+async function prepareHost(app: Express, host: Server): Promise<void> {
   app.disable("x-powered-by");
   app.set("trust proxy", "loopback");
   app.use(prepareAnswer, refuseForeignHost, refuseMalformedAddress);
-  let load: () => Promise<ServerBuild>;
+  let load: () => Promise<ReturnType<typeof handlerOf>>;
   if (development) {
     const vite = await import("vite");
     const server = await vite.createServer({ server: { middlewareMode: true, hmr: { server: host } } });
     app.use(server.middlewares);
-    load = () => server.ssrLoadModule("virtual:react-router/server-build") as Promise<ServerBuild>;
+    load = async () => handlerOf((await server.ssrLoadModule("virtual:react-router/server-build")) as ServerBuild);
   } else {
     app.use(compression());
     app.use("/assets", express.static("build/client/assets", { immutable: true, maxAge: "1y" }));
     app.use(express.static("build/client", { maxAge: "1h", index: false }));
     const build = (await import(pathToFileURL(path.resolve("build/server/index.js")).href)) as ServerBuild;
-    load = () => Promise.resolve(build);
+    const handler = handlerOf(build);
+    load = () => Promise.resolve(handler);
   }
   app.use(logRequest);
   app.all("*", (request, response, next) => {
-    load().then((build) => answer(build, request, response, next), next);
+    load()
+      .then((handle) => handle(request, response, next))
+      .catch(next);
   });
-  return app;
 }
 
-const app = await createHost();
-const server = app.listen(settings.port, settings.host, () =>
-  log.info(`listening on ${settings.host}:${settings.port}`),
-);
+const app = express();
+const server = createServer(app);
+await prepareHost(app, server);
+server.listen(settings.port, settings.host, () => log.info(`listening on ${settings.host}:${settings.port}`));
 server.on("error", (error: NodeJS.ErrnoException) => {
   const taken = error.code === "EADDRINUSE";
   console.error(taken ? `Port ${settings.port} is taken: set PORT to a free one.` : error.message);
