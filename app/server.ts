@@ -25,6 +25,10 @@ function prepareAnswer(request: Request, response: Response, next: NextFunction)
   response.locals.nonce = nonce;
   response.locals.requestId = randomUUID();
   response.set(securityHeaders({ nonce, secure: settings.appUrl.startsWith("https://"), development }));
+  // The adapter appends a route's headers: one that states a header of ours replaces it, and only cookies add up.
+  const append = response.append.bind(response);
+  response.append = (name, value) =>
+    name.toLowerCase() !== "set-cookie" && response.hasHeader(name) ? response.set(name, value) : append(name, value);
   if (request.method === "TRACE" || request.method === "CONNECT") {
     response.status(405).type("text/plain").send("Method not allowed\n");
     return;
@@ -79,7 +83,7 @@ async function prepareHost(app: Express, host: Server): Promise<void> {
   let load: () => Promise<ReturnType<typeof handlerOf>>;
   if (development) {
     const vite = await import("vite");
-    const server = await vite.createServer({ server: { middlewareMode: true, hmr: { server: host } } });
+    const server = await vite.createServer({ server: { middlewareMode: true, ws: { server: host } } });
     app.use(server.middlewares);
     load = async () => handlerOf((await server.ssrLoadModule("virtual:react-router/server-build")) as ServerBuild);
   } else {

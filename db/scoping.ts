@@ -1,5 +1,5 @@
 // The scoping hook: no query on a tenant's table without an actor, and every one narrowed to what that actor may see.
-import { literal, Op, type Sequelize, type WhereOptions } from "sequelize";
+import { literal, Op, Utils, type Sequelize, type WhereOptions } from "sequelize";
 import { isTenantTable, VISIBILITY, type Actor, type TenantTable, type Visibility } from "../app/workflow/visibility";
 
 /** The actor of jobs, seeds and sign-in: sees every row, and has to be named on purpose. */
@@ -76,7 +76,9 @@ interface HookedOptions {
   scoped?: boolean;
 }
 
-function scope(options: HookedOptions, table: string): void {
+const unchanged = (condition: WhereOptions): WhereOptions => condition;
+
+function scope(options: HookedOptions, table: string, written = unchanged): void {
   if (!isTenantTable(table) || options.scoped) return;
   if (options.actor === undefined) throw new UnscopedQueryError(`a query on ${table} names no actor`);
   // A join would reach the joined table past this hook: read it with a query of its own.
@@ -84,7 +86,7 @@ function scope(options: HookedOptions, table: string): void {
     throw new UnscopedQueryError(`a query on ${table} includes another table`);
   options.scoped = true;
   if (options.actor === SYSTEM) return;
-  const condition = visibilityCondition(options.actor, table);
+  const condition = written(visibilityCondition(options.actor, table));
   options.where = options.where ? { [Op.and]: [options.where, condition] } : condition;
 }
 
@@ -93,8 +95,11 @@ export function installScoping(sequelize: Sequelize): void {
   sequelize.addHook("afterDefine", (model) => {
     const table = (model as unknown as { tableName: string }).tableName;
     const apply = (options: unknown) => scope(options as HookedOptions, table);
+    // Before this hook alone the attribute names have been turned into column names already.
+    const applyToColumns = (options: unknown) =>
+      scope(options as HookedOptions, table, (condition) => Utils.mapWhereFieldNames(condition, model) as WhereOptions);
     const target = model as unknown as { addHook(name: string, hook: (options: unknown) => void): void };
-    for (const name of ["beforeFind", "beforeCount", "beforeBulkUpdate", "beforeBulkDestroy"])
-      target.addHook(name, apply);
+    for (const name of ["beforeFind", "beforeCount", "beforeBulkUpdate"]) target.addHook(name, apply);
+    target.addHook("beforeBulkDestroy", applyToColumns);
   });
 }

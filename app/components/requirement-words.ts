@@ -1,6 +1,7 @@
 // A line of a specification in words: what it limits, over which band, by how much.
 import type { Limit, Requirement } from "~/rf/index";
 import { measuredRequirements, type RequirementDefinition, type SpecificationLine } from "~/rf/line-definition";
+import { compareLineNumbers } from "~/rf/line-numbers";
 import { formatQuantity } from "~/rf/quantity";
 import { formatBand, formatFrequency, formatNumber } from "./format";
 
@@ -44,7 +45,7 @@ export function formatTemperatureRange([from, to]: readonly [number, number]): s
   return `${signed(from)} to ${signed(to)} °C`;
 }
 
-/** All rows of a revision: impedance and temperature as 1.1 and 1.2, then the lines in the order of their numbers' groups. */
+/** All rows of a revision: impedance and temperature as 1.1 and 1.2, then the lines in the order of their numbers. */
 export function requirementLines(specification: WordedSpecification): RequirementLine[] {
   const { impedances, ambient, temperatureRange, lines } = specification;
   const lowest = specification.lowestTestFrequency ?? undefined;
@@ -65,11 +66,13 @@ export function requirementLines(specification: WordedSpecification): Requiremen
       limit: temperatureRange ? formatTemperatureRange(temperatureRange) : celsius(ambient),
       general: true,
     },
-    ...lines.map(({ lineKey, lineNumber, definition }) => ({
-      lineKey,
-      lineNumber,
-      ...describeDefinition(definition, lowest),
-    })),
+    ...[...lines]
+      .sort((one, other) => compareLineNumbers(one.lineNumber, other.lineNumber))
+      .map(({ lineKey, lineNumber, definition }) => ({
+        lineKey,
+        lineNumber,
+        ...describeDefinition(definition, lowest),
+      })),
   ];
 }
 
@@ -130,9 +133,10 @@ function bandWords(definition: Measured, lowestTestFrequency: number | undefined
 
 function conditionsOf(definition: Measured): string[] {
   const conditions: string[] = [];
-  if ("window" in definition && definition.window !== undefined) conditions.push(`in any ${width(definition.window)}`);
+  if ("window" in definition && definition.window !== undefined)
+    conditions.push(`in any ${shortFrequency(definition.window)}`);
   if ("aperture" in definition && definition.aperture !== undefined)
-    conditions.push(`aperture ${width(definition.aperture)}`);
+    conditions.push(`aperture ${shortFrequency(definition.aperture)}`);
   if (definition.kind === "rejection" && definition.relativeTo)
     conditions.push(`below the least loss of ${formatBand(definition.relativeTo)}`);
   if ("level" in definition) conditions.push(`at ${formatQuantity(definition.level, "level")}`);
@@ -142,8 +146,11 @@ function conditionsOf(definition: Measured): string[] {
   return conditions;
 }
 
-const width = (hz: number) => trimmed(formatFrequency(hz, { decimals: 9 }));
-const trimmed = (text: string) => text.replace(/\.?0+(?=\s)/, "");
+/** A width or a frequency by itself, without trailing zeros: "2.5 MHz", "9 kHz". */
+export const shortFrequency = (hz: number): string =>
+  formatFrequency(hz, { decimals: 9 })
+    .replace(/(\.\d*?)0+(?=\s)/, "$1")
+    .replace(/\.(?=\s)/, "");
 
 function levelLimit(definition: Measured): Limit | undefined {
   switch (definition.kind) {
@@ -182,7 +189,7 @@ function limitWords(definition: Measured): string {
     case "phase-linearity":
       return `max ${level(definition.max)}°`;
     case "centre-frequency":
-      return `${formatFrequency(definition.nominal)} ± ${width(definition.tolerance)}`;
+      return `${formatFrequency(definition.nominal)} ± ${shortFrequency(definition.tolerance)}`;
     case "bandwidth":
       return bandwidthWords(definition);
     case "shape-factor":
@@ -193,8 +200,8 @@ function limitWords(definition: Measured): string {
 }
 
 function bandwidthWords({ min, max }: { readonly min?: number; readonly max?: number }): string {
-  if (min !== undefined && max !== undefined) return `${width(min)} to ${width(max)}`;
-  return min === undefined ? `max ${width(max ?? 0)}` : `min ${width(min)}`;
+  if (min !== undefined && max !== undefined) return `${shortFrequency(min)} to ${shortFrequency(max)}`;
+  return min === undefined ? `max ${shortFrequency(max ?? 0)}` : `min ${shortFrequency(min)}`;
 }
 
 /** The unit a line's value and margin are shown in, and what the core's figure is multiplied by for it. */

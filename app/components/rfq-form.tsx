@@ -65,8 +65,6 @@ function Request() {
   );
 }
 
-const FEW = ["100", "500", "1000"];
-
 function Quantities({ currency }: { currency: string }) {
   return (
     <Section
@@ -75,14 +73,7 @@ function Quantities({ currency }: { currency: string }) {
     >
       <div className="grid grid-cols-2 gap-4 tablet:grid-cols-4 desktop:grid-cols-7">
         {Array.from({ length: MOST_BREAKS }, (_, k) => (
-          <Field
-            key={k}
-            name={`breaks.${k}`}
-            label={`Break ${k + 1}`}
-            inputMode="numeric"
-            autoComplete="off"
-            placeholder={FEW[k]}
-          />
+          <Field key={k} name={`breaks.${k}`} label={`Break ${k + 1}`} inputMode="numeric" autoComplete="off" />
         ))}
         <Field
           name="askedQuantity"

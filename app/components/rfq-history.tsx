@@ -15,7 +15,7 @@ export interface HistoryEventView {
 
 export function HistoryTable({ events, zone }: { events: readonly HistoryEventView[]; zone: string }) {
   return (
-    <Table label="History">
+    <Table label="History" className="min-w-180">
       <thead>
         <tr>
           <HeadCell className="w-56">When</HeadCell>

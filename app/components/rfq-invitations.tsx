@@ -36,15 +36,13 @@ const WORDS = {
 
 export function InvitationTable({ entries, zone, now }: InvitationTableProps) {
   return (
-    <Table label="Invitations" rows="two-line">
+    <Table label="Invitations" rows="two-line" className="min-w-200">
       <thead>
         <tr>
           <HeadCell>Supplier</HeadCell>
           <HeadCell>State</HeadCell>
           <HeadCell>Quote</HeadCell>
-          <HeadCell>
-            <span className="sr-only">Steps</span>
-          </HeadCell>
+          <HeadCell aria-label="Steps" />
         </tr>
       </thead>
       <tbody>

@@ -28,7 +28,7 @@ export function RfqStepPanel(props: RfqStepProps) {
   const { step, head, refusal } = props;
   const back = href("/rfqs/:rfqId", { rfqId: head.publicId });
   return (
-    <Section title={TITLES[step]} id="step" className="border-2 border-signal bg-leaf px-5 pt-4 pb-5">
+    <Section title={TITLES[step]} id="step" className="border-l-3 border-signal pl-5">
       {refusal === null ? (
         <PostForm state={props.state} idempotencyKey={props.idempotencyKey} className="flex flex-col gap-4">
           {step === "open" ? <Opening {...props} /> : step === "close" ? <Closing {...props} /> : <Cancelling />}
@@ -78,9 +78,9 @@ function Closing({ head, now }: RfqStepProps) {
   const { submitted, invited } = head.quotes;
   return (
     <p className="max-w-170">
-      {submitted} of {invited} invited {invited === 1 ? "supplier has" : "suppliers have"} submitted a quote. Quotes
-      were due <Instant at={head.dueAt} zone={head.dueZone} now={now} />; none can be submitted, changed or withdrawn
-      once it is closed. It cannot be opened again.
+      {submitted} of {invited} invited {invited === 1 ? "supplier has" : "suppliers have"} submitted a quote. Quotes are
+      due <Instant at={head.dueAt} zone={head.dueZone} now={now} />; none can be submitted, changed or withdrawn once it
+      is closed. It cannot be opened again.
     </p>
   );
 }

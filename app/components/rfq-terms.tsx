@@ -79,7 +79,7 @@ function Facts({ label, rows, figures = false }: { label: string; rows: readonly
       <tbody>
         {rows.map(([name, value]) => (
           <Row key={name}>
-            <RowHead className="w-44 font-normal! text-quiet">{name}</RowHead>
+            <RowHead className={`font-normal! text-quiet ${figures ? "" : "w-44"}`}>{name}</RowHead>
             <Cell figure={figures}>{value}</Cell>
           </Row>
         ))}

@@ -19,7 +19,7 @@ interface LineFieldsProps {
 
 /** The grid of heads and rows from 720 px on; below that every field has its caption. */
 const columns =
-  "grid grid-cols-2 gap-x-1.5 tablet:grid-cols-[36px_minmax(0,1.35fr)_minmax(0,1fr)_minmax(0,1fr)_minmax(0,0.85fr)_minmax(0,0.85fr)_36px]";
+  "grid grid-cols-2 gap-x-1.5 gap-y-1 tablet:grid-cols-[36px_minmax(0,1.35fr)_minmax(0,1fr)_minmax(0,1fr)_minmax(0,0.85fr)_minmax(0,0.85fr)_36px]";
 
 export function LineHeads() {
   return (
@@ -55,7 +55,7 @@ export function LineFields({ row, liveErrors, onChange, onRemove }: LineFieldsPr
     <fieldset className={`${columns} min-w-0 border-b border-rule py-1.5`}>
       <legend className="sr-only">{lineNumber === "" ? "New line" : `Line ${lineNumber}`}</legend>
       <input type="hidden" name={`${prefix}lineKey`} value={fields.lineKey ?? ""} />
-      <b className="self-start py-2 text-13 max-tablet:col-span-2 max-tablet:pt-1 max-tablet:pb-0">
+      <b className="self-start py-2 text-13 max-tablet:-order-1">
         {lineNumber === "" ? <span className="text-quiet">–</span> : lineNumber}
       </b>
       <Choice
@@ -89,10 +89,11 @@ export function LineFields({ row, liveErrors, onChange, onRemove }: LineFieldsPr
           event.preventDefault();
           onRemove();
         }}
-        className="grid size-9 place-items-center justify-self-end text-quiet hover:text-fail max-tablet:order-last max-tablet:col-span-2 max-tablet:w-auto"
+        className="grid size-9 place-items-center justify-self-end text-quiet hover:text-fail max-tablet:-order-1 pointer-coarse:size-11"
       >
         <X size={20} strokeWidth={1.75} aria-hidden />
       </button>
+      <RowErrors index={index} liveErrors={liveErrors} />
       <Conditions {...{ row, liveErrors, onChange, kind }} />
       <Echo row={row} />
     </fieldset>
@@ -160,6 +161,24 @@ function Conditions(
   return <noscript className={underFields}>{parts}</noscript>;
 }
 
+/** The columns are too narrow for sentences: those of the main fields stand under them, over the row's whole width. */
+const MAIN_FIELDS = ["kind", "name", "from", "to", "limit", "limitEnd"] as const;
+
+function RowErrors({ index, liveErrors }: { index: number; liveErrors: FieldErrors }) {
+  return (
+    <div className={`${underFields} pl-2 empty:hidden`}>
+      {MAIN_FIELDS.map((field) => (
+        <MainError key={field} name={`lines.${index}.${field}`} liveErrors={liveErrors} />
+      ))}
+    </div>
+  );
+}
+
+function MainError(props: Pick<ControlProps, "name" | "liveErrors">) {
+  const { error, errorId } = useCell(props);
+  return <FieldError id={errorId}>{error}</FieldError>;
+}
+
 /** How the row is understood, in the words of the requirement table. */
 function Echo({ row }: { row: ReadRow }) {
   if (!row.requirement || row.requirement.kind === "declared") return null;
@@ -185,7 +204,7 @@ interface ControlProps {
 const control =
   "h-9 rounded-field border bg-leaf px-2 text-13 text-ink hover:border-edge focus-visible:outline-offset-[-2px]";
 
-function useCell({ name, liveErrors }: ControlProps) {
+function useCell({ name, liveErrors }: Pick<ControlProps, "name" | "liveErrors">) {
   const field = useField(name);
   const error = field.error === undefined ? undefined : liveErrors[name]?.join(" ");
   const attributes = error === undefined ? { id: field.id, name } : field.attributes;
@@ -205,12 +224,13 @@ function Framed(props: ControlProps & { id: string; errorId: string; error: stri
         </label>
         {props.children}
       </div>
-      <FieldError id={props.errorId}>{props.error}</FieldError>
+      {inline ? <FieldError id={props.errorId}>{props.error}</FieldError> : null}
     </div>
   );
 }
 
-const border = (error: string | undefined) => (error === undefined ? "border-rule" : "border-fail");
+const border = (error: string | undefined) =>
+  error === undefined ? "border-transparent" : "border-fail [box-shadow:inset_0_0_0_1px_var(--color-fail)]";
 
 function Cell(props: ControlProps) {
   const { attributes, ...frame } = useCell(props);

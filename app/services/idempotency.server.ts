@@ -1,4 +1,5 @@
 // A form counts once, however often it arrives: the key it carries is stored with what was answered.
+import { data } from "react-router";
 import { UniqueConstraintError, type Transaction } from "sequelize";
 import { IdempotencyKey } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
@@ -6,9 +7,8 @@ import { sha256 } from "./identifiers.server";
 import type { Person } from "./person.server";
 import { inTransaction } from "./transaction.server";
 
-export class IdempotencyMismatchError extends Error {
-  override readonly name = "IdempotencyMismatchError";
-}
+/** What a form answers whose key is missing or belongs to another request: the page is to be loaded again. */
+const conflict = () => data("Load the page again", { status: 409 });
 
 const KEY = /^[\w-]{16,64}$/;
 
@@ -21,7 +21,7 @@ class Unfinished<T> extends Error {
 /**
  * Runs `work` in a transaction unless this person's key was seen before, in which case the stored answer comes back and nothing
  * runs. Only an outcome that `isFinal` accepts is kept: a refusal rolls back and may be tried again with the same key.
- * Throws IdempotencyMismatchError when the key comes with another request.
+ * Throws 409 when the key is missing or comes with another request.
  */
 export async function once<T>(
   person: Person,
@@ -30,7 +30,7 @@ export async function once<T>(
   isFinal: (outcome: T) => boolean,
   work: (transaction: Transaction, now: Date) => Promise<T>,
 ): Promise<T> {
-  if (!KEY.test(key)) throw new IdempotencyMismatchError("the form carries no key");
+  if (!KEY.test(key)) throw conflict();
   const requestHash = sha256(JSON.stringify(request));
   try {
     return await inTransaction(async (transaction) => {
@@ -48,8 +48,7 @@ export async function once<T>(
     if (!(error instanceof UniqueConstraintError)) throw error;
     const stored = await IdempotencyKey.findOne({ where: { userId: person.userId, key } });
     if (!stored) throw error;
-    if (!requestHash.equals(stored.requestHash))
-      throw new IdempotencyMismatchError("the key belongs to another request");
+    if (!requestHash.equals(stored.requestHash)) throw conflict();
     return (stored.response as { outcome: T }).outcome;
   }
 }

@@ -125,13 +125,16 @@ export async function addInvitations(
       const now = await databaseNow(transaction);
       const refusal = rfqRefusal("invite", rfqState(rfq, now));
       if (refusal) return invalid({ form: [refusal] });
+      // Entries are locked or made before anything is plainly read, which would fix what the transaction sees.
+      const entries: { readonly row: IndexedInvitation; readonly supplier: Supplier }[] = [];
+      for (const row of rows)
+        entries.push({ row, supplier: await supplierByName(person, row.company, now, transaction) });
       const invited = await Invitation.findAll({ where: { rfqId: rfq.id }, actor: person, transaction });
       if (invited.length + rows.length > MOST_INVITATIONS)
         return invalid({ form: [`An RFQ has at most ${MOST_INVITATIONS} invitations.`] });
       // A refused row undoes the rows before it: the transaction is given up as a whole.
       const errors: FieldErrors = {};
-      for (const row of rows) {
-        const supplier = await supplierByName(person, row.company, now, transaction);
+      for (const { row, supplier } of entries) {
         const fault = await refuseRow(person, row, supplier, invited, transaction);
         if (fault) errors[`invitations.${row.index}.${fault.field}`] = [fault.sentence];
         else invited.push(await addOne(person, rfq, supplier, row.email, now, transaction));
@@ -184,8 +187,8 @@ async function addOne(
     },
     { transaction },
   );
-  await recordInvitation(person, "added", rfq, invitation, supplier.name, now, transaction);
   if (rfq.status === "open") await sendInvitation(person, rfq, invitation, now, transaction);
+  else await recordInvitation(person, "added", rfq, invitation, supplier.name, now, transaction);
   return invitation;
 }
 

@@ -1,36 +1,50 @@
-// Keeps the token of a mail's link out of the address: it moves into a short-lived cookie of the page that uses it.
-import { createCookie, redirect, type Cookie } from "react-router";
+// The token of a mail's link on its way from the address to the page that uses it: a signed cookie for half an hour.
+import { createCookie, type Cookie } from "react-router";
 import { config } from "~/config.server";
 
-const THIRTY_MINUTES_S = 30 * 60;
-const cookies = new Map<string, Cookie>();
+const MAX_AGE_SECONDS = 30 * 60;
+const TOKEN = /^[\w-]{43}$/;
 
-function linkCookie(path: string): Cookie {
-  const known = cookies.get(path);
+/** What the link is for; each keeps a cookie of its own. */
+export type LinkPurpose = "invitation" | "password-reset";
+
+const cookies = new Map<LinkPurpose, Cookie>();
+
+/** At the root, because a narrower path would leave out the page's data address, `/invitation.data`. */
+function linkCookie(purpose: LinkPurpose): Cookie {
+  const known = cookies.get(purpose);
   if (known) return known;
-  const cookie = createCookie("link", {
-    path,
+  const secure = config().appUrl.startsWith("https://");
+  const cookie = createCookie(`${secure ? "__Host-" : ""}tenderband-${purpose}`, {
     httpOnly: true,
-    secure: config().appUrl.startsWith("https://"),
+    secure,
     sameSite: "lax",
+    path: "/",
     secrets: config().sessionSecrets,
-    maxAge: THIRTY_MINUTES_S,
+    maxAge: MAX_AGE_SECONDS,
   });
-  cookies.set(path, cookie);
+  cookies.set(purpose, cookie);
   return cookie;
 }
 
-const PRIVATE = { "Cache-Control": "no-store", "Referrer-Policy": "no-referrer" };
+/** Of the answer whose address holds the token: kept by no cache, and the address goes to no other page. */
+export const LINK_HEADERS = { "Cache-Control": "no-store", "Referrer-Policy": "no-referrer" } as const;
 
-/** Opens a link: remembers its token and goes to the page without it. Consumes nothing, so a mail scanner may follow it. */
-export async function moveTokenOutOfAddress(path: string, token: string): Promise<Response> {
-  return redirect(path, { headers: { "Set-Cookie": await linkCookie(path).serialize(token), ...PRIVATE } });
+/**
+ * Of the page, whose address holds nothing. Under `no-referrer` a form sent without script would carry `Origin: null` and be
+ * refused as another site's.
+ */
+export const LINK_PAGE_HEADERS = { "Cache-Control": "no-store" } as const;
+
+/** The Set-Cookie header that keeps a link's token; what cannot be one is kept as none. */
+export const keepLinkToken = (purpose: LinkPurpose, token: string): Promise<string> =>
+  TOKEN.test(token) ? linkCookie(purpose).serialize(token) : forgetLinkToken(purpose);
+
+export const forgetLinkToken = (purpose: LinkPurpose): Promise<string> =>
+  linkCookie(purpose).serialize("", { maxAge: 0 });
+
+/** The token kept for this browser, or null. */
+export async function readLinkToken(purpose: LinkPurpose, request: Request): Promise<string | null> {
+  const token: unknown = await linkCookie(purpose).parse(request.headers.get("Cookie"));
+  return typeof token === "string" && TOKEN.test(token) ? token : null;
 }
-
-export async function readLinkToken(path: string, request: Request): Promise<string | null> {
-  const token: unknown = await linkCookie(path).parse(request.headers.get("Cookie"));
-  return typeof token === "string" && token.length > 0 && token.length <= 200 ? token : null;
-}
-
-/** The header that forgets the token. */
-export const forgetLinkToken = (path: string): Promise<string> => linkCookie(path).serialize("", { maxAge: 0 });

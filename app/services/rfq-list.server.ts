@@ -127,4 +127,4 @@ async function toEntries(person: Person, rfqs: readonly Rfq[], now: Date): Promi
 }
 
 const byRfq = (groups: readonly Record<string, unknown>[]): Map<number, number> =>
-  new Map(groups.map((group) => [Number(group.rfq_id ?? group.rfqId), Number(group.count)]));
+  new Map(groups.map((group) => [Number(group.rfq_id), Number(group.count)]));

@@ -14,7 +14,7 @@ import { takeNumber } from "~/db/queries/number-series";
 import { invalid, ok, type Result } from "~/forms/form";
 import type { FormValues } from "~/forms/fields";
 import { DEFAULT_UNITS_ASKED, DEFAULT_UNITS_OVER_RANGE, rfqToValues, type RfqInput } from "~/forms/rfq";
-import { PROPOSED_SETUP } from "~/forms/setup";
+import { PROPOSED_SETUP, SETUP_FIELDS, setupToValues } from "~/forms/setup";
 import { zonedTimeToText } from "~/forms/zoned-time";
 import type { Setup } from "~/rf/contract";
 import { rfqNumber, specificationNumber } from "~/workflow/numbers";
@@ -181,7 +181,8 @@ const columns = (input: RfqFields) => ({
 const about = (rfq: Rfq) => ({ buyerOrganisationId: rfq.buyerOrganisationId, rfqId: rfq.id });
 
 async function writeBreaks(person: Person, rfqId: number, breaks: readonly number[], transaction: Transaction) {
-  await RfqQuantity.destroy({ where: { rfqId }, actor: person, transaction });
+  const before = await RfqQuantity.findAll({ where: { rfqId }, actor: person, transaction });
+  for (const row of before) await row.destroy({ transaction });
   const rows = breaks.map((quantity) => ({ buyerOrganisationId: person.organisationId, rfqId, quantity }));
   await RfqQuantity.bulkCreate(rows, { transaction });
 }
@@ -288,7 +289,8 @@ export interface RfqOverview {
   readonly breaks: readonly number[];
   readonly unitsAsked: number;
   readonly unitsOverRange: number;
-  readonly assumedSetup: Setup;
+  /** Label and figure with its unit, of what is assumed. */
+  readonly assumedSetup: readonly (readonly [label: string, figure: string])[];
   /** °C, lower end first; null where the specification gives no range. */
   readonly temperatureRange: readonly [number, number] | null;
   /** °C */
@@ -325,7 +327,7 @@ export async function readRfqOverview(person: Person, rfqPublicId: string): Prom
     breaks,
     unitsAsked: rfq.unitsAsked,
     unitsOverRange: rfq.unitsOverRange,
-    assumedSetup: rfq.assumedSetup,
+    assumedSetup: setupInWords(rfq.assumedSetup),
     temperatureRange: from === null || to === null ? null : [from, to],
     ambient: revision.ambient,
     createdAt: rfq.createdAt.toISOString(),
@@ -353,3 +355,12 @@ async function readAddressees(person: Person, rfqId: number) {
 
 const reasonOf = (detail: object | null | undefined): string | null =>
   detail && "reason" in detail && typeof detail.reason === "string" ? detail.reason : null;
+
+function setupInWords(setup: Setup): [label: string, figure: string][] {
+  const texts = setupToValues(setup);
+  return SETUP_FIELDS.flatMap(({ field, label }): [string, string][] => {
+    const text = texts[`setup.${field}`] ?? "";
+    if (text === "") return [];
+    return [[label, field === "noiseFloor" ? `${text} ${setup.noiseFloorKind ?? "peak"}` : text]];
+  });
+}

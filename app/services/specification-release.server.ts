@@ -13,47 +13,42 @@ import { once } from "./idempotency.server";
 import { sha256 } from "./identifiers.server";
 import type { Person } from "./person.server";
 import { readLines } from "./specification-lines.server";
+import { draftVersion } from "./specifications.server";
 
 type Revised = Result<{ readonly letter: string }>;
 
 /**
  * Releases the draft and supersedes the revision released before. Refused for a mask that contradicts itself, one without a
- * measured line, and a draft saved since `lockVersion` was shown. Null where the person does not see the specification.
+ * measured line, and a draft saved since `version` of it was shown. Null where the person does not see the specification.
  */
 export async function releaseRevision(
   person: Person,
   publicId: string,
-  request: { readonly idempotencyKey: string; readonly lockVersion: string },
+  request: { readonly idempotencyKey: string; readonly version: string },
 ): Promise<Revised | null> {
   const found = await Specification.findOne({ where: { publicId }, actor: person });
   if (!found) return null;
   const isFinal = (outcome: Revised) => outcome.ok;
-  return once(
-    person,
-    request.idempotencyKey,
-    ["release", publicId, request.lockVersion],
-    isFinal,
-    async (transaction) => {
-      const { specification, revisions } = await lockRevisions(person, found.id, transaction);
-      const draft = revisions.find(({ status }) => status === "draft");
-      if (!draft) return invalid({ form: [specificationRefusal("release", "released") ?? ""] });
-      if (String(draft.lockVersion) !== request.lockVersion)
-        return invalid({ form: ["This draft was saved since you opened this page. Read it again, then release it."] });
-      const lines = await readLines(person, draft.id, transaction);
-      const problems = releaseProblems(lines);
-      if (problems.length > 0) return invalid({ form: problems });
-      const now = await databaseNow(transaction);
-      const contentHash = contentHashOf(specification, draft, lines);
-      for (const earlier of revisions.filter(({ status }) => status === "released"))
-        await earlier.update({ status: "superseded" }, { transaction });
-      const released = { status: "released" as const, releasedAt: now, releasedBy: person.userId, contentHash };
-      await draft.update({ ...released, lockVersion: draft.lockVersion + 1 }, { transaction });
-      await specification.update({ title: draft.title }, { transaction });
-      const detail = { letter: draft.letter, lines: lines.length, contentHash: contentHash.toString("hex") };
-      await record(person, now, specification, "released", detail, transaction);
-      return ok({ letter: draft.letter });
-    },
-  );
+  return once(person, request.idempotencyKey, ["release", publicId, request.version], isFinal, async (transaction) => {
+    const { specification, revisions } = await lockRevisions(person, found.id, transaction);
+    const draft = revisions.find(({ status }) => status === "draft");
+    if (!draft) return invalid({ form: [specificationRefusal("release", "released") ?? ""] });
+    if (draftVersion(draft) !== request.version)
+      return invalid({ form: ["This draft was saved since you opened this page. Read it again, then release it."] });
+    const lines = await readLines(person, draft.id, transaction);
+    const problems = releaseProblems(lines);
+    if (problems.length > 0) return invalid({ form: problems });
+    const now = await databaseNow(transaction);
+    const contentHash = contentHashOf(specification, draft, lines);
+    for (const earlier of revisions.filter(({ status }) => status === "released"))
+      await earlier.update({ status: "superseded" }, { transaction });
+    const released = { status: "released" as const, releasedAt: now, releasedBy: person.userId, contentHash };
+    await draft.update({ ...released, lockVersion: draft.lockVersion + 1 }, { transaction });
+    await specification.update({ title: draft.title }, { transaction });
+    const detail = { letter: draft.letter, lines: lines.length, contentHash: contentHash.toString("hex") };
+    await record(person, now, specification, "released", detail, transaction);
+    return ok({ letter: draft.letter });
+  });
 }
 
 /** Why the lines cannot be released; empty where they can. */

@@ -135,7 +135,7 @@ export async function readSpecification(person: Person, publicId: string) {
       id: revision.id,
       letter: revision.letter,
       status: revision.status,
-      lockVersion: revision.lockVersion,
+      version: draftVersion(revision),
       savedAt: revision.savedAt.toISOString(),
       releasedAt: revision.releasedAt?.toISOString() ?? null,
       releasedByName: revision.releasedBy === null ? null : (releasers.get(revision.releasedBy) ?? null),
@@ -177,7 +177,7 @@ export async function readDraft(person: Person, publicId: string) {
     number: specificationNumber(specification.number),
     letter: revision.letter,
     savedAt: revision.savedAt.toISOString(),
-    values: { ...specificationToValues(draft), lockVersion: String(revision.lockVersion) } as FormValues,
+    values: { ...specificationToValues(draft), lockVersion: draftVersion(revision) } as FormValues,
     releasedNumbers: [...released],
   };
 }
@@ -279,15 +279,15 @@ export async function saveDraft(person: Person, publicId: string, form: FormData
     const revision = await findDraft(person, specification.id, transaction);
     if (!revision) return refused(values, { form: [specificationRefusal("edit", "released") ?? ""] });
     const expected = values.intent === "save-over" ? values.overLockVersion : values.lockVersion;
-    if (String(revision.lockVersion) !== expected) return staleDraft(values, revision);
+    if (draftVersion(revision) !== expected) return staleDraft(values, revision);
     const now = await databaseNow(transaction);
     await revision.update(
       { ...draftColumns(parsed.value), lockVersion: revision.lockVersion + 1, savedAt: now },
       { transaction },
     );
     if (released.size === 0) await specification.update({ title: parsed.value.title }, { transaction });
-    const where = { revisionId: revision.id };
-    await RequirementRow.destroy({ where, actor: person, transaction });
+    const before = await RequirementRow.findAll({ where: { revisionId: revision.id }, actor: person, transaction });
+    for (const row of before) await row.destroy({ transaction });
     await writeLines(revision, parsed.value, released, now, transaction);
     await recordEvent(
       person,
@@ -308,8 +308,11 @@ export async function saveDraft(person: Person, publicId: string, form: FormData
 function staleDraft(values: FormValues, revision: SpecificationRevision): SavedDraft {
   const sentence =
     "This draft was saved after you opened it. Your entries are kept here and not saved: open the draft in a second tab to see what changed.";
-  return refused({ ...values, overLockVersion: String(revision.lockVersion) }, { form: [sentence] });
+  return refused({ ...values, overLockVersion: draftVersion(revision) }, { form: [sentence] });
 }
+
+/** Names one saved state of one revision: the same count of another letter is another draft. */
+export const draftVersion = ({ letter, lockVersion }: SpecificationRevision): string => `${letter}-${lockVersion}`;
 
 const isSaved = (outcome: SavedDraft): boolean => outcome.ok;
 

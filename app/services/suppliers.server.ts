@@ -1,9 +1,9 @@
 // A buyer's supplier directory: entries with their status and addresses, made as suppliers are invited.
-import { col, fn, Op, type Transaction } from "sequelize";
+import { Op, type Transaction } from "sequelize";
 import { Invitation, Supplier, SupplierContact } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { ok, type Result } from "~/forms/form";
-import type { SupplierStatus } from "~/forms/rfq-steps";
+import { SUPPLIER_STATUSES, type SupplierStatus } from "~/forms/supplier-status";
 import { recordEvent } from "./audit.server";
 import { newPublicId } from "./identifiers.server";
 import type { Person } from "./person.server";
@@ -111,8 +111,7 @@ export async function listSuppliers(
   return { entries, counts, total, pages: Math.max(1, Math.ceil(total / SUPPLIERS_A_PAGE)) };
 }
 
-const isStatus = (value: unknown): value is SupplierStatus =>
-  value === "candidate" || value === "approved" || value === "blocked";
+const isStatus = (value: unknown): value is SupplierStatus => SUPPLIER_STATUSES.some((status) => status === value);
 
 async function contactsOf(person: Person, suppliers: readonly Supplier[]): Promise<Map<number, string[]>> {
   if (suppliers.length === 0) return new Map();
@@ -125,13 +124,12 @@ async function contactsOf(person: Person, suppliers: readonly Supplier[]): Promi
 
 async function invitedTo(person: Person, suppliers: readonly Supplier[]): Promise<Map<number, number>> {
   if (suppliers.length === 0) return new Map();
-  const rows = await Invitation.findAll({
+  const groups = await Invitation.count({
     where: { supplierId: suppliers.map(({ id }) => id), sentAt: { [Op.ne]: null } },
-    attributes: ["supplierId", [fn("COUNT", col("id")), "rfqs"]],
     group: ["supplier_id"],
     actor: person,
   });
-  return new Map(rows.map((row) => [row.supplierId, Number(row.get("rfqs"))]));
+  return new Map(groups.map((group) => [Number(group.supplier_id), group.count]));
 }
 
 /** Sets an entry's status. A blocked supplier is not invited again; invitations it has stay. Null where the person does not see it. */

@@ -9,7 +9,11 @@ export type TokenSubject =
 
 /** Revokes every unused link of the subject. */
 export async function revokeTokens(subject: TokenSubject, now: Date, transaction: Transaction): Promise<void> {
-  await OneTimeToken.update({ revokedAt: now }, { where: { ...subject, usedAt: null, revokedAt: null }, transaction });
+  // An update that matches no row would lock the gap where the next token goes, and two of them deadlock.
+  const older = await OneTimeToken.findAll({ where: { ...subject, usedAt: null, revokedAt: null }, transaction });
+  if (older.length === 0) return;
+  const tokenHash = older.map((row) => row.tokenHash);
+  await OneTimeToken.update({ revokedAt: now }, { where: { tokenHash, usedAt: null, revokedAt: null }, transaction });
 }
 
 /** Makes a link's token and ends the subject's older ones. */

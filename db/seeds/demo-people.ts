@@ -1,34 +1,12 @@
-// The people of the demo, all invented, and how the buyer's come to their accounts.
+// How the people of the demo's buyer come to their accounts.
 import { Organisation, User } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
 import { makeFirstAdministrator } from "~/services/first-administrator.server";
 import { addColleague } from "~/services/organisation.server";
 import { resetPassword } from "~/services/password-reset.server";
 import type { Person } from "~/services/person.server";
+import { BUYER, PASSWORD, PEOPLE, TIME_ZONE } from "./demo-cast";
 import { filledForm, lastPart, made, mailedToken, personOf } from "./demo-steps";
-
-/** One for all of the demo: it guards nothing but an invented scenario. */
-export const PASSWORD = "coupled-iris-tuning";
-export const BUYER = "Northgate Radio";
-export const TIME_ZONE = "Europe/Berlin";
-
-interface DemoPerson {
-  readonly name: string;
-  readonly email: string;
-  readonly role: string;
-}
-
-export const PEOPLE = {
-  engineer: { name: "Mira Talvio", email: "engineer@northgate.example.com", role: `engineer, ${BUYER}` },
-  purchasing: { name: "Joss Arden", email: "purchasing@northgate.example.com", role: `purchasing, ${BUYER}` },
-  admin: { name: "Tamsin Hale", email: "admin@northgate.example.com", role: `administrator, ${BUYER}` },
-  halden: { name: "Odo Brandt", email: "sales@halden.example.com", role: "supplier, Halden Resonator Works" },
-  kestrel: { name: "Pia Keswick", email: "sales@kestrel.example.com", role: "supplier, Kestrel Cavity Filters" },
-  orme: { name: "Runa Orme", email: "sales@orme.example.com", role: "supplier, Orme Microwave" },
-} as const satisfies Record<string, DemoPerson>;
-
-export const signInsOf = (people: Readonly<Record<string, DemoPerson>>) =>
-  Object.values(people).map(({ role, email }) => ({ role, email, password: PASSWORD }));
 
 /** Makes the buyer with its administrator, who adds the two colleagues; each sets the password by a link. */
 export async function foundBuyer(): Promise<Record<"engineer" | "purchasing" | "admin", Person>> {

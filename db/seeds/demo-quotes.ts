@@ -12,7 +12,7 @@ import { submitQuote } from "~/services/quote-submission.server";
 import { saveDraft, startQuote } from "~/services/quotes.server";
 import { scoreVersion } from "~/services/scoring.server";
 import { readLines } from "~/services/specification-lines.server";
-import { PASSWORD, PEOPLE } from "./demo-people";
+import { PASSWORD, PEOPLE } from "./demo-cast";
 import { made, mailedToken, personOf } from "./demo-steps";
 
 const DATA = path.join("db", "seeds", "demo-data");

@@ -6,7 +6,7 @@ import { newIdempotencyKey } from "~/services/identifiers.server";
 import { addInvitations } from "~/services/invitations.server";
 import type { Person } from "~/services/person.server";
 import { createRfq, openRfq, type RfqFields } from "~/services/rfqs.server";
-import { PEOPLE, TIME_ZONE } from "./demo-people";
+import { PEOPLE, TIME_ZONE } from "./demo-cast";
 import { made } from "./demo-steps";
 
 const HALDEN = { company: "Halden Resonator Works", email: PEOPLE.halden.email };

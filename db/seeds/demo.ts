@@ -1,13 +1,12 @@
 // The demo: a buyer, three suppliers, one RFQ with its quotes in, one still open, one draft; made by the product's own use cases.
 import { Organisation } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
-import { foundBuyer, PEOPLE, signInsOf } from "./demo-people";
+import { foundBuyer } from "./demo-people";
 import { beginOutdoorQuote, quoteFirstSeries } from "./demo-quotes";
 import { closeRequest, requestFirstSeries, requestOutdoorSeries } from "./demo-requests";
 import { writeDraftSpecification, writeReceiveFilter } from "./demo-specifications";
 
-/** Addresses and passwords of the demo's people, for the terminal and the sign-in of a visitor. */
-export const demoSignIns: readonly { role: string; email: string; password: string }[] = signInsOf(PEOPLE);
+export { demoSignIns } from "./demo-cast";
 
 /** Fills an installation that holds no organisation yet; leaves any other alone. All dates are relative to now. */
 export async function seedDemo(): Promise<void> {

@@ -1,6 +1,6 @@
 // The scoping hook: whose rows a query returns, and which queries it refuses.
 import { expect, test } from "vitest";
-import { Organisation, Quote, RequirementRow, Rfq, Specification, Supplier } from "~/db/models";
+import { Organisation, Quote, RequirementRow, Rfq, RfqQuantity, Specification, Supplier } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
 import { buildInvitation, buildOrganisation, buildPerson, buildQuote, buildRfq } from "../support/factories";
 import { useDatabase } from "../support/database";
@@ -66,6 +66,8 @@ test("an update or delete touches no row the actor does not see", async () => {
   const { stranger, engineer, rfq } = await twoBuyersTwoSuppliers();
   expect(await Rfq.update({ title: "taken" }, { where: { id: rfq.id }, actor: stranger })).toEqual([0]);
   expect(await Rfq.update({ title: "ours" }, { where: { id: rfq.id }, actor: engineer })).toEqual([1]);
+  expect(await RfqQuantity.destroy({ where: { rfqId: rfq.id }, actor: stranger })).toBe(0);
+  expect(await RfqQuantity.destroy({ where: { rfqId: rfq.id, quantity: 100 }, actor: engineer })).toBe(1);
 });
 
 test("a join past the hook is refused, and the system actor has to be named", async () => {

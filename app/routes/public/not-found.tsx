@@ -1,4 +1,14 @@
-// Stub.
+// Every address that leads nowhere.
+import { notFound } from "~/services/request.server";
+
+export function loader() {
+  throw notFound();
+}
+
+export function action() {
+  throw notFound();
+}
+
 export default function NotFound() {
-  return <p>stub</p>;
+  return null;
 }

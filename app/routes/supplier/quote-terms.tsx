@@ -1,4 +1,57 @@
-// Stub.
-export default function QuoteTerms() {
-  return <p>stub</p>;
+// Terms of a quote: prices, delivery, conditions, and the setup its data was measured with.
+import { data, redirect } from "react-router";
+import { Page } from "~/components/page";
+import { QuoteDraftForm } from "~/components/quote-draft-form";
+import { QuoteStateNotice } from "~/components/quote-state-notice";
+import { BasisFields, ConditionFields, DeliveryFields, PriceFields } from "~/components/quote-terms-fields";
+import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
+import { saveSheet } from "~/services/quote-draft-save.server";
+import { checkSheet, readQuoteTerms } from "~/services/quote-terms.server";
+import { readQuoteHead } from "~/services/quotes.server";
+import { orNotFound, requireRight } from "~/services/request.server";
+import type { Route } from "./+types/quote-terms";
+
+export const meta: Route.MetaFunction = ({ loaderData }) => [
+  { title: `Terms, quote to ${loaderData?.head.rfqNumber ?? "RFQ"} · Tenderband` },
+];
+
+export async function loader({ request, context, params }: Route.LoaderArgs) {
+  const person = requireRight(context, request, "read-own-quote");
+  const head = orNotFound(await readQuoteHead(person, params.quoteId));
+  const terms = orNotFound(await readQuoteTerms(person, params.quoteId));
+  const { searchParams } = new URL(request.url);
+  const errors = searchParams.has("check") ? orNotFound(await checkSheet(person, params.quoteId, "terms")) : {};
+  return { head, terms, errors, wasSaved: searchParams.has("saved") };
+}
+
+export async function action({ request, context, params }: Route.ActionArgs) {
+  const person = requireRight(context, request, "write-quote");
+  const form = await request.formData();
+  const outcome = orNotFound(await saveSheet(person, params.quoteId, "terms", form));
+  if (outcome !== "in-order") return data(outcome, { status: 400 });
+  const next = form.get("intent") === "continue" ? "Declarations" : "Terms";
+  return redirect(`${quoteSheetAddress(next, params.quoteId)}${next === "Terms" ? "?saved" : ""}`);
+}
+
+export default function QuoteTerms({ loaderData, actionData }: Route.ComponentProps) {
+  const { head, terms, errors, wasSaved } = loaderData;
+  return (
+    <Page>
+      <SupplierQuoteBlock head={head} sheet="Terms" />
+      <QuoteStateNotice head={head} />
+      <QuoteDraftForm
+        values={terms.values}
+        errors={errors}
+        lockVersion={terms.lockVersion}
+        answer={actionData}
+        wasSaved={wasSaved}
+        canEdit={head.refusal === null}
+      >
+        <PriceFields breaks={terms.breaks} quantity={terms.quantity} currency={terms.currency} />
+        <DeliveryFields />
+        <ConditionFields />
+        <BasisFields assumedSetup={terms.assumedSetup} />
+      </QuoteDraftForm>
+    </Page>
+  );
 }

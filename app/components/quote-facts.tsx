@@ -1,0 +1,27 @@
+// Pairs of a name and what it says, as a table without a head.
+import type { ReactNode } from "react";
+import { Cell, Row, RowHead, Table } from "./data-table";
+
+export type QuoteFact = readonly [name: string, value: ReactNode];
+
+interface QuoteFactsProps {
+  label: string;
+  rows: readonly QuoteFact[];
+  /** Right-aligned figures. */
+  figures?: boolean;
+}
+
+export function QuoteFacts({ label, rows, figures = false }: QuoteFactsProps) {
+  return (
+    <Table label={label} className="border-t-[1.5px] border-ink">
+      <tbody>
+        {rows.map(([name, value]) => (
+          <Row key={name}>
+            <RowHead className={`font-normal! text-quiet ${figures ? "" : "w-44"}`}>{name}</RowHead>
+            <Cell figure={figures}>{value}</Cell>
+          </Row>
+        ))}
+      </tbody>
+    </Table>
+  );
+}

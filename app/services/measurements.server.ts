@@ -1,0 +1,154 @@
+// An uploaded file becomes a measured sweep of a quote: read, checked, scored and stored at once, or refused whole.
+import { Op, type Transaction } from "sequelize";
+import { MeasurementRow, StoredFile, type Quote } from "~/db/models";
+import { databaseNow } from "~/db/queries/clock";
+import { SYSTEM } from "~/db/scoping";
+import { invalid, ok, type Result } from "~/forms/form";
+import { checkNetwork, parseTouchstone, TouchstoneError, type Note, type Setup, type TwoPort } from "~/rf/index";
+import { quoteRefusal } from "~/workflow/quote";
+import { rfqState } from "~/workflow/rfq";
+import { packChunks, storeChunks } from "./file-bytes.server";
+import { newPublicId, sha256 } from "./identifiers.server";
+import type { Person } from "./person.server";
+import { changeQuote, findQuote, recordQuoteEvent, type FoundQuote } from "./quotes.server";
+import {
+  readScoringFrame,
+  scoreSweep,
+  setupInUse,
+  storeSweepScore,
+  type ScoringFrame,
+  type SweepScore,
+} from "./scoring-sweeps.server";
+import { readSweepLabels } from "./sweep-labels.server";
+import { MOST_FILE_BYTES, MOST_FILES, TOO_LARGE } from "./uploads.server";
+
+export interface UploadedFile {
+  readonly name: string;
+  readonly bytes: Uint8Array;
+}
+
+/**
+ * Stores a Touchstone file with its measurement and results: all of it or nothing. What is wrong with the file is under the
+ * key `file`, with its line. Null where the person does not see the quote.
+ */
+export async function addMeasurement(
+  person: Person,
+  quotePublicId: string,
+  file: UploadedFile,
+): Promise<Result<{ publicId: string }> | null> {
+  const found = await findQuote(person, quotePublicId);
+  if (!found) return null;
+  const refusal = quoteRefusal("edit", found.quote.state, rfqState(found.rfq, await databaseNow()));
+  if (refusal) return invalid({ form: [refusal] });
+  if (file.bytes.length > MOST_FILE_BYTES) return invalid({ file: [TOO_LARGE] });
+  const frame = await readScoringFrame(person, found.rfq.revisionId);
+  const packing = packChunks(file.bytes); // deflated in the thread pool while this thread reads the numbers
+  packing.catch(() => undefined);
+  const network = readNetwork(file);
+  if ("refusal" in network) return invalid({ file: [network.refusal] });
+  const sweep: PreparedSweep = {
+    file,
+    sha256: sha256(file.bytes),
+    network,
+    notes: notesOf(network, frame, found.rfq.assumedSetup),
+    setup: setupInUse(null, found.rfq.assumedSetup),
+    score: scoreSweep(network, frame, null, found.rfq.assumedSetup),
+    frame,
+    chunks: await packing,
+  };
+  return storeSweep(person, found, sweep);
+}
+
+interface PreparedSweep {
+  readonly file: UploadedFile;
+  readonly sha256: Buffer;
+  readonly network: TwoPort;
+  readonly notes: Note[];
+  readonly setup: Setup;
+  readonly score: SweepScore;
+  readonly frame: ScoringFrame;
+  readonly chunks: readonly Buffer[];
+}
+
+function readNetwork({ bytes, name }: UploadedFile): TwoPort | { readonly refusal: string } {
+  try {
+    return parseTouchstone(bytes, name);
+  } catch (error) {
+    if (!(error instanceof TouchstoneError)) throw error;
+    return { refusal: `${placeOf(error)}${error.message}` };
+  }
+}
+
+const WHOLE_FILE: readonly TouchstoneError["code"][] = ["empty-file", "too-large", "not-text", "no-data"];
+
+const placeOf = ({ code, line, column }: TouchstoneError): string => {
+  if (WHOLE_FILE.includes(code)) return "";
+  return column === undefined ? `Line ${line}: ` : `Line ${line}, column ${column}: `;
+};
+
+const notesOf = (network: TwoPort, { requirements, impedance }: ScoringFrame, setup: Setup): Note[] => [
+  ...network.notes,
+  ...checkNetwork(network, { requirements, impedance, setup }),
+];
+
+function storeSweep(
+  person: Person,
+  { quote }: FoundQuote,
+  sweep: PreparedSweep,
+): Promise<Result<{ publicId: string }> | null> {
+  return changeQuote(person, quote.publicId, async (locked, transaction) => {
+    const { now } = locked;
+    const kept = await keptMeasurements(locked.quote.id, transaction);
+    if (kept.length >= MOST_FILES) return invalid({ file: [`A quote holds at most ${MOST_FILES} files.`] });
+    const same = await sameBytes(kept, sweep.sha256, transaction);
+    if (same) return invalid({ file: [`These bytes are in this quote already, as ${same}.`] });
+    const measurement = await createRows(locked.quote, sweep, now, transaction);
+    await storeSweepScore(measurement, sweep.frame, sweep.setup, sweep.score, now, transaction);
+    await locked.quote.update({ savedAt: now }, { transaction });
+    const detail = { file: sweep.file.name, sha256: sweep.sha256.toString("hex"), points: measurement.points };
+    await recordQuoteEvent(person, now, locked.quote, "file uploaded", detail, transaction);
+    return ok({ publicId: measurement.publicId });
+  });
+}
+
+const keptMeasurements = (quoteId: number, transaction: Transaction) =>
+  MeasurementRow.findAll({ where: { quoteId, removedAt: null }, attributes: ["fileId"], actor: SYSTEM, transaction });
+
+async function sameBytes(
+  kept: readonly MeasurementRow[],
+  hash: Buffer,
+  transaction: Transaction,
+): Promise<string | undefined> {
+  const where = { id: { [Op.in]: kept.map(({ fileId }) => fileId) }, sha256: hash };
+  const file = await StoredFile.findOne({ where, attributes: ["name"], actor: SYSTEM, transaction });
+  return file?.name;
+}
+
+async function createRows(quote: Quote, sweep: PreparedSweep, now: Date, transaction: Transaction) {
+  const { id: quoteId, buyerOrganisationId, supplierOrganisationId } = quote;
+  const owner = { publicId: newPublicId(), buyerOrganisationId, supplierOrganisationId, quoteId, createdAt: now };
+  const { file, network } = sweep;
+  const stored = await StoredFile.create(
+    { ...owner, name: file.name, mediaType: "application/octet-stream", size: file.bytes.length, sha256: sweep.sha256 },
+    { transaction },
+  );
+  await storeChunks(stored.id, sweep.chunks, transaction);
+  const { serial, temperature } = readSweepLabels(file.name, network.comments);
+  const points = network.frequency.length;
+  return MeasurementRow.create(
+    {
+      ...owner,
+      publicId: newPublicId(),
+      fileId: stored.id,
+      serial,
+      temperature: temperature === null ? null : temperature.toFixed(1),
+      points,
+      frequencyFrom: network.frequency[0] ?? 0,
+      frequencyTo: network.frequency[points - 1] ?? 0,
+      impedance1: network.referenceImpedance[0],
+      impedance2: network.referenceImpedance[1],
+      notes: sweep.notes,
+    },
+    { transaction },
+  );
+}

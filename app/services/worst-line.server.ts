@@ -1,0 +1,42 @@
+// The line a quote or a file stands worst on: by verdict, among equals by margin in parts of full credit.
+import { creditedMargin } from "~/commerce/full-credit";
+import { readNumber, verdictRank, type SpecificationLine, type StoredResult, type Verdict } from "~/rf/index";
+
+export interface LineStanding {
+  readonly lineKey: string;
+  readonly verdict: Verdict;
+  /** In the line's unit; null where nothing was reached or the margin is infinite. */
+  readonly margin: number | null;
+  /** Margin in parts of full credit; null where there is no margin, or no credit for it. */
+  readonly creditedMargin: number | null;
+}
+
+const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
+
+/** How a line stands by its worst result. */
+export function standingOf(line: SpecificationLine, verdict: Verdict, result: StoredResult | undefined): LineStanding {
+  const margin = result === undefined ? null : finite(readNumber(result.margin));
+  const limit = result === undefined ? null : finite(readNumber(result.limit));
+  const credited = margin === null ? null : creditOf(margin, line.definition.kind, limit);
+  return { lineKey: line.lineKey, verdict, margin, creditedMargin: credited };
+}
+
+/** A limit of nothing earns no credit: there is no share of it. */
+function creditOf(margin: number, kind: string, limit: number | null): number | null {
+  try {
+    return creditedMargin(margin, limit === null ? { kind } : { kind, limit });
+  } catch (error) {
+    if (error instanceof RangeError) return null;
+    throw error;
+  }
+}
+
+/** The worst verdict; among equals the least credited margin, one without a margin last; undefined for no lines. */
+export function worstStanding(standings: readonly LineStanding[]): LineStanding | undefined {
+  return standings.reduce<LineStanding | undefined>((worst, standing) => {
+    if (worst === undefined) return standing;
+    const difference = verdictRank(standing.verdict) - verdictRank(worst.verdict);
+    if (difference !== 0) return difference < 0 ? standing : worst;
+    return (standing.creditedMargin ?? Infinity) < (worst.creditedMargin ?? Infinity) ? standing : worst;
+  }, undefined);
+}
