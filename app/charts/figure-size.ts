@@ -13,6 +13,11 @@ export interface MeasuredFigure {
   readonly phoneRef: RefObject<HTMLDivElement | null>;
 }
 
+/** px below which there is no room for the axes; a box of a collapsed column still has its margins' width. */
+const NARROWEST = 160;
+
+const drawable = (width: number | undefined) => (width !== undefined && width < NARROWEST ? 0 : width);
+
 /** Measures both boxes of a figure; one of them is hidden by the page's width. */
 export function useFigureWidths(): MeasuredFigure {
   const deskRef = useRef<HTMLDivElement>(null);
@@ -20,8 +25,8 @@ export function useFigureWidths(): MeasuredFigure {
   const [widths, setWidths] = useState<FigureWidths>({ desk: undefined, phone: undefined });
   useEffect(() => {
     const measure = () => {
-      const desk = deskRef.current?.clientWidth;
-      const phone = phoneRef.current?.clientWidth;
+      const desk = drawable(deskRef.current?.clientWidth);
+      const phone = drawable(phoneRef.current?.clientWidth);
       // Neither shows while an ancestor is hidden: the last known stays.
       if (desk || phone) setWidths((known) => (known.desk === desk && known.phone === phone ? known : { desk, phone }));
     };

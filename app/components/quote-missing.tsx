@@ -25,7 +25,7 @@ export function QuoteMissing({ quoteId, errors, declared }: QuoteMissingProps) {
       <p className="font-semibold">Before you can submit</p>
       {groups.map(({ sheet, sentences }) => (
         <div key={sheet} className="mt-1">
-          <Link to={`${quoteSheetAddress(sheet, quoteId)}${sheet === "Data" ? "" : "?check"}`}>{sheet}</Link>
+          <Link to={`${quoteSheetAddress(sheet, quoteId)}${sheet === "Data" ? "" : "?check=1"}`}>{sheet}</Link>
           <ul>
             {sentences.map((sentence) => (
               <li key={sentence}>{sentence}</li>

@@ -5,7 +5,7 @@ import { Notice } from "~/components/notice";
 import { Page, Section } from "~/components/page";
 import { RfqBlock } from "~/components/rfq-block";
 import { HistoryTable } from "~/components/rfq-history";
-import { Pager } from "~/components/rfq-pager";
+import { Pager } from "~/components/list-pager";
 import { readPage } from "~/forms/rfq-list";
 import { readHistory } from "~/services/history.server";
 import { orNotFound, requireRight } from "~/services/request.server";

@@ -6,7 +6,7 @@ import { Empty } from "~/components/empty";
 import { Instant } from "~/components/figure";
 import { formatNumber } from "~/components/format";
 import { Page, Section } from "~/components/page";
-import { ListViews, Pager } from "~/components/rfq-pager";
+import { ListViews, Pager } from "~/components/list-pager";
 import { TitleBlock } from "~/components/title-block";
 import { readRfqListQuery, rfqListSearch, type RfqListQuery, type RfqSort } from "~/forms/rfq-list";
 import { requireRight } from "~/services/request.server";

@@ -5,7 +5,7 @@ import { Cell, HeadCell, Row, RowHead, Table } from "~/components/data-table";
 import { Empty } from "~/components/empty";
 import { Instant } from "~/components/figure";
 import { Page } from "~/components/page";
-import { ListViews, Pager } from "~/components/rfq-pager";
+import { ListViews, Pager } from "~/components/list-pager";
 import { TitleBlock } from "~/components/title-block";
 import { requireRight } from "~/services/request.server";
 import { LIST_SORTS, listSpecifications, type SpecificationListQuery } from "~/services/specifications.server";

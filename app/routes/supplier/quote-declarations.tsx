@@ -32,7 +32,7 @@ export async function action({ request, context, params }: Route.ActionArgs) {
   const outcome = orNotFound(await saveSheet(person, params.quoteId, "declarations", form));
   if (outcome !== "in-order") return data(outcome, { status: 400 });
   const next = form.get("intent") === "continue" ? "Review" : "Declarations";
-  return redirect(`${quoteSheetAddress(next, params.quoteId)}${next === "Declarations" ? "?saved" : ""}`);
+  return redirect(`${quoteSheetAddress(next, params.quoteId)}${next === "Declarations" ? "?saved=1" : ""}`);
 }
 
 export default function QuoteDeclarations({ loaderData, actionData }: Route.ComponentProps) {

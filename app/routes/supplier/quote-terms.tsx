@@ -30,7 +30,7 @@ export async function action({ request, context, params }: Route.ActionArgs) {
   const outcome = orNotFound(await saveSheet(person, params.quoteId, "terms", form));
   if (outcome !== "in-order") return data(outcome, { status: 400 });
   const next = form.get("intent") === "continue" ? "Declarations" : "Terms";
-  return redirect(`${quoteSheetAddress(next, params.quoteId)}${next === "Terms" ? "?saved" : ""}`);
+  return redirect(`${quoteSheetAddress(next, params.quoteId)}${next === "Terms" ? "?saved=1" : ""}`);
 }
 
 export default function QuoteTerms({ loaderData, actionData }: Route.ComponentProps) {

@@ -5,7 +5,7 @@ import { Cell, HeadCell, Row, RowHead, Table } from "~/components/data-table";
 import { Empty } from "~/components/empty";
 import { PostForm } from "~/components/form";
 import { Page, Section } from "~/components/page";
-import { ListViews, Pager } from "~/components/rfq-pager";
+import { ListViews, Pager } from "~/components/list-pager";
 import { TitleBlock } from "~/components/title-block";
 import { readPage } from "~/forms/rfq-list";
 import { parseSupplierStatusForm } from "~/forms/rfq-steps";
