@@ -10,7 +10,7 @@ import {
   type EntryContext,
   type HandleErrorFunction,
 } from "react-router";
-import { log } from "~/services/log.server";
+import { log, pathWithoutSecrets } from "~/services/log.server";
 import { requestFactsContext, type RequestFacts } from "~/services/request.server";
 
 export const streamTimeout = 10_000;
@@ -57,5 +57,5 @@ export default function handleRequest(
 export const handleError: HandleErrorFunction = (error, { request, context }) => {
   if (request.signal.aborted || isRouteErrorResponse(error)) return;
   const { requestId } = context.get(requestFactsContext);
-  log.error({ err: error, requestId, path: new URL(request.url).pathname }, "request failed");
+  log.error({ err: error, requestId, path: pathWithoutSecrets(new URL(request.url).pathname) }, "request failed");
 };

@@ -1,6 +1,7 @@
 // The host of the built pages: express, because react-router-serve sends assets without our headers and answers TRACE with 500.
 import { randomBytes, randomUUID } from "node:crypto";
 import { createServer, type Server } from "node:http";
+import { isIP } from "node:net";
 import path from "node:path";
 import { pathToFileURL } from "node:url";
 import { createRequestHandler } from "@react-router/express";
@@ -9,7 +10,7 @@ import express, { type Express, type NextFunction, type Request, type Response }
 import type { RouterContextProvider, ServerBuild } from "react-router";
 import { config } from "./config.server";
 import { securityHeaders } from "./security-headers.server";
-import { log } from "./services/log.server";
+import { log, pathWithoutSecrets } from "./services/log.server";
 import type { RequestFacts } from "./services/request.server";
 
 interface EntryWithContext {
@@ -53,12 +54,26 @@ function refuseMalformedAddress(request: Request, response: Response, next: Next
   }
 }
 
+const LARGEST_FORM_BYTES = 2 * 1024 * 1024;
+const TAKES_FILES = /^\/(api\/v1\/quotes\/[^/]+\/measurements|supplier\/quotes\/[^/]+)(\.data)?$/;
+
+/** Every form but that of files is read into memory as a whole, so how large it is has to be said before, and kept to. */
+function refuseLargeForm(request: Request, response: Response, next: NextFunction): void {
+  const isUpload = TAKES_FILES.test(request.path) && request.is("multipart/form-data") !== false;
+  if (isUpload || (Number(request.headers["content-length"] ?? 0) <= LARGEST_FORM_BYTES && !isChunked(request))) next();
+  else response.status(413).type("text/plain").send("That was too large\n");
+}
+
+const isChunked = (request: Request): boolean => request.headers["transfer-encoding"] !== undefined;
+
 function logRequest(request: Request, response: Response, next: NextFunction): void {
   const started = performance.now();
   response.on("finish", () => {
     const { requestId } = response.locals as { requestId: string };
     const milliseconds = Math.round(performance.now() - started);
-    log.info({ requestId, method: request.method, path: request.path, status: response.statusCode, milliseconds });
+    const { method } = request;
+    const path = pathWithoutSecrets(request.path);
+    log.info({ requestId, method, path, status: response.statusCode, milliseconds });
   });
   next();
 }
@@ -71,7 +86,8 @@ function handlerOf(build: ServerBuild) {
     mode: settings.mode,
     getLoadContext: (request, response) => {
       const { nonce, requestId } = response.locals as { nonce: string; requestId: string };
-      return entry.createLoadContext({ nonce, requestId, ip: request.ip });
+      // What a proxy forwards need not be an address, and the column holds nothing else.
+      return entry.createLoadContext({ nonce, requestId, ...(isIP(request.ip ?? "") > 0 ? { ip: request.ip } : {}) });
     },
   });
 }
@@ -94,7 +110,7 @@ async function prepareHost(app: Express, host: Server): Promise<void> {
     const handler = handlerOf(build);
     load = () => Promise.resolve(handler);
   }
-  app.use(logRequest);
+  app.use(logRequest, refuseLargeForm);
   app.all("*", (request, response, next) => {
     load()
       .then((handle) => handle(request, response, next))

@@ -31,8 +31,8 @@ interface ComparisonTableProps {
 }
 
 /** Percent of full credit, at which the strips end; what lies beyond is a chevron. */
-export const STRIP_SCALE = [-100, 300] as const;
-const STRIP_WIDTH = 220;
+const STRIP_SCALE = [-120, 320] as const;
+const STRIP_WIDTH = 260;
 const COLUMNS = 7;
 
 export function ComparisonTable({ groups, quantity, currency, sortBy }: ComparisonTableProps) {

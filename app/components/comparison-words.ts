@@ -2,7 +2,7 @@
 import type { ComparedCost } from "~/commerce/index";
 import type { Requirement } from "~/rf/index";
 import { marginWithInterval } from "./compliance-words";
-import { formatFrequency, formatMoney, formatNumber } from "./format";
+import { formatDate, formatFrequency, formatMoney, formatNumber } from "./format";
 import { requirementUnit } from "./requirement-words";
 import type { ShownVerdict } from "./verdict-mark";
 
@@ -74,6 +74,9 @@ export const SILENT_WORDS: Record<SilentSupplierView["state"], string> = {
   declined: "declined",
   withdrawn: "quote withdrawn",
 };
+
+/** "31 Dec 2026": a date as it is stored, in no zone. */
+export const dateWords = (date: string): string => formatDate(`${date}T00:00:00Z`, "UTC");
 
 /** "2 units, 3 temperatures" */
 export const dataWords = ({ units, temperatures }: Pick<ComparedQuoteView, "units" | "temperatures">): string =>

@@ -42,6 +42,11 @@ export function ComplianceCell({ line, cell, lowestTestFrequency, className = ""
         </dl>
         <p className="mt-3 text-13">{VERDICT_SENTENCES[result.verdict]}</p>
         {result.reason === undefined ? null : <p className="mt-1.5 text-13">{result.reason}</p>}
+        {line.verdict !== result.verdict && line.verdict === "not-covered" ? (
+          <p className="mt-1.5 text-13">
+            The line as a whole is not covered{line.reason === null ? "." : `: ${line.reason}`}
+          </p>
+        ) : null}
         {caveats(cell).map((sentence) => (
           <p key={sentence} className="mt-1.5 text-12 text-quiet">
             {sentence}

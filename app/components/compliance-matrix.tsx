@@ -29,7 +29,8 @@ export function ComplianceMatrix(props: MatrixProps) {
     <Table label="Compliance matrix" rows="two-line" scroll="inside">
       <thead>
         <tr>
-          <td colSpan={3} className="h-6 border-b-0 print:hidden" />
+          <td colSpan={2} className="h-6 border-b-0" />
+          <td className="h-6 border-b-0 max-tablet:hidden" />
           {units.map(({ unit, temperatures }) => (
             <HeadCell
               key={unit}
@@ -46,7 +47,7 @@ export function ComplianceMatrix(props: MatrixProps) {
         <tr>
           <HeadCell className="top-6 w-11">Line</HeadCell>
           <HeadCell className="top-6">Requirement</HeadCell>
-          <HeadCell className="top-6">Limit</HeadCell>
+          <HeadCell className="top-6 max-tablet:hidden">Limit</HeadCell>
           {units.flatMap(({ unit, temperatures }) =>
             temperatures.map(({ celsius, predicted }, place) => (
               <HeadCell key={`${unit} ${celsius}`} figure parted={place === 0} className="top-6 min-w-17 pr-2">
@@ -75,10 +76,11 @@ function LineRow({ line, units, rule, lowestTestFrequency, selected }: MatrixPro
   return (
     <Row>
       <RowHead>{line.lineNumber}</RowHead>
-      <Cell className="min-w-44 py-1">
+      <Cell className="max-w-64 min-w-44 py-1 max-tablet:min-w-38">
         {words.band === "" ? words.requirement : <TwoLines upper={words.requirement} lower={words.band} />}
+        <span className="block text-12 tablet:hidden">{words.limit}</span>
       </Cell>
-      <Cell className="whitespace-nowrap">{words.limit}</Cell>
+      <Cell className="whitespace-nowrap max-tablet:hidden">{words.limit}</Cell>
       {isMeasured(line.definition) ? (
         units.flatMap(({ unit, temperatures }) =>
           temperatures.map(({ celsius }, place) => (

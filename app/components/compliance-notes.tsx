@@ -94,7 +94,9 @@ const counted = (count: number): string => `${count} ${count === 1 ? "unit" : "u
 function missingEvidence(evidence: EvidenceView | null, basis: NotesProps["basis"]): string[] {
   if (!evidence) return [];
   const { units, unitsAsked, unitsOverRange, unitsOverRangeAsked, assumed } = evidence;
-  const fields = SETUP_FIELDS.filter(({ field }) => assumed.includes(field)).map(({ label }) => lowerFirst(label));
+  const fields = SETUP_FIELDS.filter(({ field }) => assumed.includes(field)).map(({ label }) =>
+    lowerFirst(label).replace(/, ±$/, ""),
+  );
   return [
     ...(basis === "measured"
       ? []
@@ -114,7 +116,12 @@ function missingEvidence(evidence: EvidenceView | null, basis: NotesProps["basis
 const lowerFirst = (text: string): string => text.charAt(0).toLowerCase() + text.slice(1);
 
 function notCovered(lines: readonly ComplianceLine[]): string[] {
-  return lines
-    .filter(({ definition, verdict }) => isMeasured(definition) && verdict === "not-covered")
-    .map(({ lineNumber, reason }) => `Line ${lineNumber} is not covered${reason === null ? "." : `: ${reason}`}`);
+  const byReason = new Map<string, string[]>();
+  for (const { definition, verdict, reason, lineNumber } of lines)
+    if (isMeasured(definition) && verdict === "not-covered")
+      byReason.set(reason ?? "", [...(byReason.get(reason ?? "") ?? []), lineNumber]);
+  return [...byReason].map(([reason, numbers]) => {
+    const subject = numbers.length === 1 ? `Line ${numbers.join("")} is` : `Lines ${numbers.join(", ")} are`;
+    return `${subject} not covered${reason === "" ? "." : `: ${reason}`}`;
+  });
 }

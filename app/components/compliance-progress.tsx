@@ -28,10 +28,10 @@ export function ComplianceProgress({ quoteId }: { quoteId: string }) {
   return (
     <Section title="Scoring" note="Each line is scored on every file. The results appear here when it is done.">
       <progress
-        className="block h-2 w-full max-w-120 accent-signal"
+        className="block h-2 w-full max-w-120 appearance-none border-0 bg-rule [&::-moz-progress-bar]:bg-signal [&::-webkit-progress-bar]:bg-rule [&::-webkit-progress-value]:bg-signal"
         aria-label="Files scored"
         max={data && data.total > 0 ? data.total : 1}
-        {...(data && data.total > 0 ? { value: data.done } : {})}
+        value={data?.done ?? 0}
       />
       <p className="mt-2 text-13 tabular-nums" role="status">
         {progressWords(data)}

@@ -4,7 +4,7 @@ import { href, useFetcher } from "react-router";
 import { TraceFigure } from "~/charts/trace-figure";
 import type { Panel, TraceSeries, WorstPoint } from "~/charts/types";
 import { wallsFromRequirements } from "~/charts/walls";
-import { isMeasured, verdictRank, type Band, type Requirement, type Verdict } from "~/rf/index";
+import { isMeasured, verdictRank, type Band, type Requirement } from "~/rf/index";
 import { cellAt, celsiusWords, shownResult, type ComplianceLine } from "./compliance-words";
 import { describeDefinition, numberedRequirements } from "./requirement-words";
 
@@ -22,7 +22,10 @@ const ZOOM_RESTS = 250;
 
 export function ComplianceTraces({ quoteId, supplierName, lines, place, selectedKey }: TracesProps) {
   const [window, setWindow] = useState<Band>();
-  const traces = useTraces(quoteId, place, window);
+  const isReverse = lines.some(
+    ({ lineKey, definition }) => lineKey === selectedKey && definition.kind === "reverse-isolation",
+  );
+  const traces = useTraces(tracesAddress(quoteId, place, isReverse, window));
   const walls = useMemo(() => wallsFromRequirements(numberedRequirements(lines)), [lines]);
   const worstPoints = useMemo(() => worstPointsOf(lines), [lines]);
   const caption = place ? `Unit ${place.unit}, ${celsiusWords(place.celsius)}, over all units` : undefined;
@@ -40,9 +43,8 @@ export function ComplianceTraces({ quoteId, supplierName, lines, place, selected
 }
 
 /** Fetched again where another unit is to stand out, and finer where the figure is zoomed; the last ones stay meanwhile. */
-function useTraces(quoteId: string, place: TracesProps["place"], window: Band | undefined): TraceSeries[] | undefined {
+function useTraces(address: string): TraceSeries[] | undefined {
   const { load, data } = useFetcher<{ traces: TraceSeries[] }>();
-  const address = tracesAddress(quoteId, place, window);
   const loaded = useRef<string>(undefined);
   useEffect(() => {
     if (loaded.current === address) return;
@@ -56,9 +58,15 @@ function useTraces(quoteId: string, place: TracesProps["place"], window: Band | 
   return data?.traces;
 }
 
-function tracesAddress(quoteId: string, place: TracesProps["place"], window: Band | undefined): string {
+function tracesAddress(
+  quoteId: string,
+  place: TracesProps["place"],
+  isReverse: boolean,
+  window: Band | undefined,
+): string {
   const search = new URLSearchParams({
     ...(place ? { unit: place.unit, temperature: String(place.celsius) } : {}),
+    ...(isReverse ? { reverse: "1" } : {}),
     ...(window ? { from: String(Math.round(window[0])), to: String(Math.round(window[1])) } : {}),
   });
   return `${href("/api/v1/quotes/:quoteId/traces", { quoteId })}?${search.toString()}`;
@@ -71,7 +79,7 @@ const PANELS: Partial<Record<Requirement["kind"], Panel>> = {
   "return-loss": "match",
 };
 
-/** The worst point of each measured line that does not simply pass, worst first; where all pass, of the closest line. */
+/** The reported point of each measured line that does not simply pass there, worst first; where all pass, of the closest line. */
 function worstPointsOf(lines: readonly ComplianceLine[]): WorstPoint[] {
   const points = lines.flatMap((line) => {
     const point = worstPointOf(line);
@@ -91,7 +99,7 @@ function worstPointOf(line: ComplianceLine): WorstPoint | null {
   const panel = PANELS[definition.kind];
   return {
     lineNumber,
-    verdict: line.verdict as Verdict,
+    verdict: cell.result.verdict,
     frequency: cell.result.frequency,
     value: shown.value,
     margin: shown.margin,

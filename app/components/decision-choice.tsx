@@ -2,12 +2,19 @@
 import { href, Link } from "react-router";
 import type { FormState } from "~/forms/form";
 import { Button } from "./button";
-import { costWords, weeks, worstMarginWords, worstPlaceWords, type ComparedQuoteView } from "./comparison-words";
+import {
+  costWords,
+  dateWords,
+  weeks,
+  worstMarginWords,
+  worstPlaceWords,
+  type ComparedQuoteView,
+} from "./comparison-words";
 import { Cell, HeadCell, Row, RowHead, Table, TwoLines } from "./data-table";
 import { FieldError } from "./field-error";
 import { PostForm, TextAreaField, useField } from "./form";
 import { formatMoney } from "./format";
-import { Verdict } from "./verdict-mark";
+import { Verdict, verdictWord } from "./verdict-mark";
 
 export interface CandidateView extends ComparedQuoteView {
   /** Why it cannot be recommended; null where it can. */
@@ -60,11 +67,17 @@ function Choices({
         <thead>
           <tr>
             <HeadCell>Quote</HeadCell>
-            <HeadCell>Verdict</HeadCell>
-            <HeadCell figure>Worst margin</HeadCell>
-            <HeadCell figure>Cost, {currency}</HeadCell>
-            <HeadCell figure>Lead time, wk</HeadCell>
-            <HeadCell className="pl-6">Valid until</HeadCell>
+            <HeadCell className="max-tablet:hidden">Verdict</HeadCell>
+            <HeadCell figure className="max-tablet:hidden">
+              Worst margin
+            </HeadCell>
+            <HeadCell figure className="max-tablet:hidden">
+              Cost, {currency}
+            </HeadCell>
+            <HeadCell figure className="max-tablet:hidden">
+              Lead time, wk
+            </HeadCell>
+            <HeadCell className="pl-6 max-tablet:hidden">Valid until</HeadCell>
           </tr>
         </thead>
         <tbody>
@@ -73,23 +86,27 @@ function Choices({
               <RowHead>
                 <Choice quote={quote} id={place === 0 ? field.id : `${field.id}-${place}`} chosen={field.value} />
               </RowHead>
-              <Cell>{quote.verdict ? <Verdict verdict={quote.verdict} /> : "being scored"}</Cell>
-              <Cell figure>
+              <Cell className="max-tablet:hidden">
+                {quote.verdict ? <Verdict verdict={quote.verdict} /> : "being scored"}
+              </Cell>
+              <Cell figure className="max-tablet:hidden">
                 {quote.worst ? (
                   <TwoLines upper={worstMarginWords(quote.worst)} lower={worstPlaceWords(quote.worst)} />
                 ) : (
                   "–"
                 )}
               </Cell>
-              <Cell figure>
+              <Cell figure className="max-tablet:hidden">
                 {quote.cost ? (
                   <TwoLines upper={formatMoney(quote.cost.total)} lower={costWords(quote.cost, quantity)} />
                 ) : (
                   "no price"
                 )}
               </Cell>
-              <Cell figure>{weeks(quote.leadVolumeDays)}</Cell>
-              <Cell className="pl-6 whitespace-nowrap">{quote.validUntil}</Cell>
+              <Cell figure className="max-tablet:hidden">
+                {weeks(quote.leadVolumeDays)}
+              </Cell>
+              <Cell className="pl-6 whitespace-nowrap max-tablet:hidden">{dateWords(quote.validUntil)}</Cell>
             </Row>
           ))}
         </tbody>
@@ -121,6 +138,7 @@ function Choice({ quote, id, chosen }: { quote: CandidateView; id: string; chose
             results<span className="sr-only"> of {quote.supplierName}</span>
           </Link>
         </span>
+        <span className="block text-12 font-normal whitespace-normal tablet:hidden">{phoneWords(quote)}</span>
         {quote.refusal === null ? null : (
           <span id={reasonId} className="block max-w-90 text-12 font-normal whitespace-normal">
             {quote.refusal}
@@ -130,3 +148,12 @@ function Choice({ quote, id, chosen }: { quote: CandidateView; id: string; chose
     </span>
   );
 }
+
+/** What the columns say, where a phone leaves them out. */
+const phoneWords = ({ verdict, worst, cost, currency, leadVolumeDays }: CandidateView): string =>
+  [
+    verdict ? verdictWord(verdict) : "being scored",
+    ...(worst ? [`${worstMarginWords(worst)} on ${worstPlaceWords(worst)}`] : []),
+    cost ? formatMoney(cost.total, currency) : "no price",
+    `${weeks(leadVolumeDays)} wk`,
+  ].join(", ");

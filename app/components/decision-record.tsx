@@ -2,7 +2,7 @@
 import type { ReactNode } from "react";
 import { href, Link } from "react-router";
 import type { ComparedCost } from "~/commerce/index";
-import { costWords, weeks } from "./comparison-words";
+import { costWords, dateWords, weeks } from "./comparison-words";
 import { Cell, HeadCell, Row, RowHead, Table, TwoLines } from "./data-table";
 import { Instant } from "./figure";
 import { formatMoney, formatNumber } from "./format";
@@ -142,7 +142,7 @@ export function DecisionSnapshotTable({ record }: { record: DecisionRecordView }
               <Cell figure>{weeks(quote.leadVolumeDays)}</Cell>
               <Cell figure>{quote.exceptions === 0 ? "none" : quote.exceptions}</Cell>
               <Cell figure>{quote.files.length}</Cell>
-              <Cell className="pl-6 whitespace-nowrap">{quote.validUntil}</Cell>
+              <Cell className="pl-6 whitespace-nowrap">{dateWords(quote.validUntil)}</Cell>
             </Row>
           ))}
         </tbody>

@@ -107,9 +107,10 @@ export class UploadQueue {
       onBroken: () => refuse(BROKEN, true),
       onAnswer: (status, body) => {
         const error = status === 201 ? null : refusalIn(body);
-        if (error !== null) return refuse(error ?? UNREADABLE, error === undefined);
-        this.#remove(id);
-        this.#onStored();
+        if (error === null) {
+          this.#remove(id);
+          this.#onStored();
+        } else refuse(error ?? UNREADABLE, error === undefined);
       },
     });
   }

@@ -207,5 +207,6 @@ async function markFailed(mail: HeldMail, { reason, kind }: Failure): Promise<vo
     attempts,
     reason,
     delaySeconds: Math.min(longest, FIRST_DELAY_SECONDS * 2 ** attempts),
+    forgetLink: over && SINGLE_USE_LINKS.includes(mail.row.template),
   });
 }

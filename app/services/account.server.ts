@@ -4,13 +4,19 @@ import { Session } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { recordEvent } from "./audit.server";
 import type { Person } from "./person.server";
+import { IDLE_MS } from "./sessions.server";
 import { inTransaction } from "./transaction.server";
 
 /** Open sessions of the person, newest first. */
 export async function readOpenSessions(person: Person) {
   const now = await databaseNow();
   const rows = await Session.findAll({
-    where: { userId: person.userId, revokedAt: null, expiresAt: { [Op.gt]: now } },
+    where: {
+      userId: person.userId,
+      revokedAt: null,
+      expiresAt: { [Op.gt]: now },
+      lastSeenAt: { [Op.gte]: new Date(now.getTime() - IDLE_MS) },
+    },
     order: [["lastSeenAt", "DESC"]],
   });
   return rows.map((row) => ({

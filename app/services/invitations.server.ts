@@ -13,7 +13,7 @@ import { newPublicId } from "./identifiers.server";
 import { queueMail } from "./outbox.server";
 import type { Person } from "./person.server";
 import { findRfq, lockRfq } from "./rfq-head.server";
-import { keepContact, supplierByName, supplierNames } from "./suppliers.server";
+import { blockedRefusal, keepContact, supplierByName, supplierNames } from "./suppliers.server";
 import { issueToken, revokeTokens } from "./tokens.server";
 import { inTransaction } from "./transaction.server";
 
@@ -264,6 +264,8 @@ export async function resendInvitation(
     if (rfqState(rfq, now) !== "open") return invalid({ form: ["Invitations are sent while the RFQ is open."] });
     if (!RESENT_FROM.includes(invitation.state))
       return invalid({ form: ["This invitation has been accepted: the supplier signs in."] });
+    const blocked = await blockedRefusal(person, [invitation], transaction);
+    if (blocked) return invalid({ form: [blocked] });
     await sendInvitation(person, rfq, invitation, now, transaction);
     return ok(null);
   });

@@ -2,8 +2,14 @@
 import { pino } from "pino";
 import { config } from "~/config.server";
 
-/** Sequelize errors carry the statement's parameters, a password hash among them: only name, number and message go out. */
-function errorFacts(error: unknown): Record<string, unknown> {
+/** An address as the log may hold it: a link's token, 43 characters, is left out. */
+export const pathWithoutSecrets = (path: string): string => path.replace(/[\w-]{40,}/g, "…");
+
+/**
+ * Sequelize errors carry the statement's parameters, a password hash among them, and the connector's messages the statement
+ * with the values its conditions name: only name, number and what went wrong go out.
+ */
+export function errorFacts(error: unknown): Record<string, unknown> {
   if (!(error instanceof Error)) return { message: String(error) };
   const number =
     "original" in error && error.original instanceof Object && "errno" in error.original
@@ -11,9 +17,12 @@ function errorFacts(error: unknown): Record<string, unknown> {
       : undefined;
   return {
     name: error.name,
-    message: error.message.slice(0, 500),
+    message: error.message.split("\nsql:", 1)[0]?.slice(0, 500),
     errno: number,
-    stack: error.stack?.split("\n").slice(1, 9),
+    stack: error.stack
+      ?.split("\n")
+      .filter((line) => /^\s+at /.test(line))
+      .slice(0, 8),
   };
 }
 

@@ -1,5 +1,5 @@
 // An uploaded file becomes a measured sweep of a quote: read, checked, scored and stored at once, or refused whole.
-import { Op, type Transaction } from "sequelize";
+import type { Transaction } from "sequelize";
 import { MeasurementRow, StoredFile, type Quote } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
@@ -10,7 +10,7 @@ import { rfqState } from "~/workflow/rfq";
 import { packChunks, storeChunks } from "./file-bytes.server";
 import { newPublicId, sha256 } from "./identifiers.server";
 import type { Person } from "./person.server";
-import { changeQuote, findQuote, recordQuoteEvent, type FoundQuote } from "./quotes.server";
+import { changeFoundQuote, findQuote, recordQuoteEvent, type FoundQuote } from "./quotes.server";
 import {
   readScoringFrame,
   scoreSweep,
@@ -38,10 +38,10 @@ export async function addMeasurement(
 ): Promise<Result<{ publicId: string }> | null> {
   const found = await findQuote(person, quotePublicId);
   if (!found) return null;
-  const refusal = quoteRefusal("edit", found.quote.state, rfqState(found.rfq, await databaseNow()));
-  if (refusal) return invalid({ form: [refusal] });
   if (file.bytes.length > MOST_FILE_BYTES) return invalid({ file: [TOO_LARGE] });
-  const frame = await readScoringFrame(person, found.rfq.revisionId);
+  const [now, frame] = await Promise.all([databaseNow(), readScoringFrame(person, found.rfq.revisionId)]);
+  const refusal = quoteRefusal("edit", found.quote.state, rfqState(found.rfq, now));
+  if (refusal) return invalid({ form: [refusal] });
   const packing = packChunks(file.bytes); // deflated in the thread pool while this thread reads the numbers
   packing.catch(() => undefined);
   const network = readNetwork(file);
@@ -93,14 +93,15 @@ const notesOf = (network: TwoPort, { requirements, impedance }: ScoringFrame, se
 
 function storeSweep(
   person: Person,
-  { quote }: FoundQuote,
+  found: FoundQuote,
   sweep: PreparedSweep,
 ): Promise<Result<{ publicId: string }> | null> {
-  return changeQuote(person, quote.publicId, async (locked, transaction) => {
+  return changeFoundQuote(found, async (locked, transaction) => {
     const { now } = locked;
-    const kept = await keptMeasurements(locked.quote.id, transaction);
-    if (kept.length >= MOST_FILES) return invalid({ file: [`A quote holds at most ${MOST_FILES} files.`] });
-    const same = await sameBytes(kept, sweep.sha256, transaction);
+    const { id: quoteId } = locked.quote;
+    const kept = await MeasurementRow.count({ where: { quoteId, removedAt: null }, actor: SYSTEM, transaction });
+    if (kept >= MOST_FILES) return invalid({ file: [`A quote holds at most ${MOST_FILES} files.`] });
+    const same = await sameBytes(quoteId, sweep.sha256, transaction);
     if (same) return invalid({ file: [`These bytes are in this quote already, as ${same}.`] });
     const measurement = await createRows(locked.quote, sweep, now, transaction);
     await storeSweepScore(measurement, sweep.frame, sweep.setup, sweep.score, now, transaction);
@@ -111,17 +112,14 @@ function storeSweep(
   });
 }
 
-const keptMeasurements = (quoteId: number, transaction: Transaction) =>
-  MeasurementRow.findAll({ where: { quoteId, removedAt: null }, attributes: ["fileId"], actor: SYSTEM, transaction });
-
-async function sameBytes(
-  kept: readonly MeasurementRow[],
-  hash: Buffer,
-  transaction: Transaction,
-): Promise<string | undefined> {
-  const where = { id: { [Op.in]: kept.map(({ fileId }) => fileId) }, sha256: hash };
-  const file = await StoredFile.findOne({ where, attributes: ["name"], actor: SYSTEM, transaction });
-  return file?.name;
+/** The name of a file of the quote with these bytes; one that was taken out again does not count. */
+async function sameBytes(quoteId: number, hash: Buffer, transaction: Transaction): Promise<string | undefined> {
+  const system = { actor: SYSTEM, transaction } as const;
+  const files = await StoredFile.findAll({ where: { quoteId, sha256: hash }, attributes: ["id", "name"], ...system });
+  if (files.length === 0) return undefined;
+  const where = { fileId: files.map(({ id }) => id), removedAt: null };
+  const kept = await MeasurementRow.findOne({ where, attributes: ["fileId"], ...system });
+  return files.find(({ id }) => id === kept?.fileId)?.name;
 }
 
 async function createRows(quote: Quote, sweep: PreparedSweep, now: Date, transaction: Transaction) {

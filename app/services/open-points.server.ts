@@ -97,12 +97,13 @@ export async function readOpenPoints(person: Person): Promise<OpenPoints> {
   const decisions = await readDecisions(person);
   const live = new Set(decisions.live.map(({ rfqId }) => rfqId));
   const closed = inState("closed").filter(({ id }) => !live.has(id));
-  const returned = await stillClosed(person, decisions.returned, live, now);
+  const unanswered = decisions.returned.filter(({ rfqId }) => !live.has(rfqId));
+  const returned = await ofClosed(person, unanswered, now);
   const cameBack = new Set(returned.map(({ rfqId }) => rfqId));
   const running = [...inState("open"), ...closed];
   return {
     now: now.toISOString(),
-    toApprove: await decisionPoints(person, decisions.toApprove, "recommended"),
+    toApprove: await decisionPoints(person, await ofClosed(person, decisions.toApprove, now), "recommended"),
     returned: await decisionPoints(person, returned, "returned"),
     toRecommend: await rfqPoints(
       person,
@@ -115,10 +116,10 @@ export async function readOpenPoints(person: Person): Promise<OpenPoints> {
   };
 }
 
-/** Live recommendations, those the person may approve, and the person's own whose last word is a return. */
+/** Recommendations that wait, those the person may approve, and the person's own whose last word is a return. */
 async function readDecisions(person: Person) {
   const live = await Decision.findAll({
-    where: { state: { [Op.ne]: "returned" } },
+    where: { state: "recommended" },
     order: [["recommendedAt", "ASC"]],
     attributes: { exclude: ["snapshot"] },
     actor: person,
@@ -139,12 +140,11 @@ async function readDecisions(person: Person) {
   };
 }
 
-/** A return that was answered by another recommendation, or by cancelling the RFQ, is done with. */
-async function stillClosed(person: Person, returned: readonly Decision[], live: ReadonlySet<number>, now: Date) {
-  const open = returned.filter(({ rfqId }) => !live.has(rfqId));
-  const rfqs = await Rfq.findAll({ where: { id: open.map(({ rfqId }) => rfqId) }, actor: person });
+/** Those whose RFQ is neither decided nor cancelled: the others are done with. */
+async function ofClosed(person: Person, decisions: readonly Decision[], now: Date): Promise<Decision[]> {
+  const rfqs = await Rfq.findAll({ where: { id: decisions.map(({ rfqId }) => rfqId) }, actor: person });
   const closed = new Set(rfqs.flatMap((rfq) => (rfqState(rfq, now) === "closed" ? rfq.id : [])));
-  return open.filter(({ rfqId }) => closed.has(rfqId));
+  return decisions.filter(({ rfqId }) => closed.has(rfqId));
 }
 
 async function decisionPoints(

@@ -6,6 +6,8 @@ import { SYSTEM } from "~/db/scoping";
 import { parseResetForm } from "~/forms/account";
 import { invalid, ok, type Result } from "~/forms/form";
 import { recordEvent } from "./audit.server";
+import { newPublicId } from "./identifiers.server";
+import { log } from "./log.server";
 import { queueMail } from "./outbox.server";
 import { hashPassword } from "./passwords.server";
 import { findToken, issueToken, revokeTokens, useToken } from "./tokens.server";
@@ -13,12 +15,19 @@ import { inTransaction } from "./transaction.server";
 
 const VALID_MS = 60 * 60 * 1000;
 
-/** Mails a link if the address has an account. Tells nothing either way. */
+/** Begins it and comes back at once: neither the time it takes nor a fault of it tells whether the address has an account. */
+export function beginPasswordReset(email: string): void {
+  requestPasswordReset(email).catch((error: unknown) => log.error({ err: error }, "password reset failed"));
+}
+
+/** Mails a link if the address has an account. */
 export async function requestPasswordReset(email: string): Promise<void> {
   await inTransaction(async (transaction) => {
-    const now = await databaseNow(transaction);
-    const user = await User.findOne({ where: { email }, actor: SYSTEM, transaction });
+    // Locked: of links asked for at once only the last one stays good.
+    const lock = transaction.LOCK.UPDATE;
+    const user = await User.findOne({ where: { email }, actor: SYSTEM, transaction, lock });
     if (!user || user.disabledAt) return;
+    const now = await databaseNow(transaction);
     const subject = { purpose: "password-reset", userId: user.id } as const;
     const token = await issueToken(subject, now, new Date(now.getTime() + VALID_MS), transaction);
     const link = `${config().appUrl}/password-reset/${token}`;
@@ -28,7 +37,7 @@ export async function requestPasswordReset(email: string): Promise<void> {
         props: { requestedAt: now.toISOString(), timeZone: user.timeZone, link },
       },
       user,
-      `password-reset:${user.id}:${now.getTime()}`,
+      `password-reset:${user.id}:${newPublicId()}`,
       now,
       transaction,
     );

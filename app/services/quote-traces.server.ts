@@ -12,6 +12,8 @@ export interface TraceQuery {
   /** The sweeps of this unit and temperature (°C) stand out; absent: those of the line that decides. */
   readonly unit?: string | undefined;
   readonly temperature?: number | undefined;
+  /** S12 stands out too, where reverse isolation is looked at. @default false */
+  readonly reverse?: boolean | undefined;
   /** Hz; absent: the whole sweeps. */
   readonly window?: Band | undefined;
 }
@@ -50,12 +52,11 @@ export async function readQuoteTraces(
     person,
     sweeps.map(({ id }) => id),
   );
-  const hasReverse = frame.requirements.some(({ kind }) => kind === "reverse-isolation");
   const behind = Math.min(300, Math.max(60, Math.floor(COLUMNS_BEHIND / Math.max(1, networks.length))));
   return networks.flatMap((measured) => {
     const { serial, temperature } = measured.measurement;
     const standsOut = reported !== null && serial === reported.unit && Number(temperature) === reported.celsius;
-    const parameters: Parameter[] = ["s21", ...(standsOut && hasReverse ? ["s12" as const] : []), "s11", "s22"];
+    const parameters: Parameter[] = ["s21", ...(standsOut && query.reverse ? ["s12" as const] : []), "s11", "s22"];
     return tracesOf(measured, frame.impedance, parameters, {
       emphasis: standsOut ? "worst" : "other",
       columns: standsOut ? COLUMNS : behind,

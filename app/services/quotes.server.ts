@@ -47,9 +47,10 @@ export interface FoundQuote {
   readonly rfq: Rfq;
 }
 
-/** The quote and its RFQ, or null where the person does not see both. */
+/** The person's own quote and its RFQ, or null: a buyer who sees it once submitted does not work on it. */
 export async function findQuote(person: Person, publicId: string): Promise<FoundQuote | null> {
-  const quote = await Quote.findOne({ where: { publicId }, actor: person });
+  const where = { publicId, supplierOrganisationId: person.organisationId };
+  const quote = await Quote.findOne({ where, actor: person });
   const rfq = quote && (await Rfq.findByPk(quote.rfqId, { actor: person }));
   return rfq ? { quote, rfq } : null;
 }
@@ -97,7 +98,8 @@ export async function startQuote(
   person: Person,
   invitationPublicId: string,
 ): Promise<Result<{ quote: string }> | null> {
-  const invitation = await Invitation.findOne({ where: { publicId: invitationPublicId }, actor: person });
+  const where = { publicId: invitationPublicId, supplierOrganisationId: person.organisationId };
+  const invitation = await Invitation.findOne({ where, actor: person });
   if (invitation?.state !== "accepted") return null;
   const started = () => Quote.findOne({ where: { invitationId: invitation.id }, actor: person });
   const earlier = await started();
@@ -183,7 +185,14 @@ export async function changeQuote<T>(
   work: (locked: LockedQuote, transaction: Transaction) => Promise<Result<T>>,
 ): Promise<Result<T> | null> {
   const found = await findQuote(person, quotePublicId);
-  if (!found) return null;
+  return found && changeFoundQuote(found, work);
+}
+
+/** The same for a quote the person was seen to have. */
+export function changeFoundQuote<T>(
+  found: FoundQuote,
+  work: (locked: LockedQuote, transaction: Transaction) => Promise<Result<T>>,
+): Promise<Result<T> | null> {
   return inTransaction(async (transaction) => {
     const locked = await lockQuote(found, "SHARE", transaction);
     if (!locked) return null;

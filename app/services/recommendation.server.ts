@@ -10,8 +10,7 @@ export function recommendationRefusal(
   zone: string,
 ): string | null {
   if (quote.verdict === null) return "This quote is still being scored. Wait until its results are there.";
-  if (!quote.conforming)
-    return "This quote does not conform. It can be recommended only once its exceptions are accepted.";
+  if (!quote.conforming) return "This quote does not conform. Only a conforming quote can be recommended.";
   if (!quote.cost) return `This quote has no price for ${quantity} pieces.`;
   return validityRefusal(quote.validUntil, now, zone);
 }

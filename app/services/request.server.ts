@@ -69,9 +69,13 @@ export function orNotFound<T>(value: T | null | undefined): T {
   return value;
 }
 
+const LOCAL = /^\/(?!\/)[\x21-\x5b\x5d-\x7e]{0,1999}$/;
+
 /** A target inside this site, else the fallback: never an address that leads elsewhere. */
 export function safeReturn(target: FormDataEntryValue | string | null | undefined, fallback = "/"): string {
-  if (typeof target !== "string" || !/^\/(?![/\\])[\x21-\x7e]*$/.test(target) || target.includes("\\")) return fallback;
+  if (typeof target !== "string" || !LOCAL.test(target)) return fallback;
   const url = new URL(target, "http://local.invalid");
-  return url.origin === "http://local.invalid" ? url.pathname + url.search + url.hash : fallback;
+  const local = url.pathname + url.search + url.hash;
+  // Once more: without its dots "/..//elsewhere.example" is "//elsewhere.example", which is another site.
+  return url.origin === "http://local.invalid" && LOCAL.test(local) ? local : fallback;
 }

@@ -26,7 +26,7 @@ import { newPublicId } from "./identifiers.server";
 import { sendInvitation } from "./invitations.server";
 import type { Person } from "./person.server";
 import { findRfq, lockRfq } from "./rfq-head.server";
-import { supplierNames } from "./suppliers.server";
+import { blockedRefusal, supplierNames } from "./suppliers.server";
 import { inTransaction } from "./transaction.server";
 
 const DAY_MS = 24 * 60 * 60 * 1000;
@@ -275,6 +275,8 @@ export async function openRfq(
         transaction,
       });
       if (invitations.length === 0) return invalid({ form: ["Invite at least one supplier first."] });
+      const blocked = await blockedRefusal(person, invitations, transaction);
+      if (blocked) return invalid({ form: [`${blocked} Remove its invitation first.`] });
       await rfq.update({ status: "open", openedAt: now, lockVersion: rfq.lockVersion + 1 }, { transaction });
       const detail = { invitations: invitations.length, dueAt: rfq.dueAt.toISOString() };
       await recordEvent(person, now, { subject: "rfq", action: "opened", ...about(rfq), detail }, transaction);

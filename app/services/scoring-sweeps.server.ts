@@ -38,13 +38,11 @@ export interface ScoringFrame {
 }
 
 /** Throws where the actor does not see the revision. */
-export async function readScoringFrame(
-  actor: QueryActor,
-  revisionId: number,
-  transaction?: Transaction,
-): Promise<ScoringFrame> {
-  const revision = await SpecificationRevision.findByPk(revisionId, { actor, transaction, rejectOnEmpty: true });
-  const lines = await readLines(actor, revisionId, transaction);
+export async function readScoringFrame(actor: QueryActor, revisionId: number): Promise<ScoringFrame> {
+  const [revision, lines] = await Promise.all([
+    SpecificationRevision.findByPk(revisionId, { actor, rejectOnEmpty: true }),
+    readLines(actor, revisionId),
+  ]);
   const { temperatureFrom: from, temperatureTo: to, lowestTestFrequency } = revision;
   return {
     revisionId,

@@ -7,7 +7,8 @@ import { SYSTEM } from "~/db/scoping";
 import { newSecret, sha256 } from "./identifiers.server";
 import type { Person } from "./person.server";
 
-const IDLE_MS = 12 * 60 * 60 * 1000;
+/** Without use for longer than this a session has ended. */
+export const IDLE_MS = 12 * 60 * 60 * 1000;
 const ABSOLUTE_MS = 7 * 24 * 60 * 60 * 1000;
 /** last_seen_at is written at most this often. */
 const TOUCH_MS = 60 * 1000;

@@ -33,7 +33,8 @@ export interface SupplierInvitation {
 
 /** Null where the person does not see it, or where the invitation was taken back. */
 export async function readSupplierInvitation(person: Person, publicId: string): Promise<SupplierInvitation | null> {
-  const invitation = await Invitation.findOne({ where: { publicId }, actor: person });
+  const where = { publicId, supplierOrganisationId: person.organisationId };
+  const invitation = await Invitation.findOne({ where, actor: person });
   const rfq = invitation && (await Rfq.findByPk(invitation.rfqId, { actor: person }));
   const specification = rfq && (await readSpecificationView(person, rfq.revisionId));
   if (!specification) return null;

@@ -50,6 +50,19 @@ export async function supplierNames(
   return new Map(suppliers.map(({ id, name }) => [id, name]));
 }
 
+/** Why the first blocked one of the entries that rows carry is not mailed, or null where none is; the entries are locked. */
+export async function blockedRefusal(
+  person: Person,
+  rows: readonly { readonly supplierId: number }[],
+  transaction: Transaction,
+): Promise<string | null> {
+  const where = { id: rows.map(({ supplierId }) => supplierId) };
+  const lock = transaction.LOCK.UPDATE;
+  const suppliers = await Supplier.findAll({ where, order: [["id", "ASC"]], actor: person, transaction, lock });
+  const blocked = suppliers.find(({ status }) => status === "blocked");
+  return blocked ? `${blocked.name} is blocked in your supplier directory.` : null;
+}
+
 /** Every name of the directory that may be invited, for completion while typing. */
 export async function suggestSuppliers(person: Person): Promise<{ company: string; email: string }[]> {
   const suppliers = await Supplier.findAll({

@@ -9,7 +9,7 @@ export interface SweepLabels {
 
 /** "-30C", "+25 degC", "70.5 °C"; a hyphen right after a letter or digit may be a separator, so that its sign is not known. */
 const NAMED_TEMPERATURE =
-  /(?<before>^|[^0-9.])(?<sign>[+\-−]?)(?<figure>\d{1,3}(?:\.\d)?)[ _]?(?:deg|°|º)?[ _]?c(?![a-z0-9])/iu;
+  /(?<before>^|[^0-9.+\-−]|[0-9.](?=[+\-−]))(?<sign>[+\-−]?)(?<figure>\d{1,3}(?:\.\d)?)[ _]?(?:deg|°|º)?[ _]?c(?![a-z0-9])/iu;
 const COMMENTED_TEMPERATURE =
   /\btemp(?:erature|\.)?\s*[:=]?\s*(?<sign>[+\-−]?)\s*(?<figure>\d{1,3}(?:\.\d)?)\s*(?:deg|°|º)?\s*c(?![a-z0-9])/iu;
 const COMMENTED_SERIAL =

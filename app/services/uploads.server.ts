@@ -62,9 +62,9 @@ export async function receiveFiles<T>(
 ): Promise<{ readonly ok: true; readonly value: T } | UploadRefusal> {
   if (!request.body || !isMultipart(request)) return { ok: false, status: 400, error: MALFORMED };
   const folder = path.resolve(config().uploadFolder, newSecret().slice(0, 16));
-  const source = Object.assign(Readable.fromWeb(request.body as ReadableStream), {
-    headers: Object.fromEntries(request.headers),
-  });
+  // A length is left out: it would only serve for progress, and formidable takes a body without either header for empty.
+  const headers = { "content-type": request.headers.get("Content-Type") ?? "", "transfer-encoding": "chunked" };
+  const source = Object.assign(Readable.fromWeb(request.body as ReadableStream), { headers });
   const abort = () => source.destroy(new Error("the client broke the upload off"));
   request.signal.addEventListener("abort", abort, { once: true });
   // A source that fails after its reader has let go of it must not end the process.

@@ -51,6 +51,17 @@ export class JourneyWorld {
     return context;
   }
 
+  /** A page with script switched off, signed in as the person is now. */
+  async pageWithoutScript(person: string): Promise<Page> {
+    const state = await (await this.page(person)).context().storageState();
+    const key = `${person}, without script`;
+    await this.people.get(key)?.close();
+    const options = { baseURL: this.product.appUrl, viewport: DESKTOP, javaScriptEnabled: false, storageState: state };
+    const context = await this.browser.newContext(options);
+    this.people.set(key, context);
+    return context.newPage();
+  }
+
   /** Errors of scripts and of the content security policy that any page met. */
   complaints(): readonly string[] {
     return this.heard;
@@ -75,16 +86,16 @@ export class JourneyWorld {
     return readMailbox(address ? { port: this.product.popPort, address } : { port: this.product.popPort });
   }
 
-  /** Pictures at 1440 and 390 pixels, light and dark, in the ignored output folder. */
-  async pictures(person: string, name: string): Promise<void> {
-    await mkdir(OUTPUT, { recursive: true });
+  /** Pictures at 1440 and 390 pixels, light and dark, in an ignored folder. */
+  async pictures(person: string, name: string, folder = OUTPUT): Promise<void> {
+    await mkdir(folder, { recursive: true });
     const page = await this.page(person);
     for (const [width, size] of [["1440", DESKTOP] as const, ["390", PHONE] as const])
       for (const colorScheme of ["light", "dark"] as const) {
         await page.setViewportSize(size);
         await page.emulateMedia({ colorScheme });
         await page.waitForTimeout(150);
-        await page.screenshot({ path: path.join(OUTPUT, `${name}-${width}-${colorScheme}.png`), fullPage: true });
+        await page.screenshot({ path: path.join(folder, `${name}-${width}-${colorScheme}.png`), fullPage: true });
       }
     await page.setViewportSize(DESKTOP);
     await page.emulateMedia({ colorScheme: "light" });

@@ -70,6 +70,14 @@ test("an update or delete touches no row the actor does not see", async () => {
   expect(await RfqQuantity.destroy({ where: { rfqId: rfq.id, quantity: 100 }, actor: engineer })).toBe(1);
 });
 
+test("a query that passes no hook is refused on a tenant's table, even for the system", async () => {
+  const { rfq } = await twoBuyersTwoSuppliers();
+  expect(() => Rfq.sum("quantity", { actor: SYSTEM })).toThrow("passes no hook");
+  expect(() => Rfq.max("id")).toThrow("passes no hook");
+  expect(() => Rfq.increment("quantity", { where: { id: rfq.id } })).toThrow("passes no hook");
+  expect((await Rfq.findByPk(rfq.id, { actor: SYSTEM }))?.quantity).toBe(rfq.quantity);
+});
+
 test("a join past the hook is refused, and the system actor has to be named", async () => {
   await twoBuyersTwoSuppliers();
   await expect(Rfq.findAll({ actor: SYSTEM, include: [{ association: "specification" }] })).rejects.toThrow();

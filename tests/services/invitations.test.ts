@@ -11,6 +11,7 @@ import {
   revokeInvitation,
 } from "~/services/invitations.server";
 import type { Person } from "~/services/person.server";
+import { openRfq } from "~/services/rfqs.server";
 import { listSuppliers, setSupplierStatus, suggestSuppliers } from "~/services/suppliers.server";
 import { buildInvitation, buildOrganisation, buildPerson, buildRfq } from "../support/factories";
 import { useDatabase } from "../support/database";
@@ -83,6 +84,25 @@ test("a row that is refused names its place, and no row of the post is kept", as
   });
   expect(await Invitation.count({ actor: engineer })).toBe(1);
   expect(await Supplier.count({ actor: engineer })).toBe(before);
+});
+
+test("a supplier blocked since it was put on the list is mailed neither by opening the RFQ nor by sending again", async () => {
+  const { buyer, engineer, rfq } = await draft();
+  const purchasing = await buildPerson(buyer, "purchasing");
+  await add(engineer, rfq.publicId, KESTREL);
+  const invitation = (await only(engineer, rfq.publicId))?.publicId ?? "";
+  const [entry] = (await listSuppliers(engineer, { status: null, page: 1 })).entries;
+  const rate = (status: "blocked" | "approved") => setSupplierStatus(purchasing, entry?.publicId ?? "", status);
+  const open = () => openRfq(engineer, newIdempotencyKey(), rfq.publicId);
+  const blocked = { ok: false, errors: { form: [expect.stringContaining("is blocked")] } };
+  await rate("blocked");
+  expect(await open()).toMatchObject(blocked);
+  expect(await OutboxEmail.count()).toBe(0);
+  await rate("approved");
+  expect(await open()).toMatchObject({ ok: true });
+  await rate("blocked");
+  expect(await resendInvitation(engineer, rfq.publicId, invitation)).toMatchObject(blocked);
+  expect(await OutboxEmail.count()).toBe(1);
 });
 
 test("a blocked supplier and an address of one's own organisation are not invited", async () => {

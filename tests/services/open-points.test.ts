@@ -1,6 +1,7 @@
 // Open points tell the states things are in, to those whom they concern.
 import { expect, test } from "vitest";
 import { Decision, QuoteVersion, type Rfq } from "~/db/models";
+import { cancelRfq } from "~/services/closing.server";
 import { newPublicId } from "~/services/identifiers.server";
 import { MOST_SHOWN, readOpenPoints } from "~/services/open-points.server";
 import type { Person } from "~/services/person.server";
@@ -130,6 +131,15 @@ test("a recommendation waits for those who may approve it, never for the one who
   expect((await readOpenPoints(engineer)).toRecommend.count).toBe(0);
   await Decision.update({ secondPerson: false }, { where: { rfqId: rfq.id }, actor: purchasing });
   expect((await readOpenPoints(purchasing)).toApprove).toMatchObject(waiting);
+});
+
+test("a recommendation whose RFQ was cancelled waits for nobody", async () => {
+  const { engineer, admin } = await buildTeam();
+  const { rfq } = await buildRfq(engineer, { status: "closed", closedAt: hence(-3) });
+  await recommend(rfq, engineer);
+  expect((await readOpenPoints(admin)).toApprove.count).toBe(1);
+  expect(await cancelRfq(engineer, rfq.publicId, "The project was stopped.")).toMatchObject({ ok: true });
+  expect((await readOpenPoints(admin)).toApprove.count).toBe(0);
 });
 
 test("a returned recommendation comes back to its author, until another one follows", async () => {

@@ -1,9 +1,14 @@
 // Signing in and forgotten passwords: nothing tells which addresses exist, a link works once, a reset ends every session.
-import { expect, test } from "vitest";
+import { expect, test, vi } from "vitest";
 import { AuditEvent, OneTimeToken, OutboxEmail, Session, User } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
 import { hashPassword } from "~/services/passwords.server";
-import { passwordResetIsOpen, requestPasswordReset, resetPassword } from "~/services/password-reset.server";
+import {
+  beginPasswordReset,
+  passwordResetIsOpen,
+  requestPasswordReset,
+  resetPassword,
+} from "~/services/password-reset.server";
 import { readSession, startSession } from "~/services/sessions.server";
 import { signIn } from "~/services/sign-in.server";
 import { useDatabase } from "../support/database";
@@ -108,6 +113,21 @@ test("a new link ends the older one, and an altered one never worked", async () 
   expect(await passwordResetIsOpen(first)).toBe(false);
   expect(await passwordResetIsOpen(second.slice(0, -1) + (second.endsWith("A") ? "B" : "A"))).toBe(false);
   expect(await passwordResetIsOpen(second)).toBe(true);
+});
+
+test("links asked for at once are all answered, and one of them stays good", async () => {
+  const { email, userId } = await person();
+  await Promise.all(Array.from({ length: 12 }, () => requestPasswordReset(email)));
+  expect(await OutboxEmail.count({ where: { template: "password-reset" } })).toBe(12);
+  expect(await OneTimeToken.count({ where: { userId, revokedAt: null } })).toBe(1);
+  expect(await passwordResetIsOpen(await mailedToken())).toBe(true);
+});
+
+test("the page that asks for a link answers before anything is looked up", async () => {
+  const { email } = await person();
+  beginPasswordReset(email);
+  expect(await OutboxEmail.count()).toBe(0);
+  await vi.waitFor(async () => expect(await OutboxEmail.count()).toBe(1), 5_000);
 });
 
 test("a password that names the person's company is refused and the link stays open", async () => {

@@ -19,14 +19,14 @@ import { scoreVersion } from "~/services/scoring.server";
 import { inTransaction } from "~/services/transaction.server";
 import { buildOrganisation, buildPerson } from "../support/factories";
 import { useDatabase } from "../support/database";
+import { journeyKey } from "../support/journey";
 import {
   buildJourneyQuote,
-  expectedOf,
   journeyFiles,
-  lineKeyOf,
+  supplierFigures,
   uploadFiles,
   type JourneyQuote,
-} from "../support/journey";
+} from "../support/supplier-journey";
 
 useDatabase();
 
@@ -48,11 +48,11 @@ const SUPPLIERS = [
 test.each(SUPPLIERS)("every line of %s comes out as numpy computed it from the same files", async (name, folder) => {
   const { person } = await submitted(name, folder);
   expect(await runNextScoring(scoreVersion)).toBe(true);
-  const expected = expectedOf(name);
+  const expected = supplierFigures(name);
   const rows = await QuoteLineResult.findAll({ actor: person });
   const byKey = new Map(rows.map((row) => [row.lineKey, row]));
   for (const line of expected.lines) {
-    const row = byKey.get(lineKeyOf(line.id));
+    const row = byKey.get(journeyKey(line.id));
     expect(row, line.id).toMatchObject({ verdict: line.verdict, unit: line.worst.unit });
     expect(Number(row?.temperature), line.id).toBe(line.worst.temperature);
     expect(row?.frequency, line.id).toBe(line.worst.frequency);
@@ -60,11 +60,11 @@ test.each(SUPPLIERS)("every line of %s comes out as numpy computed it from the s
     expect(Math.abs((row?.margin ?? NaN) - line.worst.margin), line.id).toBeLessThan(1e-6);
     expect(Math.abs((row?.creditedMargin ?? NaN) - line.creditedMargin), line.id).toBeLessThan(1e-5);
   }
-  expect(byKey.get(lineKeyOf("6.1"))).toMatchObject({ verdict: "declared", reason: "25 W", cells: [] });
+  expect(byKey.get(journeyKey("6.1"))).toMatchObject({ verdict: "declared", reason: "25 W", cells: [] });
   expect(await QuoteSummary.findOne({ actor: person })).toMatchObject({
     verdict: expected.verdict,
     conforming: expected.verdict === "pass",
-    worstLineKey: lineKeyOf(expected.worstLine),
+    worstLineKey: journeyKey(expected.worstLine),
     units: expected.units.length,
     unitsOverRange: expected.unitsOverRange.length,
   });
@@ -74,7 +74,7 @@ test("both sides are mailed the results once, the one failing corner among them"
   const { person, engineer, quote, rfq } = await submitted("Kestrel Cavity Filters", "kestrel-cavity-filters");
   const failing = await MeasurementResult.findAll({ where: { verdict: "fail" }, actor: person });
   expect(failing).toHaveLength(1);
-  const corner = failing[0]?.results.find(({ id }) => id === lineKeyOf("2.1"));
+  const corner = failing[0]?.results.find(({ id }) => id === journeyKey("2.1"));
   // tests/reference/journey/README.md: 1.322 dB at 1.980 GHz, between the samples 1979.52 and 1980.02 MHz.
   expect(corner).toMatchObject({ verdict: "fail", frequency: 1.98e9, assumed: true });
   const version = await QuoteVersion.findOne({ actor: person, rejectOnEmpty: true });

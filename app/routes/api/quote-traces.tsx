@@ -1,4 +1,4 @@
-// The measured curves of a quote for its overlay plot, as JSON: `?unit=…&temperature=…` stand out, `from` and `to` in Hz are drawn finer.
+// The measured curves of a quote for its overlay plot, as JSON: `?unit=…&temperature=…` stand out, with S12 by `reverse=1`; `from` and `to` in Hz are drawn finer.
 import { data } from "react-router";
 import { orNotFound, requirePerson, requireRight } from "~/services/request.server";
 import { readQuoteTraces, type TraceQuery } from "~/services/quote-traces.server";
@@ -24,6 +24,7 @@ function readQuery(search: URLSearchParams): TraceQuery {
   return {
     unit: search.get("unit") ?? undefined,
     temperature: figure("temperature"),
+    reverse: search.get("reverse") === "1",
     window: from !== undefined && to !== undefined && from < to ? [from, to] : undefined,
   };
 }

@@ -6,7 +6,7 @@ import { Notice } from "~/components/notice";
 import { Page } from "~/components/page";
 import { parseForgotForm } from "~/forms/account";
 import type { FormState } from "~/forms/form";
-import { requestPasswordReset } from "~/services/password-reset.server";
+import { beginPasswordReset } from "~/services/password-reset.server";
 import type { Route } from "./+types/forgotten-password";
 
 export const meta: Route.MetaFunction = () => [{ title: "Forgotten password · Tenderband" }];
@@ -17,7 +17,7 @@ export async function action({ request }: Route.ActionArgs) {
     const state: FormState = { values: input.values, errors: input.errors };
     return data({ sent: false, state }, { status: 400 });
   }
-  await requestPasswordReset(input.value.email);
+  beginPasswordReset(input.value.email);
   return data({ sent: true, state: undefined });
 }
 

@@ -2,7 +2,7 @@
 import type { ReactNode } from "react";
 import { Cell, HeadCell, Row, RowHead, Table } from "~/components/data-table";
 import { formatMoney, formatNumber } from "~/components/format";
-import { leadWords } from "~/components/comparison-words";
+import { dateWords, leadWords } from "~/components/comparison-words";
 import { Page, Section, Split } from "~/components/page";
 import { QuoteBlock } from "~/components/quote-block";
 import { Verdict } from "~/components/verdict-mark";
@@ -97,7 +97,7 @@ function facts(terms: Terms, submitterName: string): [string, ReactNode][] {
   return [
     ["Lead time, volume", leadWords(terms.leadVolumeDays)],
     ["Lead time, first units", terms.leadFirstDays === null ? "not stated" : leadWords(terms.leadFirstDays)],
-    ["Valid until", terms.validUntil],
+    ["Valid until", dateWords(terms.validUntil)],
     ["Minimum quantity", terms.minimumQuantity === null ? "none" : formatNumber(terms.minimumQuantity, 0)],
     ["Order multiple", terms.orderMultiple === null ? "none" : formatNumber(terms.orderMultiple, 0)],
     ["Delivery", delivery],

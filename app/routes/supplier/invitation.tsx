@@ -20,9 +20,7 @@ import { orNotFound, requireRight } from "~/services/request.server";
 import { readSupplierInvitation } from "~/services/supplier-invitation.server";
 import type { Route } from "./+types/invitation";
 
-export const meta: Route.MetaFunction = ({ loaderData }) => [
-  { title: `${loaderData?.rfqNumber ?? "Invitation"} · Tenderband` },
-];
+export const meta: Route.MetaFunction = ({ loaderData }) => [{ title: `${loaderData.rfqNumber} · Tenderband` }];
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {
   const person = requireRight(context, request, "answer-invitation");

@@ -22,7 +22,7 @@ import type { loader as listLoader } from "../api/quote-measurements";
 import type { Route } from "./+types/quote-data";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
-  { title: `Data, quote to ${loaderData?.head.rfqNumber ?? "RFQ"} · Tenderband` },
+  { title: `Data, quote to ${loaderData.head.rfqNumber} · Tenderband` },
 ];
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {

@@ -14,7 +14,7 @@ import { orNotFound, requireRight } from "~/services/request.server";
 import type { Route } from "./+types/quote-declarations";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
-  { title: `Declarations, quote to ${loaderData?.head.rfqNumber ?? "RFQ"} · Tenderband` },
+  { title: `Declarations, quote to ${loaderData.head.rfqNumber} · Tenderband` },
 ];
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {

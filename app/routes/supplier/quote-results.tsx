@@ -17,7 +17,7 @@ import { readSupplierResults } from "~/services/supplier-results.server";
 import type { Route } from "./+types/quote-results";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
-  { title: `Results, quote to ${loaderData?.head.rfqNumber ?? "RFQ"} · Tenderband` },
+  { title: `Results, quote to ${loaderData.head.rfqNumber} · Tenderband` },
 ];
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {
@@ -74,20 +74,31 @@ function resultsNote({ lines }: Route.ComponentProps["loaderData"]["results"]): 
 
 function facts({ head, results }: Route.ComponentProps["loaderData"]): QuoteFact[] {
   const { summary } = results;
-  const worst = results.lines.find(({ line }) => line.lineKey === summary?.worstLineKey);
-  const files = `${summary?.temperatures ?? 0} temperatures`;
   return [
-    ...(summary === null
-      ? []
-      : ([
-          [DECISION_RULES[head.decisionRule], summary.conforming ? "complies" : "does not comply"],
-          ...(worst === undefined ? [] : [["Worst line", worst.line.lineNumber]]),
-          ["Units", `${summary.units}, of these ${summary.unitsOverRange} over temperature, at ${files}`],
-        ] as QuoteFact[])),
+    ...(summary === null ? [] : scored(summary, head.decisionRule, results.lines)),
     ["Basis", BASIS_WORDS[results.basis]],
     ["Submitted", <Instant key="at" at={results.submittedAt} zone={head.dueZone} />],
     ["By", results.submitterName],
     ["Receipt", results.receipt],
-    ...(summary === null ? [] : ([["Scored by core", summary.coreVersion]] as QuoteFact[])),
+  ];
+}
+
+type Results = Route.ComponentProps["loaderData"]["results"];
+
+function scored(
+  summary: NonNullable<Results["summary"]>,
+  rule: keyof typeof DECISION_RULES,
+  lines: Results["lines"],
+): QuoteFact[] {
+  const worst = lines.find(({ line }) => line.lineKey === summary.worstLineKey);
+  const { units, unitsOverRange, temperatures } = summary;
+  return [
+    ["Decision", `${summary.conforming ? "complies" : "does not comply"} under ${DECISION_RULES[rule]}`],
+    ["Worst line", worst?.line.lineNumber ?? "none"],
+    [
+      "Units",
+      `${units}, of these ${unitsOverRange} over temperature, at ${temperatures} ${temperatures === 1 ? "temperature" : "temperatures"}`,
+    ],
+    ["Scored by core", summary.coreVersion],
   ];
 }

@@ -9,6 +9,7 @@ import { QuoteStateNotice } from "~/components/quote-state-notice";
 import { DeclarationsView, SetupView, TermsView } from "~/components/quote-terms-view";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
 import { UploadList } from "~/components/upload-list";
+import { formValues } from "~/forms/fields";
 import { newIdempotencyKey } from "~/services/identifiers.server";
 import { listMeasurements } from "~/services/measurement-list.server";
 import { reviewQuote, submitQuote } from "~/services/quote-submission.server";
@@ -18,7 +19,7 @@ import { orNotFound, requireRight } from "~/services/request.server";
 import type { Route } from "./+types/quote-review";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
-  { title: `Review, quote to ${loaderData?.head.rfqNumber ?? "RFQ"} · Tenderband` },
+  { title: `Review, quote to ${loaderData.head.rfqNumber} · Tenderband` },
 ];
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {
@@ -35,8 +36,8 @@ export async function loader({ request, context, params }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const person = requireRight(context, request, "submit-quote");
-  const form = await request.formData();
-  const outcome = orNotFound(await submitQuote(person, params.quoteId, String(form.get("idempotencyKey"))));
+  const { idempotencyKey = "" } = formValues(await request.formData());
+  const outcome = orNotFound(await submitQuote(person, params.quoteId, idempotencyKey));
   if (outcome.ok) return redirect(quoteSheetAddress("Results", params.quoteId));
   return data({ values: {}, errors: { form: outcome.errors.form ?? [STILL_MISSING] } }, { status: 400 });
 }

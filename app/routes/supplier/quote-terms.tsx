@@ -12,7 +12,7 @@ import { orNotFound, requireRight } from "~/services/request.server";
 import type { Route } from "./+types/quote-terms";
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
-  { title: `Terms, quote to ${loaderData?.head.rfqNumber ?? "RFQ"} · Tenderband` },
+  { title: `Terms, quote to ${loaderData.head.rfqNumber} · Tenderband` },
 ];
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {

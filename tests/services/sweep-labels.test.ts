@@ -1,0 +1,37 @@
+// Unit and temperature read from names and comments, and left open where they can be read two ways.
+import { expect, test } from "vitest";
+import { readSweepLabels } from "~/services/sweep-labels.server";
+
+const read = (name: string, ...comments: string[]) => {
+  const { serial, temperature } = readSweepLabels(name, comments);
+  return [serial, temperature];
+};
+
+test("names of serial and temperature are read with their signs", () => {
+  expect(read("HR2-0411_-30C.s2p")).toEqual(["HR2-0411", -30]);
+  expect(read("KCF-0205_+25C.s2p")).toEqual(["KCF-0205", 25]);
+  expect(read("OM-0031_25C.s2p")).toEqual(["OM-0031", 25]);
+  expect(read("SN7 70.5 degC.S2P")).toEqual(["SN7", 70.5]);
+  expect(read("unit12_25°C_final.s2p")).toEqual(["unit12", 25]);
+});
+
+test("comments name what the file's name does not", () => {
+  expect(read("wide.s2p", " Serial No.: A-17", " Temperature: -40 degC")).toEqual(["A-17", -40]);
+  expect(read("sweep.s2p", "S/N 0042", "temp = +70.0 C")).toEqual(["0042", 70]);
+});
+
+test("a comment's serial counts before the name", () => {
+  expect(read("measurement-3_25C.s2p", "Serial KCF-0205")).toEqual(["KCF-0205", 25]);
+});
+
+test("what can be read two ways is left open", () => {
+  // The hyphen may part serial and temperature, or be the sign.
+  expect(read("0411-30C.s2p")[1]).toBeNull();
+  expect(read("A1_25C.s2p", "Temperature 70 degC")[1]).toBeNull();
+});
+
+test("words without a digit are no serial, and other figures no temperature", () => {
+  expect(read("wide sweep.s2p")).toEqual([null, null]);
+  expect(read("filter_2GHz.s2p", "calibrated 2026-11-17, 100 Hz IF bandwidth, 0 dBm")).toEqual(["filter_2GHz", null]);
+  expect(read(`${"9".repeat(61)}.s2p`)[0]).toBeNull();
+});
