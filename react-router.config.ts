@@ -3,6 +3,7 @@ import type { Config } from "@react-router/dev/config";
 
 export default {
   ssr: true,
+  buildDirectory: process.env.BUILD_FOLDER ?? "build",
   routeDiscovery: { mode: "initial" },
   future: {
     v8_middleware: true,

@@ -26,6 +26,7 @@ const Environment = z
       .refine((secrets) => secrets.every((secret) => secret.length >= 32), "needs at least 32 characters a secret"),
     PORT: port.default(5180),
     HOST: z.string().default("127.0.0.1"),
+    BUILD_FOLDER: z.string().min(1).default("build"),
     UPLOAD_FOLDER: z.string().min(1).default(".tenderband/uploads"),
     LOG_LEVEL: z.enum(["fatal", "error", "warn", "info", "debug", "silent"]).default("info"),
   })
@@ -43,6 +44,8 @@ const Environment = z
     sessionSecrets: environment.SESSION_SECRET,
     port: environment.PORT,
     host: environment.HOST,
+    /** Where `react-router build` left the pages. */
+    buildFolder: environment.BUILD_FOLDER,
     uploadFolder: environment.UPLOAD_FOLDER,
     logLevel: environment.LOG_LEVEL,
   }));

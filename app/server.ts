@@ -104,9 +104,14 @@ async function prepareHost(app: Express, host: Server): Promise<void> {
     load = async () => handlerOf((await server.ssrLoadModule("virtual:react-router/server-build")) as ServerBuild);
   } else {
     app.use(compression());
-    app.use("/assets", express.static("build/client/assets", { immutable: true, maxAge: "1y" }));
-    app.use(express.static("build/client", { maxAge: "1h", index: false }));
-    const build = (await import(pathToFileURL(path.resolve("build/server/index.js")).href)) as ServerBuild;
+    app.use(
+      "/assets",
+      express.static(path.join(settings.buildFolder, "client", "assets"), { immutable: true, maxAge: "1y" }),
+    );
+    app.use(express.static(path.join(settings.buildFolder, "client"), { maxAge: "1h", index: false }));
+    const build = (await import(
+      pathToFileURL(path.resolve(settings.buildFolder, "server", "index.js")).href
+    )) as ServerBuild;
     const handler = handlerOf(build);
     load = () => Promise.resolve(handler);
   }

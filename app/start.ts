@@ -43,7 +43,8 @@ async function start(): Promise<void> {
   } else {
     await migrateExternal(config.databaseOwnerUrl, say);
   }
-  if (!development) await buildIfStale({ logFile: logFileOf(folder, "build"), say });
+  if (!development)
+    settings.environment.BUILD_FOLDER = await buildIfStale({ logFile: logFileOf(folder, "build"), say });
   await runSink(settings);
   await Promise.all([runServer(settings), runWorker(settings)]);
   await tellAddress(settings);

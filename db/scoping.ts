@@ -90,6 +90,13 @@ function scope(options: HookedOptions, table: string, written = unchanged): void
   options.where = options.where ? { [Op.and]: [options.where, condition] } : condition;
 }
 
+/** Queries that Sequelize runs past every hook. */
+const UNHOOKED = ["sum", "min", "max", "increment", "decrement"] as const;
+
+const refuse = (name: string) => () => {
+  throw new UnscopedQueryError(`${name} passes no hook: write it as find or update`);
+};
+
 /** Adds the hook to a connection, for every model defined on it before or after. */
 export function installScoping(sequelize: Sequelize): void {
   sequelize.addHook("afterDefine", (model) => {
@@ -101,5 +108,6 @@ export function installScoping(sequelize: Sequelize): void {
     const target = model as unknown as { addHook(name: string, hook: (options: unknown) => void): void };
     for (const name of ["beforeFind", "beforeCount", "beforeBulkUpdate"]) target.addHook(name, apply);
     target.addHook("beforeBulkDestroy", applyToColumns);
+    if (isTenantTable(table)) for (const name of UNHOOKED) Object.defineProperty(model, name, { value: refuse(name) });
   });
 }

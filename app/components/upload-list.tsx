@@ -54,7 +54,7 @@ export function UploadList({ entries, canEdit, errors = {} }: UploadListProps) {
           <tr>
             <HeadCell>File</HeadCell>
             <HeadCell className="w-44">Unit, serial</HeadCell>
-            <HeadCell figure className="w-28">
+            <HeadCell figure className="w-40">
               Temperature, °C
             </HeadCell>
             <HeadCell figure>Sweep</HeadCell>

@@ -64,7 +64,9 @@ export function groupRows(
     const match = /^([a-zA-Z]+)\.(\d{1,4})\.([a-zA-Z]+)$/.exec(name);
     if (!match || match[1] !== group) continue;
     const index = Number(match[2]);
-    rows.set(index, { ...rows.get(index), [match[3] ?? ""]: value });
+    const fields = rows.get(index) ?? {};
+    fields[match[3] ?? ""] = value; // written into: a copy for each field would take quadratic time
+    rows.set(index, fields);
   }
   return [...rows].sort(([a], [b]) => a - b).map(([index, fields]) => ({ index, fields }));
 }

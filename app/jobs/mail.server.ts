@@ -187,7 +187,8 @@ function claimNext(): Promise<HeldMail | undefined> {
 async function markSent({ row, lease }: HeldMail): Promise<void> {
   for (let tries = 1; ; tries += 1) {
     try {
-      return await markMailSent(lease, SINGLE_USE_LINKS.includes(row.template));
+      await markMailSent(lease, SINGLE_USE_LINKS.includes(row.template));
+      return;
     } catch (error) {
       if (tries === MARK_TRIES) throw error;
       await sleep(1000);

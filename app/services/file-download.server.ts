@@ -45,6 +45,5 @@ export function downloadHeaders({ name, size }: Pick<Download, "name" | "size">)
     "Content-Length": String(size),
     "Content-Disposition": `attachment; filename="${plain}"; filename*=UTF-8''${encoded}`,
     "Content-Security-Policy": "sandbox; default-src 'none'",
-    "X-Content-Type-Options": "nosniff",
   });
 }

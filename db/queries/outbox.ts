@@ -42,12 +42,13 @@ export async function renewMailLease({ id, leaseToken }: LeasedMail, seconds: nu
   );
 }
 
+const propsAfter = (forgetLink: boolean) => (forgetLink ? "JSON_SET(props, '$.link', '')" : "props");
+
 /** @param forgetLink blanks the single-use link, so that no usable token stays behind */
 export async function markMailSent({ id, leaseToken }: LeasedMail, forgetLink: boolean): Promise<void> {
-  const props = forgetLink ? "JSON_SET(props, '$.link', '')" : "props";
   await sequelize.query(
     `UPDATE outbox_emails SET state = 'sent', sent_at = UTC_TIMESTAMP(3), leased_until = NULL, lease_token = NULL,
-      last_error = NULL, props = ${props} WHERE id = ? AND lease_token = ?`,
+      last_error = NULL, props = ${propsAfter(forgetLink)} WHERE id = ? AND lease_token = ?`,
     { type: QueryTypes.UPDATE, replacements: [id, leaseToken] },
   );
 }
@@ -58,12 +59,15 @@ export interface MailRefusal {
   /** Codes and places only. */
   readonly reason: string;
   readonly delaySeconds: number;
+  /** Blanks the single-use link of a mail that is given up. */
+  readonly forgetLink: boolean;
 }
 
 export async function markMailRefused({ id, leaseToken }: LeasedMail, refusal: MailRefusal): Promise<void> {
   await sequelize.query(
     `UPDATE outbox_emails SET state = ?, attempts = ?, last_error = ?, leased_until = NULL, lease_token = NULL,
-      next_at = UTC_TIMESTAMP(3) + INTERVAL ? SECOND WHERE id = ? AND lease_token = ?`,
+      next_at = UTC_TIMESTAMP(3) + INTERVAL ? SECOND, props = ${propsAfter(refusal.forgetLink)}
+      WHERE id = ? AND lease_token = ?`,
     {
       type: QueryTypes.UPDATE,
       replacements: [refusal.state, refusal.attempts, refusal.reason, refusal.delaySeconds, id, leaseToken],

@@ -1,4 +1,5 @@
 // Who acts in the demo, all invented, and how they sign in.
+
 /** One for all of the demo: it guards nothing but an invented scenario. */
 export const PASSWORD = "coupled-iris-tuning";
 export const BUYER = "Northgate Radio";

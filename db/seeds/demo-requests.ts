@@ -5,6 +5,7 @@ import { closeRfq } from "~/services/closing.server";
 import { newIdempotencyKey } from "~/services/identifiers.server";
 import { addInvitations } from "~/services/invitations.server";
 import type { Person } from "~/services/person.server";
+import { listSuppliers, setSupplierStatus } from "~/services/suppliers.server";
 import { createRfq, openRfq, type RfqFields } from "~/services/rfqs.server";
 import { PEOPLE, TIME_ZONE } from "./demo-cast";
 import { made } from "./demo-steps";
@@ -19,6 +20,12 @@ const dueIn = (days: number): Date =>
     Temporal.Now.plainDateISO(TIME_ZONE).add({ days }).toZonedDateTime({ timeZone: TIME_ZONE, plainTime: "17:00" })
       .epochMilliseconds,
   );
+
+const QUARTER_MS = 15 * 60 * 1000;
+const QUOTING_TAKES_MS = 5 * 60 * 1000;
+
+/** The first quarter of an hour that leaves the suppliers of the demo time to quote: it has passed soon after. */
+const dueSoon = (): Date => new Date(Math.ceil((Date.now() + QUOTING_TAKES_MS) / QUARTER_MS) * QUARTER_MS);
 
 const COMMON = {
   dueZone: TIME_ZONE,
@@ -36,7 +43,7 @@ export const requestFirstSeries = (engineer: Person, specification: string): Pro
     title: "Receive band-pass, first series",
     breaks: [100, 500, 1000],
     askedQuantity: 500,
-    dueAt: dueIn(2),
+    dueAt: dueSoon(),
     text: "Measured data of three units, one of them at −30, 25 and 70 °C. Lead time counts from the order.",
   });
 
@@ -63,6 +70,13 @@ async function request(
   made("invite suppliers", await addInvitations(engineer, newIdempotencyKey(), publicId, rows));
   made("open an RFQ", await openRfq(engineer, newIdempotencyKey(), publicId));
   return publicId;
+}
+
+/** Two of the three have delivered before. */
+export async function approveSuppliers(purchasing: Person): Promise<void> {
+  const { entries } = await listSuppliers(purchasing, { status: null, page: 1 });
+  for (const { name, publicId } of entries)
+    if (name !== ORME.company) made("approve a supplier", await setSupplierStatus(purchasing, publicId, "approved"));
 }
 
 export async function closeRequest(engineer: Person, rfq: string): Promise<void> {

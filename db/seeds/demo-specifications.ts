@@ -30,7 +30,7 @@ export const RECEIVE_LINES: readonly Line[] = [
 const DRAFT_LINES: readonly Line[] = [
   { kind: "insertion-loss", from: "2.11G", to: "2.17G", limit: "1.0 dB" },
   { kind: "rejection", from: "1.92G", to: "1.98G", limit: "70 dB" },
-  { kind: "return-loss", port: "1", from: "2.11G", to: "2.17G", limit: "1.4:1" },
+  { kind: "return-loss", port: "1", from: "2.11G", to: "2.17G", limit: "16 dB" },
 ];
 
 /** Writes the receive filter and releases revision A; returns its public id. */

@@ -3,7 +3,7 @@ import { Organisation } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
 import { foundBuyer } from "./demo-people";
 import { beginOutdoorQuote, quoteFirstSeries } from "./demo-quotes";
-import { closeRequest, requestFirstSeries, requestOutdoorSeries } from "./demo-requests";
+import { approveSuppliers, closeRequest, requestFirstSeries, requestOutdoorSeries } from "./demo-requests";
 import { writeDraftSpecification, writeReceiveFilter } from "./demo-specifications";
 
 export { demoSignIns } from "./demo-cast";
@@ -11,11 +11,12 @@ export { demoSignIns } from "./demo-cast";
 /** Fills an installation that holds no organisation yet; leaves any other alone. All dates are relative to now. */
 export async function seedDemo(): Promise<void> {
   if ((await Organisation.count({ actor: SYSTEM })) > 0) return;
-  const { engineer } = await foundBuyer();
+  const { engineer, purchasing } = await foundBuyer();
   const specification = await writeReceiveFilter(engineer);
   await writeDraftSpecification(engineer);
 
   const rfq = await requestFirstSeries(engineer, specification);
+  await approveSuppliers(purchasing);
   await quoteFirstSeries();
   await closeRequest(engineer, rfq);
 

@@ -139,7 +139,7 @@ function steps(world: JourneyWorld): Step[] {
           const standing = standingOf(address);
           if (standing.kind !== "page" || standing.for === "anybody") continue;
           for (const actor of walk.actors) {
-            const expected = actor.kind === standing.for ? 200 : 404;
+            const expected: number = actor.kind === standing.for ? 200 : 404;
             const { status } = await walk.ask(actor, address.pattern, { method: "GET" });
             assert.equal(status, expected, `${address.pattern} for ${actor.name}`);
           }

@@ -11,7 +11,7 @@ export interface Address {
 }
 
 /** Routes with an element of their own, with the layout that guards them. */
-export const ADDRESSES: readonly Address[] = flatten(routes as RouteConfigEntry[], "", "");
+export const ADDRESSES: readonly Address[] = flatten(routes, "", "");
 
 function flatten(entries: readonly RouteConfigEntry[], parent: string, area: string): Address[] {
   return entries.flatMap((entry) => {
@@ -109,7 +109,8 @@ const PUBLIC = [
 ];
 
 export type Standing =
-  | { readonly kind: "public" | "secret" }
+  | { readonly kind: "public" }
+  | { readonly kind: "secret" }
   | { readonly kind: "page"; readonly for: "buyer" | "supplier" | "anybody" }
   | { readonly kind: "id"; readonly for: "buyer" | "supplier" | "anybody"; readonly rule: IdRule };
 

@@ -193,7 +193,7 @@ test("a recipient the server says it has not is given up at once, in words witho
   const gone = await queue("regret", { recipient: "gone@tolvane.example" });
   const link = await queue("invitation", { recipient: "gone-too@tolvane.example" });
   const there = await queue("regret");
-  expect(await dispatchMail({ send: sender.send })).toEqual({ sent: 1, failed: 2 });
+  expect(await dispatchMail({ send: (mail) => sender.send(mail) })).toEqual({ sent: 1, failed: 2 });
   // Nobody will get this link: nor does the row keep it.
   expect(await state(link)).toMatchObject({ state: "failed", props: { link: "" } });
   expect(await state(gone)).toMatchObject({ state: "failed", attempts: 1, lastError: "EENVELOPE RCPT TO 550" });
