@@ -45,6 +45,7 @@ export default tseslint.config(
   {
     // Processes that make the environment of others, and tests that play them.
     files: [
+      "*.ts",
       "app/config.server.ts",
       "app/create-administrator.ts",
       "app/start.ts",

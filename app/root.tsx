@@ -17,10 +17,10 @@ import { Page } from "./components/page";
 import { ProductNav, type ProductNavUser } from "./components/product-nav";
 import { ThemeContext } from "./components/theme-switch";
 import { refuseForeignOrigin } from "./services/origin.server";
-import { currentPerson, identify, noStore, requestFactsContext } from "./services/request.server";
+import { currentPerson, identify, noStore, refuseOtherBodies, requestFactsContext } from "./services/request.server";
 import { readTheme } from "./services/theme.server";
 
-export const middleware: Route.MiddlewareFunction[] = [refuseForeignOrigin, identify, noStore];
+export const middleware: Route.MiddlewareFunction[] = [refuseForeignOrigin, refuseOtherBodies, identify, noStore];
 
 export const links: Route.LinksFunction = () => [
   ...documentLinks,
@@ -98,10 +98,16 @@ const ANSWERS: Record<number, { title: string; help: string }> = {
   413: { title: "That was too large", help: "A file may have 64 MiB at most." },
 };
 
+const FOREIGN = {
+  title: "This was sent from another page",
+  help: "Only our own pages may send forms here. Load the page again and repeat the step.",
+};
+
 /** Says what happened and where to go on; never what went wrong inside. */
 export function ErrorBoundary({ error }: Route.ErrorBoundaryProps) {
   const status = isRouteErrorResponse(error) ? error.status : 500;
-  const answer = ANSWERS[status] ?? {
+  const isForeign = isRouteErrorResponse(error) && error.data === "Sent from another site";
+  const answer = (isForeign ? FOREIGN : ANSWERS[status]) ?? {
     title: "This did not work",
     help: "The fault is ours and has been recorded. What was stored before this step is kept. Try again in a minute.",
   };

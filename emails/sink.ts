@@ -37,7 +37,9 @@ export async function startSink({ smtpPort, popPort, folder, host = "127.0.0.1" 
   const boundSmtpPort = await listen(smtp.server, smtpPort, host);
   try {
     const boundPopPort = await listen(pop, popPort, host);
-    const close = async () => void (await Promise.all([closeSmtp(), closePop()]));
+    const close = async () => {
+      await Promise.all([closeSmtp(), closePop()]);
+    };
     return { smtpPort: boundSmtpPort, popPort: boundPopPort, close };
   } catch (error) {
     await closeSmtp();

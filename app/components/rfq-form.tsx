@@ -27,7 +27,10 @@ export function RfqForm({ state, zones, idempotencyKey, lockVersion, save, besid
       className="mt-9"
       {...(idempotencyKey === undefined ? {} : { idempotencyKey })}
     >
-      {lockVersion === undefined ? null : <input type="hidden" name="lockVersion" value={lockVersion} />}
+      {/* Of the page that was filled in: the answer to a refused form was read later, and may hold another's changes. */}
+      {lockVersion === undefined ? null : (
+        <input type="hidden" name="lockVersion" value={state.values.lockVersion ?? lockVersion} />
+      )}
       <input type="hidden" name="currency" value={state.values.currency ?? ""} />
       <Request />
       <Quantities currency={state.values.currency ?? ""} />

@@ -15,6 +15,9 @@ export interface AuditEntry {
   readonly quoteId?: number;
   readonly specificationId?: number;
   readonly detail?: Record<string, unknown>;
+  /** Of a request nobody is signed in for; a person brings their own. */
+  readonly requestId?: string;
+  readonly ip?: string;
 }
 
 /** Adds an entry. `by` is null for what the system does by itself. */

@@ -6,6 +6,7 @@ import { SYSTEM } from "~/db/scoping";
 import { invalid, ok, type Result } from "~/forms/form";
 import { rfqRefusal, rfqState } from "~/workflow/rfq";
 import { recordEvent } from "./audit.server";
+import { log } from "./log.server";
 import type { Person } from "./person.server";
 import { lockRfq } from "./rfq-head.server";
 import { inTransaction } from "./transaction.server";
@@ -53,7 +54,13 @@ export async function closeDueRfqs(): Promise<number> {
     actor: SYSTEM,
   });
   let closed = 0;
-  for (const { id } of due) if (await closeDue(id)) closed += 1;
+  for (const { id } of due) {
+    try {
+      if (await closeDue(id)) closed += 1;
+    } catch (error) {
+      log.error({ err: error, rfqId: id }, "closing failed"); // the next pass tries again; the others are not held up
+    }
+  }
   return closed;
 }
 

@@ -32,6 +32,14 @@ export const noStore: MiddlewareFunction<Response> = async ({ context }, next) =
   return response;
 };
 
+const FORM = /^(application\/x-www-form-urlencoded\b|multipart\/form-data;.*\bboundary=)/i;
+
+/** Middleware of the root: what is sent here is a form; anything else would fail in the action that reads it. */
+export const refuseOtherBodies: MiddlewareFunction<Response> = ({ request }) => {
+  if (request.method === "GET" || request.method === "HEAD" || request.method === "OPTIONS") return;
+  if (!FORM.test(request.headers.get("Content-Type") ?? "")) throw data("Not a form", { status: 400 });
+};
+
 /** What an address that leads nowhere answers, alike for what is absent and what is somebody else's. */
 export const notFound = () => data("Not found", { status: 404 });
 

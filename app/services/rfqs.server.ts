@@ -268,6 +268,8 @@ export async function openRfq(
       const state = rfqState(rfq, now);
       if (!canRfq("open", state)) return invalid({ form: [rfqRefusal("open", state) ?? ""] });
       if (rfq.dueAt <= now) return invalid({ form: ["The due date has passed. Edit the draft and set a later one."] });
+      const superseded = await supersededRefusal(person, rfq, transaction);
+      if (superseded) return invalid({ form: [superseded] });
       const invitations = await Invitation.findAll({
         where: { rfqId: rfq.id, state: "draft" },
         order: [["id", "ASC"]],
@@ -284,6 +286,21 @@ export async function openRfq(
       return ok({ mailed: invitations.length });
     },
   );
+}
+
+/** Why an RFQ on a revision that a later one has replaced is not opened, or null; the revision is locked. */
+async function supersededRefusal(person: Person, rfq: Rfq, transaction: Transaction): Promise<string | null> {
+  const lock = transaction.LOCK.SHARE;
+  const where = { id: rfq.revisionId };
+  const revision = await SpecificationRevision.findOne({
+    where,
+    actor: person,
+    transaction,
+    lock,
+    rejectOnEmpty: true,
+  });
+  if (canSpecification("open-rfq", revision.status)) return null;
+  return `Revision ${revision.letter} has been replaced by a later one. Write a new RFQ from the specification.`;
 }
 
 export interface RfqOverview {

@@ -1,11 +1,12 @@
 // Sessions in the database: the cookie holds a random token, the row its SHA-256, so that ending one ends it at once.
-import { createCookie, type Cookie } from "react-router";
+import { createCookie, data, type Cookie } from "react-router";
 import { config } from "~/config.server";
 import { Organisation, Session, User } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
 import { newSecret, sha256 } from "./identifiers.server";
 import type { Person } from "./person.server";
+import { inTransaction } from "./transaction.server";
 
 /** Without use for longer than this a session has ended. */
 export const IDLE_MS = 12 * 60 * 60 * 1000;
@@ -33,18 +34,35 @@ async function tokenHash(request: Request): Promise<Buffer | null> {
   return typeof token === "string" && token.length > 0 ? sha256(token) : null;
 }
 
-/** Starts a session with a token of its own and returns the Set-Cookie header. */
-export async function startSession(userId: number, request: Request, ip?: string): Promise<string> {
+/**
+ * Starts a session with a token of its own and returns the Set-Cookie header.
+ * @param checkedHash hash the password was checked against: throws 409 if a reset, which ended all sessions, came in between
+ */
+export async function startSession(
+  userId: number,
+  request: Request,
+  ip?: string,
+  checkedHash?: string,
+): Promise<string> {
   const token = newSecret();
-  const now = await databaseNow();
-  await Session.create({
-    tokenHash: sha256(token),
-    userId,
-    createdAt: now,
-    lastSeenAt: now,
-    expiresAt: new Date(now.getTime() + ABSOLUTE_MS),
-    userAgent: request.headers.get("User-Agent")?.slice(0, 255) ?? null,
-    ip: ip ?? null,
+  await inTransaction(async (transaction) => {
+    const lock = transaction.LOCK.UPDATE;
+    const user = await User.findByPk(userId, { actor: SYSTEM, transaction, lock, rejectOnEmpty: true });
+    if (checkedHash !== undefined && user.passwordHash !== checkedHash)
+      throw data("The password was changed meanwhile", { status: 409 });
+    const now = await databaseNow(transaction);
+    await Session.create(
+      {
+        tokenHash: sha256(token),
+        userId,
+        createdAt: now,
+        lastSeenAt: now,
+        expiresAt: new Date(now.getTime() + ABSOLUTE_MS),
+        userAgent: request.headers.get("User-Agent")?.slice(0, 255) ?? null,
+        ip: ip ?? null,
+      },
+      { transaction },
+    );
   });
   return sessionCookie().serialize(token);
 }

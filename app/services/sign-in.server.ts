@@ -16,6 +16,14 @@ export interface SignedIn {
   readonly userId: number;
   readonly organisationKind: "buyer" | "supplier";
   readonly returnTo: string;
+  /** What the password was checked against, for `startSession`; goes to no page. */
+  readonly checkedHash: string;
+}
+
+/** Where the attempt came from, for the audit trail. */
+interface Origin {
+  readonly requestId?: string;
+  readonly ip?: string;
 }
 
 class SignInRefused extends Error {
@@ -27,36 +35,38 @@ class SignInRefused extends Error {
   }
 }
 
-async function verifyForm(form: FormData): Promise<SignedIn> {
+async function verifyForm(form: FormData, origin: Origin): Promise<SignedIn> {
   const input = parseSignInForm(form);
   if (!input.ok) throw new SignInRefused(input.errors, input.values);
   const { email, password, returnTo } = input.value;
   const user = await User.findOne({ where: { email }, actor: SYSTEM });
   const fits = await passwordFits(user?.passwordHash, password);
-  if (!user || !fits || user.disabledAt) {
-    await noteAttempt(user, "sign-in refused");
+  if (!user?.passwordHash || !fits || user.disabledAt) {
+    await noteAttempt(user, "sign-in refused", origin);
     throw new SignInRefused({ form: [WRONG] }, { email, returnTo });
   }
-  await noteAttempt(user, "signed in");
-  return { userId: user.id, organisationKind: user.organisationKind, returnTo };
+  await noteAttempt(user, "signed in", origin);
+  return { userId: user.id, organisationKind: user.organisationKind, returnTo, checkedHash: user.passwordHash };
 }
 
-async function noteAttempt(user: User | null, action: string): Promise<void> {
+async function noteAttempt(user: User | null, action: string, origin: Origin): Promise<void> {
   await inTransaction(async (transaction) =>
     recordEvent(
       null,
       await databaseNow(transaction),
-      { subject: "session", action, detail: user ? { userId: user.id } : {} },
+      { subject: "session", action, detail: user ? { userId: user.id } : {}, ...origin },
       transaction,
     ),
   );
 }
 
-const authenticator = new Authenticator<SignedIn>();
-authenticator.use(new FormStrategy<SignedIn>(({ form }) => verifyForm(form)), "password");
-
 /** Who the posted form is, or the errors to show with the address that was typed. */
-export async function signIn(request: Request): Promise<Result<SignedIn> & { values?: Record<string, string> }> {
+export async function signIn(
+  request: Request,
+  origin: Origin = {},
+): Promise<Result<SignedIn> & { values?: Record<string, string> }> {
+  const authenticator = new Authenticator<SignedIn>();
+  authenticator.use(new FormStrategy<SignedIn>(({ form }) => verifyForm(form, origin)), "password");
   try {
     return ok(await authenticator.authenticate("password", request));
   } catch (error) {

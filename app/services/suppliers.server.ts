@@ -1,6 +1,6 @@
 // A buyer's supplier directory: entries with their status and addresses, made as suppliers are invited.
 import { Op, type Transaction } from "sequelize";
-import { Invitation, Supplier, SupplierContact } from "~/db/models";
+import { Invitation, Organisation, Supplier, SupplierContact } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { ok, type Result } from "~/forms/form";
 import { SUPPLIER_STATUSES, type SupplierStatus } from "~/forms/supplier-status";
@@ -9,16 +9,21 @@ import { newPublicId } from "./identifiers.server";
 import type { Person } from "./person.server";
 import { inTransaction } from "./transaction.server";
 
-/** The entry of that name, made as a candidate where there is none. Upper and lower case are the same name. */
+/** The entry of that name, made as a candidate where there is none. Upper and lower case are the same name, "ü" and "u" are not. */
 export async function supplierByName(
   person: Person,
   name: string,
   now: Date,
   transaction: Transaction,
 ): Promise<Supplier> {
-  const where = { buyerOrganisationId: person.organisationId, name };
-  const found = await Supplier.findOne({ where, actor: person, transaction, lock: transaction.LOCK.UPDATE });
-  return found ?? Supplier.create({ ...where, publicId: newPublicId(), createdAt: now }, { transaction });
+  const lock = transaction.LOCK.UPDATE;
+  // One at a time for each buyer: two who add the same new company meet here, and the second finds the first's entry.
+  await Organisation.findByPk(person.organisationId, { actor: person, transaction, lock, rejectOnEmpty: true });
+  const entries = await Supplier.findAll({ actor: person, transaction, lock });
+  const alike = entries.find((entry) => entry.name.toLowerCase() === name.toLowerCase());
+  if (alike) return alike;
+  const entry = { buyerOrganisationId: person.organisationId, name, publicId: newPublicId(), createdAt: now };
+  return Supplier.create(entry, { transaction });
 }
 
 /** Keeps an address with an entry, once. */

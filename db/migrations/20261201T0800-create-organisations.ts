@@ -67,7 +67,7 @@ export const up: Migration = statements(
     id INT UNSIGNED NOT NULL AUTO_INCREMENT PRIMARY KEY,
     public_id CHAR(16) CHARACTER SET ascii NOT NULL,
     buyer_organisation_id INT UNSIGNED NOT NULL,
-    name VARCHAR(120) NOT NULL,
+    name VARCHAR(120) COLLATE utf8mb4_bin NOT NULL,
     status ENUM('candidate', 'approved', 'blocked') NOT NULL DEFAULT 'candidate',
     supplier_organisation_id INT UNSIGNED NULL,
     created_at DATETIME(3) NOT NULL,

@@ -16,7 +16,7 @@ export async function foundBuyer(): Promise<Record<"engineer" | "purchasing" | "
   await nameFounder();
   const founder = await personOf(admin.email);
   for (const [role, { name, email }] of [["engineer", engineer] as const, ["purchasing", purchasing] as const]) {
-    made("add a colleague", await addColleague(founder, filledForm({ email, name, role })));
+    if (await addColleague(founder, filledForm({ email, name, role }))) throw new Error(`${email} could not be added`);
     await setPassword(await mailedToken(email));
   }
   return {

@@ -1,6 +1,6 @@
 // Nobody finds what is not theirs: every route of app/routes.ts asked for by strangers, by nobody, and from another site.
 import assert from "node:assert/strict";
-import { demoIds, openActors, tableChecksums, type Actor } from "./access-actors";
+import { demoIds, openActors, openOwners, tableChecksums, type Actor } from "./access-actors";
 import { ADDRESSES, addressOf, standingOf, type IdName } from "./access-routes";
 import type { Journey, JourneyWorld, Step } from "./journey";
 
@@ -169,6 +169,38 @@ function steps(world: JourneyWorld): Step[] {
       },
     },
     { title: "no row has changed in any of this", run: () => walk.assertUnchanged() },
+    {
+      title: "the owners find every one of the rows that the others did not",
+      run: async () => {
+        const owners = await openOwners(world);
+        for (const address of ADDRESSES) {
+          const standing = standingOf(address);
+          if (standing.kind !== "id") continue;
+          const { rule } = standing;
+          const owner = standing.for === "buyer" ? owners.buyer : owners.supplier;
+          const actor = address.pattern.endsWith("/traces") ? owners.buyer : owner;
+          const attempt: Try = rule.postOnly ? { method: "POST", post: rule.post ?? {} } : { method: "GET" };
+          const { status } = await walk.ask(actor, addressOf(address.pattern, walk.realId(rule.id)), attempt);
+          const what = `${address.pattern} for ${actor.name}: ${status}`;
+          assert.ok(rule.postOnly ? status === 400 : status < 400, what); // the quote is closed: its files stay
+        }
+      },
+    },
+    {
+      title: "the buyer itself finds nothing of a quote that was not submitted",
+      run: async () => {
+        const { buyer, supplier } = await openOwners(world);
+        const draft = await demoIds(world, "draft");
+        const own = `/supplier/quotes/${draft.quote}`;
+        assert.equal((await walk.ask(supplier, own, { method: "GET" })).status, 200, "the draft's own supplier");
+        for (const address of ADDRESSES) {
+          const standing = standingOf(address);
+          const isOfQuote = standing.kind === "id" && ["quote", "file"].includes(standing.rule.id);
+          if (isOfQuote && !standing.rule.postOnly && standing.for !== "supplier")
+            await expectAbsent(walk, buyer, address.pattern, draft[standing.rule.id], { method: "GET" });
+        }
+      },
+    },
   ];
 }
 

@@ -70,11 +70,28 @@ async function cookieOf(world: JourneyWorld, email: string, password: string): P
   return cookie.join("; ");
 }
 
-/** Real ids of the demo's buyer and of what the supplier Halden gave it. */
-export async function demoIds(world: JourneyWorld): Promise<Readonly<Record<IdName, string>>> {
+/** The demo's engineer and the supplier Halden, whose rows the strangers ask for. */
+export async function openOwners(world: JourneyWorld): Promise<Readonly<Record<"buyer" | "supplier", Actor>>> {
+  const { engineer, halden } = PEOPLE;
+  return {
+    buyer: { name: "the buyer's engineer", kind: "buyer", cookie: await cookieOf(world, engineer.email, PASSWORD) },
+    supplier: { name: "the supplier itself", kind: "supplier", cookie: await cookieOf(world, halden.email, PASSWORD) },
+  };
+}
+
+/**
+ * Real ids of the demo's buyer and of what the supplier Halden gave it.
+ *
+ * @param which "submitted": of the quote that is in; "draft": of the one it still works on
+ */
+export async function demoIds(
+  world: JourneyWorld,
+  which: "submitted" | "draft" = "submitted",
+): Promise<Readonly<Record<IdName, string>>> {
+  const order = which === "submitted" ? "ASC" : "DESC";
   return withConnection(world.product.ownerUrl, async (connection) => {
     const one = async (sql: string): Promise<string> => {
-      const rows: { id: string }[] = await connection.query(`${sql} ORDER BY t.id LIMIT 1`, [
+      const rows: { id: string }[] = await connection.query(`${sql} ORDER BY t.id ${order} LIMIT 1`, [
         BUYER,
         PEOPLE.halden.email,
       ]);

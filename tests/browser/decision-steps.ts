@@ -85,6 +85,7 @@ export const decisionSteps = (world: JourneyWorld, scene: Scene): Step[] => [
     run: async () => {
       const page = await world.page("engineer");
       const table = page.getByRole("table", { name: "Comparison" });
+      await sees(table, KESTREL);
       const rows = await table.getByRole("row").allInnerTexts();
       const place = (text: string) => rows.findIndex((row) => plain(row).includes(text));
       const order = [place(HALDEN), place("Nonconforming"), place(KESTREL)];
@@ -112,8 +113,8 @@ export const decisionSteps = (world: JourneyWorld, scene: Scene): Step[] => [
       const page = await world.page("engineer");
       await page.getByRole("link", { name: "Recommend award" }).click();
       await page.waitForURL(/\/decision$/);
-      assert.ok(await page.getByLabel(KESTREL).isDisabled(), "a nonconforming quote can be chosen");
-      await page.getByLabel(HALDEN).check();
+      assert.ok(await page.getByRole("radio", { name: KESTREL }).isDisabled(), "a nonconforming quote can be chosen");
+      await page.getByRole("radio", { name: HALDEN }).check();
       await page.getByLabel("Reason").fill(REASON);
       await page.getByRole("button", { name: "Recommend award" }).click();
       await sees(page, REASON);

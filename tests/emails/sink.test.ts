@@ -110,7 +110,7 @@ box.quit()
 print(json.dumps(dict(count=count, size=size, sizes=sizes, ids=ids, body=[l.decode() for l in lines[lines.index(b"") + 1:]],
   octets=sum(len(l) + 2 for l in lines), top=[l.decode() for l in top[top.index(b"") + 1:]])))`;
   const { stdout } = await promisify(execFile)("python3", ["-c", script, String(sink.popPort)]);
-  const seen: { sizes: number[]; ids: string[]; octets: number } = JSON.parse(stdout);
+  const seen = JSON.parse(stdout) as { sizes: number[]; ids: string[]; octets: number };
   expect(seen).toMatchObject({ count: 2, body: [".dotted", "second line", "third line"], top: [".dotted"] });
   expect(seen.sizes[0]).toBe(seen.octets);
   expect(seen).toHaveProperty(

@@ -10,10 +10,11 @@ test("fields of a group come by row in the order of their index, and others are 
   ]);
 });
 
-test("thirty thousand fields of one row are read in well under a second", () => {
+test("thirty thousand fields of one row are read in a moment", () => {
   const letters = (number: number) => [...String(number)].map((digit) => "abcdefghij"[Number(digit)]).join("");
   const values = Object.fromEntries(Array.from({ length: 30_000 }, (_, at) => [`lines.0.${letters(at)}`, ""]));
   const begun = performance.now();
-  expect(Object.keys(groupRows(values, "lines")[0]?.fields ?? {})).toHaveLength(30_000);
-  expect(performance.now() - begun).toBeLessThan(1_000);
+  const [row] = groupRows(values, "lines");
+  expect(performance.now() - begun).toBeLessThan(5_000); // milliseconds; minutes where each field copies the row
+  expect(Object.keys(row?.fields ?? {}).length).toBe(30_000);
 });

@@ -64,6 +64,14 @@ test("a company already in the directory is found by its name in any case, its n
   expect(contacts.map(({ email }) => email)).toEqual(["ines@kestrel.example", "second@kestrel.example"]);
 });
 
+test("names that differ by an accent are two companies", async () => {
+  const { engineer, rfq } = await draft();
+  await add(engineer, rfq.publicId, { company: "Müller Filter", email: "one@example.test", index: 0 });
+  await add(engineer, rfq.publicId, { company: "Muller Filter", email: "two@example.test", index: 0 });
+  const names = (await Supplier.findAll({ order: [["id", "ASC"]], actor: engineer })).map(({ name }) => name);
+  expect(names).toEqual(["Müller Filter", "Muller Filter"]);
+});
+
 test("a row that is refused names its place, and no row of the post is kept", async () => {
   const { engineer, rfq } = await draft();
   await add(engineer, rfq.publicId, KESTREL);

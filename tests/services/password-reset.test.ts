@@ -94,6 +94,18 @@ test("a link sets the password once, ends all sessions, and only its hash is sto
   expect((await resetPassword(token, newPassword)).ok).toBe(false);
 });
 
+test("a sign-in that a reset overtook, its password checked before and its session begun after, opens none", async () => {
+  const { email, userId } = await person();
+  const checked = await signIn(signInRequest(email, PASSWORD));
+  const checkedHash = checked.ok ? checked.value.checkedHash : "";
+  const begin = () => startSession(userId, new Request("http://127.0.0.1/"), "127.0.0.1", checkedHash);
+  await begin();
+  await requestPasswordReset(email);
+  expect((await resetPassword(await mailedToken(), newPassword)).ok).toBe(true);
+  await expect(begin()).rejects.toMatchObject({ init: { status: 409 } });
+  expect(await Session.count({ where: { userId, revokedAt: null } })).toBe(0);
+});
+
 test("of twenty redemptions at once exactly one succeeds", async () => {
   const { email } = await person();
   await requestPasswordReset(email);

@@ -245,3 +245,29 @@ test("a revision superseded after the form was shown is refused when it is sent"
     errors: { form: [expect.stringContaining("replaced")] },
   });
 });
+
+test("a draft on a revision that was replaced meanwhile is not opened, and mails nobody", async () => {
+  const { engineer } = await buyerAndEngineer();
+  const { specification, revision } = await buildSpecification(engineer);
+  const rfqId = await create(engineer, specification.publicId);
+  await invite(engineer, rfqId, "one@example.test");
+  await revision.update({ status: "superseded" });
+  const opened = await openRfq(engineer, newIdempotencyKey(), rfqId);
+  expect(opened).toEqual({ ok: false, errors: { form: [expect.stringContaining("Revision A has been replaced")] } });
+  expect([await OutboxEmail.count(), await Rfq.count({ where: { status: "open" }, actor: engineer })]).toEqual([0, 0]);
+});
+
+test("eight RFQs of different buyers opened at once all open", async () => {
+  const ready = await Promise.all(
+    Array.from({ length: 8 }, async (_, k) => {
+      const { engineer } = await buyerAndEngineer();
+      const { specification } = await buildSpecification(engineer);
+      const rfqId = await create(engineer, specification.publicId);
+      await invite(engineer, rfqId, `one-${k}@example.test`, `two-${k}@example.test`);
+      return { engineer, rfqId };
+    }),
+  );
+  const opened = await Promise.all(ready.map(({ engineer, rfqId }) => openRfq(engineer, newIdempotencyKey(), rfqId)));
+  expect(opened.every((outcome) => outcome?.ok)).toBe(true);
+  expect(await OutboxEmail.count()).toBe(16);
+});

@@ -3,6 +3,7 @@ import { data, redirect } from "react-router";
 import { Button } from "~/components/button";
 import { Cell, HeadCell, Row, RowHead, Table } from "~/components/data-table";
 import { Field, PostForm, SelectField } from "~/components/form";
+import { Notice } from "~/components/notice";
 import { Page, Section } from "~/components/page";
 import { TitleBlock } from "~/components/title-block";
 import { addColleague, readOrganisation } from "~/services/organisation.server";
@@ -14,14 +15,14 @@ export const meta: Route.MetaFunction = () => [{ title: "Organisation · Tenderb
 
 export async function loader({ request, context }: Route.LoaderArgs) {
   const person = requireRight(context, request, "read-organisation");
-  return { ...(await readOrganisation(person)), mayAdd: may(person.role, "manage-users") };
+  const added = new URL(request.url).searchParams.get("added") === "1";
+  return { ...(await readOrganisation(person)), mayAdd: may(person.role, "manage-users"), added };
 }
 
 export async function action({ request, context }: Route.ActionArgs) {
   const person = requireRight(context, request, "manage-users");
-  const added = await addColleague(person, await request.formData());
-  if (!added.ok) return data(added.state ?? { values: {}, errors: added.errors }, { status: 400 });
-  return redirect("/organisation");
+  const refused = await addColleague(person, await request.formData());
+  return refused ? data(refused, { status: 400 }) : redirect("/organisation?added=1");
 }
 
 const RULES = {
@@ -65,7 +66,15 @@ export default function Organisation({ loaderData, actionData }: Route.Component
         </Table>
       </Section>
       {loaderData.mayAdd ? (
-        <Section title="Add a colleague" note="A mail with a link lets the person set a password.">
+        <Section
+          title="Add a colleague"
+          note="A mail with a link lets the person set a password. They are listed once they have."
+        >
+          {loaderData.added ? (
+            <div className="mb-4">
+              <Notice tone="signal">The mail is on its way.</Notice>
+            </div>
+          ) : null}
           <PostForm state={actionData} className="grid max-w-200 gap-4 tablet:grid-cols-3">
             <Field name="name" label="Name" autoComplete="off" required />
             <Field name="email" label="E-mail" type="email" autoComplete="off" required />

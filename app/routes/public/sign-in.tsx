@@ -19,12 +19,13 @@ export function loader({ request, context }: Route.LoaderArgs) {
 }
 
 export async function action({ request, context }: Route.ActionArgs) {
-  const { ip } = context.get(requestFactsContext);
-  const outcome = await signIn(request);
+  const { ip, requestId } = context.get(requestFactsContext);
+  const outcome = await signIn(request, { requestId, ...(ip ? { ip } : {}) });
   if (!outcome.ok) return data({ values: outcome.values ?? {}, errors: outcome.errors }, { status: 400 });
-  const { userId, organisationKind, returnTo } = outcome.value;
+  const { userId, organisationKind, returnTo, checkedHash } = outcome.value;
   const home = organisationKind === "buyer" ? "/open-points" : "/supplier/open-points";
-  return redirect(safeReturn(returnTo, home), { headers: { "Set-Cookie": await startSession(userId, request, ip) } });
+  const cookie = await startSession(userId, request, ip, checkedHash);
+  return redirect(safeReturn(returnTo, home), { headers: { "Set-Cookie": cookie } });
 }
 
 export default function SignIn({ loaderData, actionData }: Route.ComponentProps) {
