@@ -19,7 +19,7 @@ export async function supplierByName(
   const lock = transaction.LOCK.UPDATE;
   // One at a time for each buyer: two who add the same new company meet here, and the second finds the first's entry.
   await Organisation.findByPk(person.organisationId, { actor: person, transaction, lock, rejectOnEmpty: true });
-  const entries = await Supplier.findAll({ actor: person, transaction, lock });
+  const entries = await Supplier.findAll({ actor: person, transaction });
   const alike = entries.find((entry) => entry.name.toLowerCase() === name.toLowerCase());
   if (alike) return alike;
   const entry = { buyerOrganisationId: person.organisationId, name, publicId: newPublicId(), createdAt: now };

@@ -1,5 +1,6 @@
-// The only place transactions start: one retry where the database asks for one.
-import { BaseError, type Transaction } from "sequelize";
+// The only place transactions start: tried again where the database asks for it.
+import { setTimeout as delay } from "node:timers/promises";
+import { BaseError, Transaction } from "sequelize";
 import { sequelize } from "~/db/connection.server";
 
 /** Deadlock, lock wait timeout, and a row changed since the snapshot (innodb_snapshot_isolation). */
@@ -11,12 +12,21 @@ export function databaseErrorNumber(error: unknown): number | undefined {
   return typeof original.errno === "number" ? original.errno : undefined;
 }
 
-/** Runs `work` in a transaction and commits what it did, or nothing. Work may run twice, so it changes nothing but the database. */
+const MOST_TRIES = 4;
+const LONGEST_WAIT_MS = 60;
+
+/**
+ * Runs `work` in a transaction and commits what it did, or nothing. Work may run several times, so it changes nothing but the
+ * database. READ COMMITTED: every use case locks the row it decides by and reads again, so each statement is to see what is
+ * committed, and gaps between rows are nobody's to lock.
+ */
 export async function inTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
-  try {
-    return await sequelize.transaction(work);
-  } catch (error) {
-    if (!TRY_AGAIN.has(databaseErrorNumber(error) ?? 0)) throw error;
-    return sequelize.transaction(work);
+  for (let tries = 1; ; tries += 1) {
+    try {
+      return await sequelize.transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED }, work);
+    } catch (error) {
+      if (tries === MOST_TRIES || !TRY_AGAIN.has(databaseErrorNumber(error) ?? 0)) throw error;
+      await delay(Math.random() * LONGEST_WAIT_MS * tries);
+    }
   }
 }

@@ -60,6 +60,7 @@ test("a refusal moves focus to the summary, keeps the input, and the form can be
   expect(await page.getByLabel("Title").evaluate((element) => element === document.activeElement)).toBe(true);
   expect(await page.getByLabel("Title").inputValue()).toBe("A title");
   await page.getByRole("button", { name: "Release" }).click();
+  await page.waitForFunction("window.seen.posts.length > 1");
   expect(await posts(page)).toEqual(["save", "release"]);
   await page.close();
 });
