@@ -8,6 +8,7 @@ import { formatWidth } from "./words";
 import { passbands } from "./walls";
 
 const TICK_LENGTH = 5;
+const ARROWHEAD_LENGTH = 9;
 
 /** Grid lines at every tick of both axes. */
 export function Grid({ layout, panel }: { layout: DrawingLayout; panel: PanelLayout }) {
@@ -175,10 +176,14 @@ function DimensionLine({ band, layout, y }: { band: Band; layout: DrawingLayout;
   const to = layout.toX(band[1]);
   const text = formatWidth(band[1] - band[0]);
   const inside = to - from >= 28;
-  const fits = to - from >= estimateTextWidth(text, 12) || inside;
+  const textWidth = estimateTextWidth(text, 12);
+  const fits = to - from >= textWidth || inside;
+  // A word wider than what lies between the arrowheads goes up, clear of them and of the lines they point at.
+  const isClear = inside && to - from >= textWidth + 2 * ARROWHEAD_LENGTH;
+  const [lineTop, textBase] = isClear ? [y - 6, y - 5] : [y - 4, y - 8];
   return (
     <g stroke="var(--color-quiet)" fill="var(--color-quiet)">
-      <path d={`M${from} ${y - 6}V${y + 8}M${to} ${y - 6}V${y + 8}`} fill="none" />
+      <path d={`M${from} ${lineTop}V${y + 8}M${to} ${lineTop}V${y + 8}`} fill="none" />
       {inside ? (
         <>
           <path d={`M${from} ${y}H${to}`} fill="none" />
@@ -193,7 +198,7 @@ function DimensionLine({ band, layout, y }: { band: Band; layout: DrawingLayout;
         </>
       )}
       {layout.phone && !fits ? null : (
-        <text x={(from + to) / 2} y={y - 5} textAnchor="middle" fill="var(--color-ink)" stroke="none">
+        <text x={(from + to) / 2} y={textBase} textAnchor="middle" fill="var(--color-ink)" stroke="none">
           {text}
         </text>
       )}
@@ -202,5 +207,5 @@ function DimensionLine({ band, layout, y }: { band: Band; layout: DrawingLayout;
 }
 
 function Arrowhead({ x, y, direction }: { x: number; y: number; direction: 1 | -1 }) {
-  return <path d={`M${x} ${y}l${9 * direction} -2.5v5z`} stroke="none" />;
+  return <path d={`M${x} ${y}l${ARROWHEAD_LENGTH * direction} -2.5v5z`} stroke="none" />;
 }

@@ -29,8 +29,8 @@ export function ComplianceMatrix(props: MatrixProps) {
     <Table label="Compliance matrix" rows="two-line" scroll="inside">
       <thead>
         <tr>
-          <td colSpan={2} className="h-6 border-b-0" />
-          <td className="h-6 border-b-0 max-tablet:hidden" />
+          <td className="sticky top-0 left-0 z-3 h-6 border-b-0 bg-sheet" />
+          <td colSpan={2} className="h-6 border-b-0 max-tablet:hidden" />
           {units.map(({ unit, temperatures }) => (
             <HeadCell
               key={unit}
@@ -45,8 +45,10 @@ export function ComplianceMatrix(props: MatrixProps) {
           <td className="h-6 border-b-0 data-table-parted" />
         </tr>
         <tr>
-          <HeadCell className="top-6 w-11">Line</HeadCell>
-          <HeadCell className="top-6">Requirement</HeadCell>
+          <HeadCell className="top-6 w-11 max-tablet:w-36">
+            Line<span className="tablet:hidden">, limit</span>
+          </HeadCell>
+          <HeadCell className="top-6 max-tablet:hidden">Requirement</HeadCell>
           <HeadCell className="top-6 max-tablet:hidden">Limit</HeadCell>
           {units.flatMap(({ unit, temperatures }) =>
             temperatures.map(({ celsius, predicted }, place) => (
@@ -75,10 +77,13 @@ function LineRow({ line, units, rule, lowestTestFrequency, selected }: MatrixPro
   const columns = units.reduce((count, { temperatures }) => count + temperatures.length, 0);
   return (
     <Row>
-      <RowHead>{line.lineNumber}</RowHead>
-      <Cell className="max-w-64 min-w-44 py-1 max-tablet:min-w-38">
+      <RowHead className="max-tablet:max-w-36 max-tablet:min-w-36 max-tablet:py-1 max-tablet:pr-2!">
+        {line.lineNumber}
+        <span className="font-normal tablet:hidden"> {words.requirement}</span>
+        <span className="block text-12 font-normal text-quiet tablet:hidden">{words.limit}</span>
+      </RowHead>
+      <Cell className="max-w-64 min-w-44 py-1 max-tablet:hidden">
         {words.band === "" ? words.requirement : <TwoLines upper={words.requirement} lower={words.band} />}
-        <span className="block text-12 tablet:hidden">{words.limit}</span>
       </Cell>
       <Cell className="whitespace-nowrap max-tablet:hidden">{words.limit}</Cell>
       {isMeasured(line.definition) ? (
@@ -147,7 +152,9 @@ function DeclaredWords({ line }: { line: ComplianceLine }) {
     exception: `exception${text === null ? "" : `: ${text}`}; not accepted`,
   };
   return (
-    <span className={`flex items-center gap-2 ${line.verdict === "declared" ? "" : verdictColour(line.verdict)}`}>
+    <span
+      className={`flex items-center gap-2 max-tablet:max-w-48 ${line.verdict === "declared" ? "" : verdictColour(line.verdict)}`}
+    >
       <VerdictMark verdict={line.verdict} size={12} silent />
       <span className="min-w-0">{words[line.verdict] ?? "not answered"}</span>
     </span>

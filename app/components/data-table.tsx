@@ -15,15 +15,27 @@ interface TableProps {
    * @default "page"
    */
   scroll?: "page" | "inside";
+  /**
+   * On phones each row is a block of two columns without a head, its cells in the order of the row unless an `order` says
+   * otherwise; `data-label` of a cell stands over it there. @default false
+   */
+  stacks?: boolean;
   className?: string;
   /** `<thead>` and `<tbody>`. */
   children: ReactNode;
 }
 
-export function Table({ label, rows = "plain", scroll = "page", className = "", children }: TableProps) {
+export function Table({ label, rows = "plain", scroll = "page", stacks, className = "", children }: TableProps) {
   return (
     <div role="region" aria-label={label} tabIndex={0} className="data-table-frame" data-scroll={scroll}>
-      <table aria-label={label} className={`data-table ${className}`} data-rows={rows}>
+      <table
+        // Said because a browser may drop it from a table that is laid out as blocks, here and of its rows and cells.
+        role="table"
+        aria-label={label}
+        className={`data-table ${className}`}
+        data-rows={rows}
+        data-stacks={stacks ? "" : undefined}
+      >
         {children}
       </table>
     </div>
@@ -47,7 +59,7 @@ const cellClasses = (figure: boolean | undefined, parted: boolean | undefined, c
 export function HeadCell({ figure, parted, sort, className, children, ...rest }: HeadCellProps) {
   const sorting = sort === undefined ? {} : { "aria-sort": sort.direction ?? ("none" as const) };
   return (
-    <th scope="col" {...rest} {...sorting} className={cellClasses(figure, parted, className)}>
+    <th role="columnheader" scope="col" {...rest} {...sorting} className={cellClasses(figure, parted, className)}>
       {sort === undefined ? children : <SortLink sort={sort}>{children}</SortLink>}
     </th>
   );
@@ -68,21 +80,23 @@ function SortLink({ sort, children }: { sort: NonNullable<HeadCellProps["sort"]>
 }
 
 export function Row({ selected, ...rest }: ComponentProps<"tr"> & { selected?: boolean }) {
-  return <tr {...rest} data-selected={selected ? "" : undefined} />;
+  return <tr role="row" {...rest} data-selected={selected ? "" : undefined} />;
 }
 
 /** The first cell of a row: line number, supplier, unit. */
 export function RowHead({ className, ...rest }: ComponentProps<"th">) {
-  return <th scope="row" {...rest} className={className} />;
+  return <th role="rowheader" scope="row" {...rest} className={className} />;
 }
 
 interface CellProps extends ComponentProps<"td"> {
   figure?: boolean;
   parted?: boolean;
+  /** Where the table stacks: what the head says at other widths. */
+  "data-label"?: string;
 }
 
 export function Cell({ figure, parted, className, ...rest }: CellProps) {
-  return <td {...rest} className={cellClasses(figure, parted, className)} />;
+  return <td role="cell" {...rest} className={cellClasses(figure, parted, className)} />;
 }
 
 /** A line over the rows of one kind: "2 Passband". */

@@ -1,5 +1,6 @@
 // A figure with its unit, an uncertainty where it has one, and an instant: written whole, never broken over lines.
-import { formatDateTime, formatLevel, formatMargin, formatNumber, formatRelative } from "./format";
+import type { RfqState } from "~/workflow/rfq";
+import { formatDateTime, formatDue, formatLevel, formatMargin, formatNumber, formatRelative } from "./format";
 import { verdictColour, type ShownVerdict } from "./verdict-mark";
 
 interface FigureProps {
@@ -60,6 +61,16 @@ export function Instant({ at, zone, now }: InstantProps) {
     <time dateTime={at}>
       {formatDateTime(at, zone)}
       {now === undefined ? null : <span className="text-quiet"> ({formatRelative(at, now)})</span>}
+    </time>
+  );
+}
+
+/** An RFQ's due date with "in 3 days" or, where it was closed before that, "closed early". */
+export function DueDate({ at, zone, now, state }: Required<InstantProps> & { state: RfqState }) {
+  return (
+    <time dateTime={at}>
+      {formatDateTime(at, zone)}
+      <span className="text-quiet"> ({formatDue(at, now, state === "open" || state === "draft")})</span>
     </time>
   );
 }

@@ -183,6 +183,16 @@ export function formatDateTime(instant: Instant, zone: string): string {
   return `${formatDate(instant, zone)} ${hour}:${minute} ${offset}`;
 }
 
+/**
+ * Beside an RFQ's due date: "in 3 days", "2 hours ago", or "closed early" where it takes no quotes any more before that date.
+ *
+ * @param isRunning it is open, or not opened yet
+ */
+export function formatDue(dueAt: Instant, now: Instant, isRunning: boolean): string {
+  const isAhead = new Date(dueAt).getTime() > new Date(now).getTime();
+  return isAhead && !isRunning ? "closed early" : formatRelative(dueAt, now);
+}
+
 const spans: readonly (readonly [ms: number, one: string, many: string])[] = [
   [86_400_000, "day", "days"],
   [3_600_000, "hour", "hours"],

@@ -15,6 +15,8 @@ interface AskedRow {
   readonly isThere: boolean;
 }
 
+const counted = (count: number, noun: string): string => `${count} ${noun}${count === 1 ? "" : "s"}`;
+
 /** What is asked, in words, each with whether it is there. */
 export function askedRows({
   units,
@@ -23,20 +25,19 @@ export function askedRows({
   withoutSerial,
   withoutTemperature,
 }: DataAskedFacts): AskedRow[] {
-  const files = (count: number) => (count === 1 ? "1 file" : `${count} files`);
   return [
-    { words: `${units} of ${unitsAsked} units asked`, isThere: units >= unitsAsked },
+    { words: `${counted(units, "unit")}, ${unitsAsked} asked`, isThere: units >= unitsAsked },
     ...(overRange === null
       ? []
       : [
           {
-            words: `${overRange.units} of ${overRange.asked} over temperature: ambient and both ends of the range`,
+            words: `${counted(overRange.units, "unit")} over temperature, ${overRange.asked} asked: ambient and both ends of the range`,
             isThere: overRange.units >= overRange.asked,
           },
         ]),
-    ...(withoutSerial > 0 ? [{ words: `${files(withoutSerial)} without a unit`, isThere: false }] : []),
+    ...(withoutSerial > 0 ? [{ words: `${counted(withoutSerial, "file")} without a unit`, isThere: false }] : []),
     ...(withoutTemperature > 0
-      ? [{ words: `${files(withoutTemperature)} without a temperature`, isThere: false }]
+      ? [{ words: `${counted(withoutTemperature, "file")} without a temperature`, isThere: false }]
       : []),
   ];
 }

@@ -3,7 +3,7 @@ import { INCOTERMS } from "~/commerce/incoterms";
 import { SETUP_FIELDS } from "~/forms/setup";
 import type { Setup } from "~/rf/index";
 import { formatQuantity } from "~/rf/quantity";
-import { Field, SelectField, TextAreaField } from "./form";
+import { Field, SelectField, TextAreaField, useField } from "./form";
 import { formatNumber } from "./format";
 import { Section } from "./page";
 
@@ -85,13 +85,15 @@ const BASES = [
 ];
 
 export function BasisFields({ assumedSetup }: { assumedSetup: Setup }) {
+  const { value: basis = "" } = useField("basis");
+  const bases = basis === "" ? [{ value: "", label: "" }, ...BASES] : BASES;
   return (
     <Section
       title="Measured data and setup"
       note="A field left blank takes what the RFQ assumes, and results that rest on it are marked."
     >
       <div className="grid grid-cols-1 gap-4 tablet:grid-cols-2 desktop:grid-cols-4">
-        <SelectField name="basis" label="Basis of the data" options={BASES} />
+        <SelectField name="basis" label="Basis of the data" options={bases} />
         {SETUP_FIELDS.map(({ field, label, unit, kind }) => (
           <Field
             key={field}

@@ -59,7 +59,7 @@ export function DeclarationsView({ terms, declared }: { terms: QuoteTerms; decla
     const answer = answers.get(lineKey);
     return [`${lineNumber} ${name}, ${limit}`, answer ? declarationWords(answer) : "not answered"];
   });
-  return <QuoteFacts label="Declarations" rows={rows} />;
+  return <QuoteFacts label="Declarations" rows={rows} longNames />;
 }
 
 function declarationWords({ answer, text }: QuoteTerms["declarations"][number]): ReactNode {

@@ -15,7 +15,7 @@ export interface HistoryEventView {
 
 export function HistoryTable({ events, zone }: { events: readonly HistoryEventView[]; zone: string }) {
   return (
-    <Table label="History" className="min-w-180">
+    <Table label="History" stacks className="tablet:min-w-180">
       <thead>
         <tr>
           <HeadCell className="w-56">When</HeadCell>
@@ -26,11 +26,11 @@ export function HistoryTable({ events, zone }: { events: readonly HistoryEventVi
       <tbody>
         {events.map((event) => (
           <Row key={event.id}>
-            <Cell className="whitespace-nowrap tabular-nums">
+            <Cell className="whitespace-nowrap tabular-nums max-tablet:col-span-2 max-tablet:text-quiet">
               <Instant at={event.at} zone={zone} />
             </Cell>
-            <Cell>{whoDid(event)}</Cell>
-            <Cell className="whitespace-pre-line">{whatHappened(event, zone)}</Cell>
+            <Cell className="max-tablet:col-span-2">{whoDid(event)}</Cell>
+            <Cell className="whitespace-pre-line max-tablet:col-span-2">{whatHappened(event, zone)}</Cell>
           </Row>
         ))}
       </tbody>

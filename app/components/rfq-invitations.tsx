@@ -36,7 +36,7 @@ const WORDS = {
 
 export function InvitationTable({ entries, zone, now }: InvitationTableProps) {
   return (
-    <Table label="Invitations" rows="two-line" className="min-w-200">
+    <Table label="Invitations" rows="two-line" stacks className="tablet:min-w-200">
       <thead>
         <tr>
           <HeadCell>Supplier</HeadCell>
@@ -51,14 +51,14 @@ export function InvitationTable({ entries, zone, now }: InvitationTableProps) {
             <RowHead>
               <TwoLines upper={entry.company} lower={entry.email} />
             </RowHead>
-            <Cell>
+            <Cell className="max-tablet:order-1 max-tablet:col-span-2">
               <TwoLines upper={WORDS[entry.state]} lower={<Since entry={entry} zone={zone} now={now} />} />
               {entry.reason === null ? null : (
                 <span className="block max-w-120 pb-1.5 text-12 whitespace-pre-line">“{entry.reason}”</span>
               )}
             </Cell>
-            <Cell>{entry.hasQuote ? "submitted" : "–"}</Cell>
-            <Cell>
+            <Cell data-label="Quote">{entry.hasQuote ? "submitted" : "–"}</Cell>
+            <Cell className="max-tablet:order-2 max-tablet:col-span-2">
               <Steps entry={entry} />
             </Cell>
           </Row>

@@ -1,7 +1,7 @@
 // What an RFQ asks for, as its overview shows it: text, quantities, measured data, assumed setup.
 import type { ReactNode } from "react";
 import { Cell, Row, RowHead, Table } from "./data-table";
-import { Instant } from "./figure";
+import { DueDate, Instant } from "./figure";
 import { formatNumber } from "./format";
 import { Section, Split } from "./page";
 import type { RfqBlockHead } from "./rfq-block";
@@ -66,7 +66,7 @@ function asked(head: RfqBlockHead, terms: RfqTermsData): FactRow[] {
         ? `ambient ${celsius(terms.ambient)} °C only: the specification gives no range`
         : `${unitsOverRange} at ${celsius(terms.ambient)} °C and at both ends of ${celsius(range[0])} to ${celsius(range[1])} °C`,
     ],
-    ["Quotes due", <Instant key="due" at={head.dueAt} zone={dueZone} now={terms.now} />],
+    ["Quotes due", <DueDate key="due" at={head.dueAt} zone={dueZone} now={terms.now} state={head.state} />],
     ["Written", instant(terms.createdAt)],
     ...(terms.openedAt === null ? [] : [["Opened", instant(terms.openedAt)] as const]),
     ...(terms.closedAt === null ? [] : [["Closed", instant(terms.closedAt)] as const]),

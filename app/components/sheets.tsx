@@ -11,7 +11,7 @@ export interface Sheet {
 export function Sheets({ items, label = "Sheets" }: { items: readonly Sheet[]; label?: string }) {
   return (
     <nav aria-label={label} className="print-hidden border-b border-rule">
-      <ul className="flex flex-wrap gap-x-7">
+      <ul className="flex flex-wrap gap-x-7 max-tablet:flex-nowrap max-tablet:gap-x-3.5 max-tablet:overflow-x-auto">
         {items.map((item) => (
           <li key={item.to}>
             <NavLink

@@ -3,7 +3,7 @@ import type { ReactNode } from "react";
 import { href, Link } from "react-router";
 import type { QuoteState } from "~/workflow/quote";
 import type { RfqState } from "~/workflow/rfq";
-import { Instant } from "./figure";
+import { DueDate, Instant } from "./figure";
 import { formatNumber } from "./format";
 import { DECISION_RULES } from "./rfq-block";
 import { Sheets } from "./sheets";
@@ -84,7 +84,10 @@ export function SupplierQuoteBlock({ head, sheet, verdict, actions }: SupplierQu
           },
           { label: "Decision rule", value: DECISION_RULES[head.decisionRule] },
           { label: "Quantity", value: formatNumber(head.quantity, 0) },
-          { label: "Due", value: <Instant at={head.dueAt} zone={head.dueZone} now={head.now} /> },
+          {
+            label: "Due",
+            value: <DueDate at={head.dueAt} zone={head.dueZone} now={head.now} state={head.rfqState} />,
+          },
           submission(head),
         ]}
         actions={actions}

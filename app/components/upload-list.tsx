@@ -49,7 +49,7 @@ export function UploadList({ entries, canEdit, errors = {} }: UploadListProps) {
           Save units and temperatures
         </Button>
       </noscript>
-      <Table label="Measured files" rows="two-line">
+      <Table label="Measured files" rows="two-line" stacks>
         <thead>
           <tr>
             <HeadCell>File</HeadCell>
@@ -97,17 +97,17 @@ function FileRow({ entry, canEdit, errors }: { entry: UploadedFile; canEdit: boo
   const shared = { entry, canEdit, onSave: save, isBusy: fetcher.state !== "idle" };
   return (
     <Row className={fetcher.formData?.get("intent") === "remove" ? "opacity-50" : ""}>
-      <RowHead className="min-w-44 py-1.5">
+      <RowHead className="tablet:min-w-44 tablet:py-1.5">
         <a href={href("/files/:fileId", { fileId: entry.fileId })} className="break-all">
           {entry.fileName}
         </a>
         <Notes notes={entry.notes} />
         {own.form ? <FieldError id={`form-${entry.publicId}`}>{own.form.join(" ")}</FieldError> : null}
       </RowHead>
-      <Cell className="py-1">
+      <Cell className="max-tablet:order-2 tablet:py-1" data-label="Unit, serial">
         <LabelField {...shared} ref={serial} name="serial" label="Unit" value={entry.serial ?? ""} error={own.serial} />
       </Cell>
-      <Cell className="py-1">
+      <Cell className="max-tablet:order-3 max-tablet:w-34! tablet:py-1" data-label="Temperature, °C">
         <LabelField
           {...shared}
           ref={temperature}
@@ -118,16 +118,16 @@ function FileRow({ entry, canEdit, errors }: { entry: UploadedFile; canEdit: boo
           figure
         />
       </Cell>
-      <Cell figure className="py-1.5">
+      <Cell figure className="max-tablet:order-4 max-tablet:text-left! tablet:py-1.5" data-label="Sweep">
         <TwoLines upper={formatBand(entry.sweep)} lower={`${formatNumber(entry.points, 0)} points`} />
       </Cell>
-      <Cell className="pl-6">
+      <Cell className="max-tablet:order-1 max-tablet:justify-self-end tablet:pl-6">
         {entry.verdict === null ? <span className="text-quiet">not scored</span> : <Verdict verdict={entry.verdict} />}
       </Cell>
-      <Cell className="py-1.5">
+      <Cell className="max-tablet:order-5 max-tablet:w-34! tablet:py-1.5" data-label="Worst line, margin">
         <WorstLine entry={entry} />
       </Cell>
-      <Cell className="text-right">
+      <Cell className="text-right max-tablet:order-6 max-tablet:col-span-2">
         {canEdit ? (
           <RemoveButton
             entry={entry}
@@ -168,7 +168,7 @@ interface LabelFieldProps {
 
 /** Borderless until it is pointed at; one that is missing stands out. */
 function LabelField({ ref, entry, canEdit, name, label, value, error, isBusy, figure, onSave }: LabelFieldProps) {
-  if (!canEdit) return <span className={figure ? "block text-right tabular-nums" : ""}>{value || "–"}</span>;
+  if (!canEdit) return <span className={figure ? "block tabular-nums tablet:text-right" : ""}>{value || "–"}</span>;
   const id = `${name}-${entry.publicId}`;
   const border = error || value === "" ? "border-fail" : "border-transparent hover:border-edge focus:border-edge";
   return (

@@ -10,8 +10,9 @@ export interface SweepLabelInput {
   readonly temperature: string | null;
 }
 
-const COLDEST = -270;
-const HOTTEST = 500;
+/** °C: what lies beyond is no temperature of a measurement. */
+export const COLDEST = -270;
+export const HOTTEST = 500;
 
 const temperatureField = z
   .string()

@@ -3,7 +3,7 @@ import { z } from "zod";
 import type { FieldErrors } from "~/forms/form";
 import { addError, collect, optionalQuantityField, quantityField, textField, type FormValues } from "~/forms/fields";
 import type { Band, Limit, Requirement } from "~/rf/contract";
-import { formatBand, formatQuantity, type LevelMeaning } from "~/rf/quantity";
+import { formatBand, formatQuantity, parseQuantity, type LevelMeaning } from "~/rf/quantity";
 
 /** A line the supplier states instead of measuring: what, and the limit in words. */
 export interface DeclaredRequirement {
@@ -250,7 +250,7 @@ export function lineToValues(line: SpecificationRequirement): FormValues {
     from: frequencyText(line.band[0]),
     to: frequencyText(line.band[1]),
     temperature: line.temperature ?? "",
-    ...limitTexts("min" in line ? line.min : line.max, line.band),
+    ...limitTexts("min" in line ? line.min : line.max, line.band, kind === "return-loss" ? returnLossText : levelText),
   };
   if (line.kind === "return-loss") values.port = String(line.port);
   if (line.kind === "ripple" && line.window !== undefined) values.window = frequencyText(line.window);
@@ -261,11 +261,27 @@ export function lineToValues(line: SpecificationRequirement): FormValues {
   return values;
 }
 
-function limitTexts(limit: Limit, band: Band): FormValues {
-  if (typeof limit === "number") return { limit: formatQuantity(limit, "level") };
+const levelText = (value: number): string => formatQuantity(value, "level");
+
+/** Decimals a return loss is typed with at most; one with more was most likely typed as a VSWR. */
+const MOST_DECIMALS = 4;
+
+/** A return loss in dB, or as the VSWR it was typed as where that is shorter and reads back to the same number. */
+function returnLossText(value: number): string {
+  const text = levelText(value);
+  if (value === Number(value.toFixed(MOST_DECIMALS))) return text;
+  const reflection = 10 ** (-value / 20);
+  const ratio = (1 + reflection) / (1 - reflection);
+  const written = `${Number(ratio.toFixed(MOST_DECIMALS))}:1`;
+  const read = parseQuantity(written, { kind: "level", meaning: "return-loss" });
+  return read.ok && read.value === value ? written : text;
+}
+
+function limitTexts(limit: Limit, band: Band, text: (value: number) => string): FormValues {
+  if (typeof limit === "number") return { limit: text(limit) };
   const [first, last, ...more] = limit.points;
   if (!first || !last || more.length > 0 || limit.scale !== "linear" || first[0] !== band[0] || last[0] !== band[1]) {
     throw new RangeError(`The form shows a slope from edge to edge of ${formatBand(band)} only`);
   }
-  return { limit: formatQuantity(first[1], "level"), limitEnd: formatQuantity(last[1], "level") };
+  return { limit: text(first[1]), limitEnd: text(last[1]) };
 }

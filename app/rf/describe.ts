@@ -32,9 +32,15 @@ export function formatLevel(value: number): string {
   return formatQuantity(value, "level", { decimals: 2 });
 }
 
+/** Stretches named in a reason: a sweep may have thousands of holes, and a sentence is read and stored. */
+const MOST_NAMED = 20;
+
 export function describeMissing(missing: readonly Band[]): string {
-  const stretches = missing.map(([from, to]) => formatBand([Number(from.toPrecision(12)), Number(to.toPrecision(12))]));
-  return `Not covered: ${stretches.join(", ")}.`;
+  const stretches = missing
+    .slice(0, MOST_NAMED)
+    .map(([from, to]) => formatBand([Number(from.toPrecision(12)), Number(to.toPrecision(12))]));
+  const others = missing.length > MOST_NAMED ? ` and ${missing.length - MOST_NAMED} more stretches` : "";
+  return `Not covered: ${stretches.join(", ")}${others}.`;
 }
 
 export function describePartial(

@@ -1,11 +1,11 @@
 // Scores a lot: every requirement on every measured unit and temperature, predictions, and the roll-up of each line.
 import type { LotOptions, Measurement, Requirement, Row } from "./contract.ts";
-import { prepareMeasurements, scorerOf, type PreparedMeasurement } from "./lot-measurement.ts";
+import { prepareMeasurements, scorerOf } from "./lot-measurement.ts";
 import { predictionsOf } from "./lot-predict.ts";
 import { capped, isMeasuredBasis, rollUp, type ScoredCell } from "./lot-roll-up.ts";
 import { isScored, scopeOf } from "./lot-temperature.ts";
 import { checkRequirement } from "./requirement-check.ts";
-import { sameData } from "./same-data.ts";
+import { identicalUnits } from "./same-data.ts";
 
 /**
  * One row per requirement, in their order; in each a cell per measurement, then the predicted ones. Measurements of one
@@ -24,7 +24,8 @@ export function evaluateLot(
   const prepared = prepareMeasurements(measurements, options);
   const measured = prepared.map((measurement) => ({ ...measurement, score: scorerOf(measurement, options) }));
   const predictions = predictionsOf(prepared, options);
-  const aliases = options.range === undefined ? new Map<string, string>() : identicalUnits(prepared);
+  const files = prepared.flatMap(({ unit, sweeps }) => sweeps.map(({ prepared: { network } }) => ({ unit, network })));
+  const aliases = options.range === undefined ? new Map<string, string>() : identicalUnits(files);
 
   return requirements.map((requirement) => {
     const scope = scopeOf(requirement, options);
@@ -42,17 +43,4 @@ export function evaluateLot(
     });
     return rollUp(requirement, [...cells, ...predicted], options, aliases);
   });
-}
-
-/** Units whose data is that of an earlier unit to the bit, each with that unit's name: they count as one. */
-function identicalUnits(measurements: readonly PreparedMeasurement[]): Map<string, string> {
-  const files = measurements.flatMap(({ unit, sweeps }) => sweeps.map(({ prepared }) => ({ unit, prepared })));
-  const aliases = new Map<string, string>();
-  for (const [earlier, later] of sameData(files.map(({ prepared }) => prepared.network))) {
-    const original = files[earlier]?.unit;
-    const copy = files[later]?.unit;
-    if (original === undefined || copy === undefined || original === copy || aliases.has(copy)) continue;
-    aliases.set(copy, aliases.get(original) ?? original);
-  }
-  return aliases;
 }

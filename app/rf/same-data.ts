@@ -16,6 +16,23 @@ export function sameData(networks: readonly TwoPort[]): (readonly [number, numbe
   return pairs.sort((one, other) => one[0] - other[0] || one[1] - other[1]);
 }
 
+/** Units whose data is that of another unit to the bit, each with the name they all count under: they count as one. */
+export function identicalUnits(
+  files: readonly { readonly unit: string; readonly network: TwoPort }[],
+): Map<string, string> {
+  const aliases = new Map<string, string>();
+  const counted = (unit: string): string => {
+    const other = aliases.get(unit);
+    return other === undefined ? unit : counted(other);
+  };
+  for (const [earlier, later] of sameData(files.map(({ network }) => network))) {
+    const original = counted(files[earlier]?.unit ?? "");
+    const copy = counted(files[later]?.unit ?? "");
+    if (original !== copy) aliases.set(copy, original);
+  }
+  return new Map([...aliases.keys()].map((unit) => [unit, counted(unit)]));
+}
+
 /** The bits of the nine columns as 32-bit words. */
 function columnsOf({ frequency, s11, s21, s12, s22 }: TwoPort): Uint32Array[] {
   const bits = ({ buffer, byteOffset, length }: Series) => new Uint32Array(buffer, byteOffset, 2 * length);

@@ -9,6 +9,7 @@ import {
   QuoteVersion,
   RfqQuantity,
   Supplier,
+  type QuoteLineResult,
   type Rfq,
 } from "~/db/models";
 import type { LineVerdict } from "~/emails/index";
@@ -187,10 +188,13 @@ function scoreFigures(score: QuoteScore | undefined, lines: readonly Specificati
     margins: lines.flatMap(({ lineKey, lineNumber, definition }) => {
       const result = definition.kind === "declared" ? undefined : score.lines.get(lineKey);
       const shown = result && measuredVerdict(lineVerdict(result.verdict));
-      return shown ? [{ lineNumber, credited: result.creditedMargin ?? NaN, verdict: shown }] : [];
+      return shown ? [{ lineNumber, credited: result.creditedMargin ?? endless(result), verdict: shown }] : [];
     }),
   };
 }
+
+/** A margin without end has no parts of full credit, and is the least there is all the same. */
+const endless = (result: QuoteLineResult): number => (worstCell(result)?.result.margin === -Infinity ? -Infinity : NaN);
 
 const measuredVerdict = (verdict: LineVerdict): Verdict | null =>
   verdict === "declared" || verdict === "exception" ? null : verdict;
@@ -258,7 +262,8 @@ export function sortQuotes<Q extends ComparedQuote>(
   direction: "ascending" | "descending",
 ): Q[] {
   const sign = direction === "ascending" ? 1 : -1;
-  const lacks = (quote: Q) => Number(sort === "cost" ? !quote.cost : sort === "margin" && !quote.worst);
+  const lacks = ({ cost, worst }: Q) =>
+    Number(sort === "cost" ? !cost : sort === "margin" && (worst?.creditedMargin ?? null) === null);
   return [...quotes].sort(
     (a, b) =>
       lacks(a) - lacks(b) || sign * ORDER[sort](a, b) || ORDER.supplier(a, b) || (a.publicId < b.publicId ? -1 : 1),

@@ -32,6 +32,7 @@ export async function runNextScoring(
 ): Promise<boolean> {
   const held = await claimNext();
   if (!held) return false;
+  if (held === "given-up") return true;
   const progress = { done: 0, total: 0 };
   const report: Report = async (done, total) => {
     Object.assign(progress, { done, total });
@@ -57,10 +58,18 @@ interface HeldJob {
   readonly attempts: number;
 }
 
-function claimNext(): Promise<HeldJob | undefined> {
+/** A job whose worker died at every attempt may be what kills it: it is given up like one that failed as often. */
+function claimNext(): Promise<HeldJob | "given-up" | undefined> {
   return inTransaction(async (transaction) => {
     const job = await lockDueJob(SCORE, transaction);
     if (!job) return undefined;
+    if (job.attempts >= MOST_ATTEMPTS) {
+      await job.update(
+        { state: "failed", lastError: "worker lost", leaseToken: null, leasedUntil: null },
+        { transaction },
+      );
+      return "given-up";
+    }
     const lease = { id: job.id, leaseToken: randomBytes(8).toString("hex") };
     await leaseJob(lease, LEASE_SECONDS, transaction);
     return { lease, versionId: Number(job.key), attempts: job.attempts + 1 };

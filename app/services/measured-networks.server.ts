@@ -11,12 +11,11 @@ export interface MeasuredNetwork {
   readonly network: TwoPort;
 }
 
-/** Networks of the sweeps the actor sees, in the order given; `report` is told how many are read. */
-export async function readNetworks(
+/** Networks of the sweeps the actor sees, in the order given, one at a time: two hundred at once can fill the memory. */
+export async function* eachNetwork(
   actor: QueryActor,
   measurementIds: readonly number[],
-  report?: (done: number) => Promise<void>,
-): Promise<MeasuredNetwork[]> {
+): AsyncGenerator<MeasuredNetwork, void> {
   const measurements = await MeasurementRow.findAll({ where: { id: { [Op.in]: [...measurementIds] } }, actor });
   const files = await StoredFile.findAll({
     where: { id: { [Op.in]: measurements.map(({ fileId }) => fileId) } },
@@ -24,13 +23,24 @@ export async function readNetworks(
   });
   const names = new Map(files.map(({ id, name }) => [id, name]));
   const byId = new Map(measurements.map((measurement) => [measurement.id, measurement]));
-  const networks: MeasuredNetwork[] = [];
   for (const id of measurementIds) {
     const measurement = byId.get(id);
     if (!measurement) continue;
     const fileName = names.get(measurement.fileId) ?? "";
     const network = parseTouchstone(await readFileBytes(actor, measurement.fileId), fileName);
-    networks.push({ measurement, fileName, network });
+    yield { measurement, fileName, network };
+  }
+}
+
+/** All of them; `report` is told how many are read. */
+export async function readNetworks(
+  actor: QueryActor,
+  measurementIds: readonly number[],
+  report?: (done: number) => Promise<void>,
+): Promise<MeasuredNetwork[]> {
+  const networks: MeasuredNetwork[] = [];
+  for await (const network of eachNetwork(actor, measurementIds)) {
+    networks.push(network);
     await report?.(networks.length);
   }
   return networks;

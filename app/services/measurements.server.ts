@@ -22,6 +22,11 @@ import {
 import { readSweepLabels } from "./sweep-labels.server";
 import { MOST_FILE_BYTES, MOST_FILES, TOO_LARGE } from "./uploads.server";
 
+/** Of all files of a quote together, 200 sweeps of 25,000: a quote is scored as a whole, in memory. */
+const MOST_POINTS = 5_000_000;
+const TOO_MANY_POINTS =
+  "The files of a quote hold at most 5,000,000 points together. Save the sweep with fewer points.";
+
 export interface UploadedFile {
   readonly name: string;
   readonly bytes: Uint8Array;
@@ -99,8 +104,11 @@ function storeSweep(
   return changeFoundQuote(found, async (locked, transaction) => {
     const { now } = locked;
     const { id: quoteId } = locked.quote;
-    const kept = await MeasurementRow.count({ where: { quoteId, removedAt: null }, actor: SYSTEM, transaction });
-    if (kept >= MOST_FILES) return invalid({ file: [`A quote holds at most ${MOST_FILES} files.`] });
+    const where = { quoteId, removedAt: null };
+    const kept = await MeasurementRow.findAll({ where, attributes: ["points"], actor: SYSTEM, transaction });
+    if (kept.length >= MOST_FILES) return invalid({ file: [`A quote holds at most ${MOST_FILES} files.`] });
+    const points = kept.reduce((sum, row) => sum + row.points, sweep.network.frequency.length);
+    if (points > MOST_POINTS) return invalid({ file: [TOO_MANY_POINTS] });
     const same = await sameBytes(quoteId, sweep.sha256, transaction);
     if (same) return invalid({ file: [`These bytes are in this quote already, as ${same}.`] });
     const measurement = await createRows(locked.quote, sweep, now, transaction);

@@ -31,14 +31,20 @@ export const receiptOf = (contentHash: Buffer): string =>
 
 type Submitted = Result<{ readonly version: number; readonly receipt: string }>;
 
+const CHANGED_SINCE =
+  "This quote was changed since you opened this page. Load the page again, and submit once you have read what it says now.";
+
 /**
  * Submits the quote as it is saved. The database's clock decides, read when the RFQ's row is held: at or after the due
  * millisecond it is refused. Null where the person does not see the quote.
+ *
+ * @param seen when what was reviewed had been saved, ISO 8601: what a colleague changed since is not submitted unread
  */
 export async function submitQuote(
   person: Person,
   quotePublicId: string,
   idempotencyKey: string,
+  seen?: string,
 ): Promise<Submitted | null> {
   const found = await findQuote(person, quotePublicId);
   if (!found) return null;
@@ -48,6 +54,7 @@ export async function submitQuote(
     if (!locked) return null;
     const refusal = submissionRefusal(locked);
     if (refusal) return invalid({ form: [refusal] });
+    if (seen !== undefined && seen !== locked.quote.savedAt.toISOString()) return invalid({ form: [CHANGED_SINCE] });
     const content = await readContent(SYSTEM, locked, transaction);
     if (!content.ok) return content;
     return ok(await freeze(person, locked, content.value, transaction));

@@ -1,7 +1,7 @@
 // The measured curves of a submitted quote for its overlay plot, thinned to what a figure can show.
 import { decimate, prepare, type Band, type Series } from "~/rf/index";
 import { curvesOf } from "~/rf/curves";
-import { readNetworks, type MeasuredNetwork } from "./measured-networks.server";
+import { eachNetwork, type MeasuredNetwork } from "./measured-networks.server";
 import type { Person } from "./person.server";
 import { readScores } from "./quote-scores.server";
 import { readVersionSweeps } from "./quote-results.server";
@@ -48,21 +48,21 @@ export async function readQuoteTraces(
     readVersionSweeps(person, found.version.id),
     reportedPlace(person, found, query),
   ]);
-  const networks = await readNetworks(
-    person,
-    sweeps.map(({ id }) => id),
-  );
-  const behind = Math.min(300, Math.max(60, Math.floor(COLUMNS_BEHIND / Math.max(1, networks.length))));
-  return networks.flatMap((measured) => {
+  const behind = Math.min(300, Math.max(60, Math.floor(COLUMNS_BEHIND / Math.max(1, sweeps.length))));
+  const ids = sweeps.map(({ id }) => id);
+  const traces: QuoteTrace[] = [];
+  for await (const measured of eachNetwork(person, ids)) {
     const { serial, temperature } = measured.measurement;
     const standsOut = reported !== null && serial === reported.unit && Number(temperature) === reported.celsius;
     const parameters: Parameter[] = ["s21", ...(standsOut && query.reverse ? ["s12" as const] : []), "s11", "s22"];
-    return tracesOf(measured, frame.impedance, parameters, {
+    const drawn: Drawn = {
       emphasis: standsOut ? "worst" : "other",
       columns: standsOut ? COLUMNS : behind,
       window: query.window,
-    });
-  });
+    };
+    traces.push(...tracesOf(measured, frame.impedance, parameters, drawn));
+  }
+  return traces;
 }
 
 async function reportedPlace(person: Person, { version }: SubmittedQuote, { unit, temperature }: TraceQuery) {

@@ -2,6 +2,7 @@
 import type { Transaction } from "sequelize";
 import { config } from "~/config.server";
 import {
+  Invitation,
   MeasurementResult,
   Organisation,
   OutboxEmail,
@@ -11,6 +12,7 @@ import {
   QuoteSummary,
   QuoteVersion,
   Rfq,
+  Supplier,
   User,
   VersionMeasurement,
 } from "~/db/models";
@@ -30,6 +32,7 @@ import {
 } from "~/rf/index";
 import { isMeasured } from "~/rf/line-definition";
 import { coversRange } from "~/rf/lot-temperature";
+import { identicalUnits } from "~/rf/same-data";
 import { rfqNumber } from "~/workflow/numbers";
 import { recordEvent } from "./audit.server";
 import { readNetworks, type MeasuredNetwork } from "./measured-networks.server";
@@ -229,16 +232,19 @@ function declaredRows({ frame }: Subject, declarations: readonly QuoteDeclaratio
 /**
  * `verdict`, `worstLineKey` and `worstMargin` speak of the measured lines: the worst verdict, and among lines that have it
  * the least credited margin. `worstCreditedMargin` is the least over all measured lines, which ranking goes by. `conforming`
- * takes the declared lines in too: an exception nobody accepted counts as fail.
+ * takes the declared lines in too: an exception nobody accepted counts as fail. Units whose data is the same to the bit
+ * count as one.
  */
 function summarise({ frame, rfq }: Subject, sweeps: readonly MeasuredNetwork[], results: readonly LineColumns[]) {
   const standings = results.flatMap(({ standing }) => standing ?? []);
   const worst = worstStanding(standings);
   const credits = standings.flatMap(({ creditedMargin }) => creditedMargin ?? []);
   const { range, ambient } = frame;
-  const units = [...new Set(sweeps.map(unitOf))];
+  const aliases = identicalUnits(sweeps.map((sweep) => ({ unit: unitOf(sweep), network: sweep.network })));
+  const countedUnit = (sweep: MeasuredNetwork) => aliases.get(unitOf(sweep)) ?? unitOf(sweep);
+  const units = [...new Set(sweeps.map(countedUnit))];
   const covering = units.filter((unit) => {
-    const taken = sweeps.filter((sweep) => unitOf(sweep) === unit).map(temperatureOf);
+    const taken = sweeps.filter((sweep) => countedUnit(sweep) === unit).map(temperatureOf);
     return range !== undefined && coversRange(taken, { range, ambient });
   });
   const conforming = results.every(
@@ -274,7 +280,9 @@ async function queueMails(
   const system = { actor: SYSTEM, transaction, rejectOnEmpty: true } as const;
   const submitter = await User.findByPk(version.submittedBy, system);
   const owner = await User.findByPk(rfq.ownerId, system);
-  const supplier = await Organisation.findByPk(quote.supplierOrganisationId, system);
+  const invitation = await Invitation.findByPk(quote.invitationId, system);
+  // By the buyer's directory, as on every page: what a supplier calls itself may be another's name.
+  const supplier = await Supplier.findByPk(invitation.supplierId, system);
   const buyer = await Organisation.findByPk(quote.buyerOrganisationId, system);
   const shared = {
     rfqNumber: rfqNumber(rfq.year, rfq.number),

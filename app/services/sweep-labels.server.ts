@@ -1,4 +1,5 @@
 // Unit and temperature of a sweep as far as its file says them, by name or in a comment; what can be read two ways is left open.
+import { COLDEST, HOTTEST } from "~/forms/measurement";
 
 export interface SweepLabels {
   /** Serial of the unit, at most 60 characters. */
@@ -11,9 +12,9 @@ export interface SweepLabels {
 const NAMED_TEMPERATURE =
   /(?<before>^|[^0-9.+\-−]|[0-9.](?=[+\-−]))(?<sign>[+\-−]?)(?<figure>\d{1,3}(?:\.\d)?)[ _]?(?:deg|°|º)?[ _]?c(?![a-z0-9])/iu;
 const COMMENTED_TEMPERATURE =
-  /\btemp(?:erature|\.)?\s*[:=]?\s*(?<sign>[+\-−]?)\s*(?<figure>\d{1,3}(?:\.\d)?)\s*(?:deg|°|º)?\s*c(?![a-z0-9])/iu;
+  /\btemp(?:erature|\.)? ?[:=]? ?(?<sign>[+\-−]?) ?(?<figure>\d{1,3}(?:\.\d)?) ?(?:deg|°|º)? ?c(?![a-z0-9])/iu;
 const COMMENTED_SERIAL =
-  /\b(?:serial(?:\s*(?:no\.?|number|#))?|s\/n|unit(?:\s*(?:no\.?|number|#))?)\s*[:=#]?\s*(?<serial>[\p{L}\p{N}][^\s,;]*)/iu;
+  /\b(?:serial(?: ?(?:no\.?|number|#))?|s\/n|unit(?: ?(?:no\.?|number|#))?) ?[:=#]? ?(?<serial>[\p{L}\p{N}][^\s,;]*)/iu;
 const EXTENSION = /\.(?:s2p|ts)$/iu;
 const LONGEST_SERIAL = 60;
 
@@ -32,9 +33,12 @@ export function readSweepLabels(fileName: string, comments: readonly string[]): 
   };
 }
 
+/** White space as single spaces, so that no pattern tries its runs over and over; without characters that are not shown. */
+const plainComment = (comment: string): string => comment.replace(/\s+/gu, " ").replace(/[\p{Cc}\p{Cf}]/gu, "");
+
 function firstMatch(comments: readonly string[], pattern: RegExp): RegExpExecArray | null {
   for (const comment of comments) {
-    const match = pattern.exec(comment);
+    const match = pattern.exec(plainComment(comment));
     if (match) return match;
   }
   return null;
@@ -62,6 +66,7 @@ function figureOf(match: RegExpExecArray): number {
 }
 
 function agreed(named: number | null, commented: number | null): number | null {
-  if (named === null || commented === null) return named ?? commented;
-  return named === commented ? named : null;
+  if (named !== null && commented !== null && named !== commented) return null;
+  const celsius = named ?? commented;
+  return celsius === null || celsius < COLDEST || celsius > HOTTEST ? null : celsius;
 }

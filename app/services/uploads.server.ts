@@ -1,6 +1,6 @@
 // Receives uploaded files: streamed to disk under random names, handed over, and removed from the disk whatever happens.
 import { createWriteStream } from "node:fs";
-import { mkdir, rm } from "node:fs/promises";
+import { mkdir, readdir, rm, stat } from "node:fs/promises";
 import path from "node:path";
 import { Readable } from "node:stream";
 import type { ReadableStream } from "node:stream/web";
@@ -61,7 +61,9 @@ export async function receiveFiles<T>(
   use: (received: Received) => Promise<T>,
 ): Promise<{ readonly ok: true; readonly value: T } | UploadRefusal> {
   if (!request.body || !isMultipart(request)) return { ok: false, status: 400, error: MALFORMED };
-  const folder = path.resolve(config().uploadFolder, newSecret().slice(0, 16));
+  const root = path.resolve(config().uploadFolder);
+  await (cleared ??= removeAbandoned(root).catch(() => undefined));
+  const folder = path.join(root, `upload-${newSecret().slice(0, 16)}`);
   // A length is left out: it would only serve for progress, and formidable takes a body without either header for empty.
   const headers = { "content-type": request.headers.get("Content-Type") ?? "", "transfer-encoding": "chunked" };
   const source = Object.assign(Readable.fromWeb(request.body as ReadableStream), { headers });
@@ -81,6 +83,21 @@ export async function receiveFiles<T>(
   } finally {
     request.signal.removeEventListener("abort", abort);
     await rm(folder, { recursive: true, force: true });
+  }
+}
+
+/** Longer than any upload takes. */
+const ABANDONED_AFTER_MS = 24 * 60 * 60 * 1000;
+/** Once a process, at its first upload. */
+let cleared: Promise<void> | undefined;
+
+/** Removes the folders of uploads that a killed process left behind; nothing else that lies there. */
+export async function removeAbandoned(root: string): Promise<void> {
+  for (const name of await readdir(root)) {
+    if (!/^upload-[\w-]{16}$/.test(name)) continue;
+    const folder = path.join(root, name);
+    const { mtimeMs } = await stat(folder);
+    if (Date.now() - mtimeMs > ABANDONED_AFTER_MS) await rm(folder, { recursive: true, force: true });
   }
 }
 

@@ -9,16 +9,20 @@ export interface LineStanding {
   readonly margin: number | null;
   /** Margin in parts of full credit; null where there is no margin, or no credit for it. */
   readonly creditedMargin: number | null;
+  /** Places lines of one verdict, least first: the credited margin, infinite where the margin is; +Infinity without one. */
+  readonly order: number;
 }
 
 const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
 
 /** How a line stands by its worst result. */
 export function standingOf(line: SpecificationLine, verdict: Verdict, result: StoredResult | undefined): LineStanding {
-  const margin = result === undefined ? null : finite(readNumber(result.margin));
+  const read = result === undefined ? NaN : readNumber(result.margin);
+  const margin = finite(read);
   const limit = result === undefined ? null : finite(readNumber(result.limit));
   const credited = margin === null ? null : creditOf(margin, line.definition.kind, limit);
-  return { lineKey: line.lineKey, verdict, margin, creditedMargin: credited };
+  const order = credited ?? (read === -Infinity ? -Infinity : Infinity);
+  return { lineKey: line.lineKey, verdict, margin, creditedMargin: credited, order };
 }
 
 /** A limit of nothing earns no credit: there is no share of it. */
@@ -37,6 +41,6 @@ export function worstStanding(standings: readonly LineStanding[]): LineStanding 
     if (worst === undefined) return standing;
     const difference = verdictRank(standing.verdict) - verdictRank(worst.verdict);
     if (difference !== 0) return difference < 0 ? standing : worst;
-    return (standing.creditedMargin ?? Infinity) < (worst.creditedMargin ?? Infinity) ? standing : worst;
+    return standing.order < worst.order ? standing : worst;
   }, undefined);
 }

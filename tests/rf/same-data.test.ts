@@ -1,7 +1,7 @@
 // Data alike to the bit are found, and a difference of one last digit is a difference.
 import { expect, test } from "vitest";
 import type { Trace, TwoPort } from "~/rf/contract";
-import { sameData } from "~/rf/same-data";
+import { identicalUnits, sameData } from "~/rf/same-data";
 
 function network(seed: number, length = 50): TwoPort {
   const trace = (offset: number): Trace => ({
@@ -36,4 +36,33 @@ test("one last digit, one point fewer, or another column order is another measur
 test("no networks and one network have no pairs", () => {
   expect(sameData([])).toEqual([]);
   expect(sameData([network(1)])).toEqual([]);
+});
+
+test("a unit whose data is another's counts as that one, however many copies there are", () => {
+  const one = network(1);
+  const files = [
+    { unit: "A", network: one },
+    { unit: "B", network: network(2) },
+    { unit: "C", network: copyOf(one) },
+    { unit: "D", network: copyOf(one) },
+    { unit: "A", network: copyOf(one) },
+  ];
+  expect([...identicalUnits(files)]).toEqual([
+    ["C", "A"],
+    ["D", "A"],
+  ]);
+});
+
+test("units alike by different sweeps all count as one", () => {
+  const [one, other] = [network(1), network(2)];
+  const files = [
+    { unit: "B", network: one },
+    { unit: "A", network: other },
+    { unit: "C", network: copyOf(one) },
+    { unit: "B", network: copyOf(other) },
+  ];
+  expect([...identicalUnits(files)]).toEqual([
+    ["C", "A"],
+    ["B", "A"],
+  ]);
 });

@@ -1,6 +1,6 @@
 // The comparison: its arithmetic, written by hand; its order; and what stands apart.
 import { expect, test } from "vitest";
-import { Supplier } from "~/db/models";
+import { QuoteLineResult, Supplier } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
 import { DEFAULT_COMPARISON, readComparisonQuery } from "~/forms/comparison";
 import { readComparison } from "~/services/comparison.server";
@@ -126,4 +126,28 @@ test("neither another buyer nor an invited supplier sees the comparison", async 
   const stranger = await buildPerson(await buildOrganisation("buyer"), "admin");
   expect(await readComparison(stranger, rfq.publicId, DEFAULT_COMPARISON)).toBeNull();
   expect(await readComparison(person, rfq.publicId, DEFAULT_COMPARISON)).toBeNull();
+});
+
+test("a margin without end is no zero: by margin that quote comes last, and its strip shows the line as the least", async () => {
+  const { engineer, rfq } = await openRfq();
+  for (const [name, credited] of [
+    ["Slight", -0.6],
+    ["Endless", -9],
+    ["Near", 0.2],
+  ] as const) {
+    const { version } = await buildSubmittedQuote(rfq, SHORT_LINES, { name });
+    await storeScore(version, SHORT_LINES, { lineloss: { ...fails, credited } }, false);
+    if (name !== "Endless") continue;
+    const row = await QuoteLineResult.findOne({
+      where: { versionId: version.id, lineKey: "lineloss" },
+      actor: SYSTEM,
+      rejectOnEmpty: true,
+    });
+    const cells = row.cells.map((cell) => ({ ...cell, result: { ...cell.result, margin: "-inf" as const } }));
+    await row.update({ margin: null, creditedMargin: null, cells });
+  }
+  const byMargin = readComparisonQuery(new URLSearchParams("sort=margin&direction=ascending"));
+  const quotes = (await readComparison(engineer, rfq.publicId, byMargin))?.nonconforming;
+  expect(quotes?.map(({ supplierName }) => supplierName)).toEqual(["Slight", "Near", "Endless"]);
+  expect(quotes?.[2]?.margins.map(({ credited }) => credited)).toEqual([-Infinity]);
 });

@@ -133,6 +133,16 @@ test("nothing is taken from the due millisecond on, nor after the invitation was
   expect(await storedRows()).toBe(0);
 });
 
+test("files of too many points together are refused, and nothing of the last is stored", async () => {
+  const { person, quote } = await buildJourneyQuote("Kestrel Cavity Filters");
+  await uploadFiles(person, quote, kestrel.slice(0, 1));
+  await MeasurementRow.update({ points: 4_999_000 }, { where: { quoteId: quote.id }, actor: SYSTEM });
+  const before = await storedRows();
+  const refused = await addMeasurement(person, quote.publicId, orme); // 2,001 points
+  expect(refused).toMatchObject({ ok: false, errors: { file: [expect.stringMatching(/5,000,000 points/)] } });
+  expect(await storedRows()).toBe(before);
+});
+
 test("unit and temperature are changed in place, kept to a tenth, and left open again by a blank", async () => {
   const { person, quote } = await buildJourneyQuote("Orme Microwave");
   await uploadFiles(person, quote, [orme]);

@@ -19,6 +19,7 @@ import { SYSTEM } from "~/db/scoping";
 import { closeDueRfqs, closeRfq } from "~/services/closing.server";
 import { newIdempotencyKey } from "~/services/identifiers.server";
 import { reviewQuote, submissionRefusal, submitQuote } from "~/services/quote-submission.server";
+import { saveDraft } from "~/services/quotes.server";
 import { inTransaction } from "~/services/transaction.server";
 import { buildOrganisation, buildPerson } from "../support/factories";
 import { useDatabase } from "../support/database";
@@ -207,4 +208,20 @@ test("a quote is nobody's to submit but its supplier's, and not after the invita
   await Invitation.update({ state: "revoked" }, { where: { id: found.invitation.id }, actor: SYSTEM });
   expect(await submit(found)).toBeNull();
   expect(await QuoteVersion.count({ actor: SYSTEM })).toBe(0);
+});
+
+test("what a colleague changed since the review is not submitted unread", async () => {
+  const found = await readyQuote();
+  await found.quote.reload({ actor: found.person });
+  const seen = found.quote.savedAt.toISOString();
+  const colleague = await buildPerson(found.organisation);
+  const key = newIdempotencyKey();
+  await sleep(2); // the colleague's save falls in another millisecond
+  await saveDraft(colleague, found.quote.publicId, { "prices.500": "1.00" }, found.quote.lockVersion);
+  const refused = await submitQuote(found.person, found.quote.publicId, key, seen);
+  expect(refused).toMatchObject({ ok: false, errors: { form: [expect.stringMatching(/changed since/)] } });
+  expect(await QuoteVersion.count({ actor: found.person })).toBe(0);
+  await found.quote.reload({ actor: found.person });
+  const taken = await submitQuote(found.person, found.quote.publicId, key, found.quote.savedAt.toISOString());
+  expect(taken).toMatchObject({ ok: true, value: { version: 1 } });
 });

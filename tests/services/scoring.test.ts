@@ -4,6 +4,7 @@ import {
   AuditEvent,
   Job,
   MeasurementResult,
+  MeasurementRow,
   OutboxEmail,
   QuoteLineResult,
   QuoteSummary,
@@ -175,4 +176,37 @@ test("progress is nobody's but the supplier's and, once submitted, the buyer's",
   }
   expect(await Job.count()).toBe(1);
   expect(await QuoteVersion.count({ actor: SYSTEM })).toBe(1);
+});
+
+test("a job whose worker died at every attempt is given up, and the next one is done", async () => {
+  const { person, quote } = await submitted("Orme Microwave", "orme-microwave");
+  const long = new Date("2026-11-02T08:00:00Z");
+  await Job.update({ attempts: 6, leaseToken: "dead", leasedUntil: long }, { where: { kind: "score" } });
+  const worked: number[] = [];
+  const work = (id: number) => Promise.resolve(void worked.push(id));
+  expect(await runNextScoring(work)).toBe(true);
+  expect(worked).toEqual([]);
+  expect(await Job.findOne({ rejectOnEmpty: true })).toMatchObject({ state: "failed", attempts: 6, leaseToken: null });
+  expect(await readScoringProgress(person, quote.publicId)).toMatchObject({ state: "failed" });
+  expect(await runNextScoring(work)).toBe(false);
+});
+
+test("the buyer's mail names the supplier as its directory does, whatever that calls itself", async () => {
+  const { organisation } = await submitted("Orme Microwave", "orme-microwave");
+  await organisation.update({ name: "Halden Resonator Works" });
+  await runNextScoring(scoreVersion);
+  const mail = await OutboxEmail.findOne({ where: { template: "quote-received-buyer" }, rejectOnEmpty: true });
+  expect(mail.props).toMatchObject({ supplierName: "Orme Microwave" });
+});
+
+test("the same data under two serials counts as one unit, whatever the comments", async () => {
+  const found = await buildJourneyQuote("Halden Resonator Works");
+  const [first] = journeyFiles("halden-resonator-works") as [ReturnType<typeof journeyFiles>[number]];
+  const copy = Buffer.concat([Buffer.from("! another comment\n"), first.bytes]);
+  await uploadFiles(found.person, found.quote, [first, { name: "A-99_25C.s2p", bytes: copy }]);
+  for (const row of await MeasurementRow.findAll({ actor: found.person }))
+    await row.update({ serial: `A-${row.id}`, temperature: "25.0" });
+  await submitQuote(found.person, found.quote.publicId, newIdempotencyKey());
+  await runNextScoring(scoreVersion);
+  expect(await QuoteSummary.findOne({ actor: found.person })).toMatchObject({ units: 1 });
 });

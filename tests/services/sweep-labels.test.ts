@@ -35,3 +35,16 @@ test("words without a digit are no serial, and other figures no temperature", ()
   expect(read("filter_2GHz.s2p", "calibrated 2026-11-17, 100 Hz IF bandwidth, 0 dBm")).toEqual(["filter_2GHz", null]);
   expect(read(`${"9".repeat(61)}.s2p`)[0]).toBeNull();
 });
+
+test("a file's thousand comments of blanks are read in no time", () => {
+  const comments = Array.from({ length: 500 }, () => [`temp${" ".repeat(990)}x`, `serial${" ".repeat(990)}!`]).flat();
+  const started = performance.now();
+  expect(read("wide.s2p", ...comments)).toEqual([null, null]);
+  expect(performance.now() - started).toBeLessThan(1_000); // tried run by run, one such comment takes longer
+});
+
+test("a temperature nothing is measured at is left open, and a serial has no characters that are not shown", () => {
+  expect(read("A1_+999C.s2p")).toEqual(["A1", null]);
+  expect(read("A1.s2p", "temperature -300 degC")).toEqual(["A1", null]);
+  expect(read("wide.s2p", "Serial:\tA\u200b1\u202e7")).toEqual(["A17", null]);
+});

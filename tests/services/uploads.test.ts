@@ -1,8 +1,9 @@
 // Files received: streamed to private files that never stay behind, and refused with a status the browser gets to see.
-import { existsSync, statSync, readFileSync } from "node:fs";
+import { existsSync, mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync, statSync, utimesSync } from "node:fs";
+import { tmpdir } from "node:os";
 import path from "node:path";
 import { expect, test } from "vitest";
-import { receiveFiles, TOO_LARGE, type ReceivedFile } from "~/services/uploads.server";
+import { receiveFiles, removeAbandoned, TOO_LARGE, type ReceivedFile } from "~/services/uploads.server";
 
 const address = "http://127.0.0.1:5180/upload";
 const MEBIBYTE = 1024 * 1024;
@@ -122,4 +123,16 @@ test("what the handler throws is thrown, and its files are gone all the same", a
   await expect(failing).rejects.toThrow("database away");
   expect(place).not.toBe("");
   expect(existsSync(place)).toBe(false);
+});
+
+test("what a killed process left behind is removed a day later, and nothing else in the folder", async () => {
+  const root = mkdtempSync(path.join(tmpdir(), "abandoned-"));
+  const aged = new Date(Date.now() - 25 * 60 * 60 * 1000);
+  for (const name of ["upload-0123456789abcdef", "upload-fedcba9876543210", "photographs"]) {
+    mkdirSync(path.join(root, name));
+    if (name !== "upload-fedcba9876543210") utimesSync(path.join(root, name), aged, aged);
+  }
+  await removeAbandoned(root);
+  expect(readdirSync(root).sort()).toEqual(["photographs", "upload-fedcba9876543210"]);
+  rmSync(root, { recursive: true });
 });

@@ -54,3 +54,10 @@ test("the worst verdict comes before a smaller margin, and among equals the leas
   expect(worstStanding([open, roomy])).toBe(roomy);
   expect(worstStanding([])).toBeUndefined();
 });
+
+test("a margin without end is the least there is, not one that is missing", () => {
+  const slight = standingOf(rejection, "fail", result(-0.01));
+  const endless = standingOf(loss, "fail", result("-inf"));
+  expect(worstStanding([slight, endless])).toBe(endless);
+  expect(worstStanding([endless, slight])).toBe(endless);
+});

@@ -4,7 +4,7 @@ import { href, Link } from "react-router";
 import { LinkButton } from "~/components/button";
 import { Cell, HeadCell, Row, RowHead, Table, TwoLines } from "~/components/data-table";
 import { Empty } from "~/components/empty";
-import { formatDateTime, formatRelative } from "~/components/format";
+import { formatDateTime, formatDue, formatRelative } from "~/components/format";
 import { Page, Section } from "~/components/page";
 import { TitleBlock } from "~/components/title-block";
 import { readOpenPoints } from "~/services/open-points.server";
@@ -84,7 +84,9 @@ interface PointKind {
 function kindsOf({ points, timeZone, isOwn, mayApprove, mayWrite }: Route.ComponentProps["loaderData"]): PointKind[] {
   const { toApprove, returned, toRecommend, open, quotes, rfqDrafts, specificationDrafts } = points;
   const past = (at: string) => <When at={at} zone={timeZone} now={points.now} />;
-  const due = (at: string, zone: string) => <When at={at} zone={timeZone} now={points.now} otherZone={zone} />;
+  const due = (at: string, zone: string, isRunning: boolean) => (
+    <When at={at} zone={timeZone} now={points.now} otherZone={zone} relative={formatDue(at, points.now, isRunning)} />
+  );
   const decision = (point: (typeof toApprove.items)[number]) => ({
     to: href("/rfqs/:rfqId/decision", { rfqId: point.rfq.publicId }),
     number: point.rfq.number,
@@ -93,13 +95,13 @@ function kindsOf({ points, timeZone, isOwn, mayApprove, mayWrite }: Route.Compon
     third: point.byName,
     when: past(point.at),
   });
-  const rfq = (address: "/rfqs/:rfqId" | "/rfqs/:rfqId/comparison") => (point: (typeof open.items)[number]) => ({
-    to: href(address, { rfqId: point.publicId }),
+  const rfq = (sheet: "overview" | "comparison") => (point: (typeof open.items)[number]) => ({
+    to: href(sheet === "overview" ? "/rfqs/:rfqId" : "/rfqs/:rfqId/comparison", { rfqId: point.publicId }),
     number: point.number,
     title: point.title,
     ...(isOwn ? {} : { lower: point.ownerName }),
     third: `${point.quotes.submitted} of ${point.quotes.invited} invited`,
-    when: due(point.dueAt, point.dueZone),
+    when: due(point.dueAt, point.dueZone, sheet === "overview"),
   });
   const kinds: (PointKind | false)[] = [
     mayApprove && {
@@ -120,7 +122,7 @@ function kindsOf({ points, timeZone, isOwn, mayApprove, mayWrite }: Route.Compon
       id: "to-recommend",
       title: "Closed, to recommend",
       count: toRecommend.count,
-      rows: toRecommend.items.map(rfq("/rfqs/:rfqId/comparison")),
+      rows: toRecommend.items.map(rfq("comparison")),
       heads: ["RFQ", "Quotes", "Due"],
       listed: `${href("/rfqs")}?state=closed`,
     },
@@ -128,7 +130,7 @@ function kindsOf({ points, timeZone, isOwn, mayApprove, mayWrite }: Route.Compon
       id: "open-rfqs",
       title: "Open RFQs",
       count: open.count,
-      rows: open.items.map(rfq("/rfqs/:rfqId")),
+      rows: open.items.map(rfq("overview")),
       heads: ["RFQ", "Quotes", "Due"],
       listed: `${href("/rfqs")}?state=open`,
     },
@@ -150,7 +152,7 @@ function kindsOf({ points, timeZone, isOwn, mayApprove, mayWrite }: Route.Compon
       title: "RFQ drafts to open",
       count: rfqDrafts.count,
       rows: rfqDrafts.items.map((point) => ({
-        ...rfq("/rfqs/:rfqId")(point),
+        ...rfq("overview")(point),
         third: point.quotes.invited === 1 ? "1 supplier" : `${point.quotes.invited} suppliers`,
       })),
       heads: ["RFQ", "To invite", "Due"],
@@ -187,31 +189,29 @@ function Kind({ id, title, count, rows, heads, listed }: PointKind) {
       }
       tools={rest > 0 && listed !== undefined ? <Link to={listed}>{rest} more</Link> : undefined}
     >
-      <Table label={title} rows="two-line" className="table-fixed">
+      <Table label={title} rows="two-line" stacks className="table-fixed">
         <thead>
           <tr>
-            <HeadCell className="w-32 tablet:w-44">{number}</HeadCell>
+            <HeadCell className="w-44">{number}</HeadCell>
             <HeadCell>Title</HeadCell>
-            <HeadCell className="w-36 desktop:w-44 max-tablet:hidden">{third}</HeadCell>
-            <HeadCell className="w-52 desktop:w-58 max-tablet:hidden">{when}</HeadCell>
+            <HeadCell className="w-36 desktop:w-44">{third}</HeadCell>
+            <HeadCell className="w-52 desktop:w-58">{when}</HeadCell>
           </tr>
         </thead>
         <tbody>
           {rows.map((row) => (
             <Row key={row.to}>
-              <RowHead className="max-tablet:py-2 max-tablet:align-top">
+              <RowHead>
                 <Link to={row.to}>{row.number}</Link>
               </RowHead>
-              <Cell className="max-tablet:py-2">
+              <Cell className="max-tablet:order-1 max-tablet:col-span-2">
                 {row.title}
                 {row.lower === undefined ? null : <span className="line-clamp-1 text-12 text-quiet">{row.lower}</span>}
-                <span className="block tablet:hidden">
-                  {row.third}
-                  {row.when}
-                </span>
               </Cell>
-              <Cell className="max-tablet:hidden">{row.third}</Cell>
-              <Cell className="max-tablet:hidden">{row.when}</Cell>
+              <Cell className="max-tablet:text-right">{row.third}</Cell>
+              <Cell className="max-tablet:order-2 max-tablet:col-span-2" data-label={when}>
+                {row.when}
+              </Cell>
             </Row>
           ))}
         </tbody>
@@ -227,14 +227,16 @@ interface WhenProps {
   now: string;
   /** An RFQ's own zone: said too where it differs. */
   otherZone?: string;
+  /** @default how far it lies from now */
+  relative?: string;
 }
 
-function When({ at, zone, now, otherZone = zone }: WhenProps) {
+function When({ at, zone, now, otherZone = zone, relative = formatRelative(at, now) }: WhenProps) {
   const absolute = formatDateTime(at, zone);
   const other = formatDateTime(at, otherZone);
   return (
     <time dateTime={at}>
-      <TwoLines upper={formatRelative(at, now)} lower={absolute} />
+      <TwoLines upper={relative} lower={absolute} />
       {other === absolute ? null : <span className="block text-12 text-quiet">{other}</span>}
     </time>
   );

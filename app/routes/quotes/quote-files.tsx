@@ -30,7 +30,7 @@ export default function QuoteFiles({ loaderData }: Route.ComponentProps) {
         {files.length === 0 ? (
           <Empty sentence="This version was submitted without files." />
         ) : (
-          <Table label="Files" rows="two-line">
+          <Table label="Files" rows="two-line" stacks>
             <thead>
               <tr>
                 <HeadCell>File</HeadCell>
@@ -50,12 +50,27 @@ export default function QuoteFiles({ loaderData }: Route.ComponentProps) {
                       {name}
                     </a>
                   </RowHead>
-                  <Cell className="whitespace-nowrap">{sweep?.unit ?? "–"}</Cell>
-                  <Cell figure>{sweep ? celsiusWords(sweep.celsius) : "–"}</Cell>
-                  <Cell figure>{sweep ? formatNumber(sweep.points, 0) : "–"}</Cell>
-                  <Cell figure>{sweep ? formatBand(sweep.range) : "–"}</Cell>
-                  <Cell figure>{formatNumber(size / 1000, 1)}</Cell>
-                  <Cell className="pl-4 text-12 break-all">{sha256}</Cell>
+                  <Cell className="whitespace-nowrap max-tablet:order-1" data-label="Unit">
+                    {sweep?.unit ?? "–"}
+                  </Cell>
+                  <Cell figure className="max-tablet:order-2" data-label="Temperature">
+                    {sweep ? celsiusWords(sweep.celsius) : "–"}
+                  </Cell>
+                  <Cell figure className="max-tablet:order-4" data-label="Points">
+                    {sweep ? formatNumber(sweep.points, 0) : "–"}
+                  </Cell>
+                  <Cell figure className="max-tablet:order-3 max-tablet:text-left!" data-label="Range">
+                    {sweep ? formatBand(sweep.range) : "–"}
+                  </Cell>
+                  <Cell figure className="max-tablet:order-0" data-label="Size, kB">
+                    {formatNumber(size / 1000, 1)}
+                  </Cell>
+                  <Cell
+                    className="text-12 break-all max-tablet:order-5 max-tablet:col-span-2 tablet:pl-4"
+                    data-label="SHA-256"
+                  >
+                    {sha256}
+                  </Cell>
                 </Row>
               ))}
             </tbody>

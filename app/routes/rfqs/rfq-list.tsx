@@ -81,7 +81,7 @@ export default function RfqList({ loaderData }: Route.ComponentProps) {
 
 function RfqTable({ list, query }: { list: Route.ComponentProps["loaderData"]["list"]; query: RfqListQuery }) {
   return (
-    <Table label="RFQs" rows="two-line" className="min-w-230">
+    <Table label="RFQs" rows="two-line" stacks className="tablet:min-w-230">
       <thead>
         <tr>
           <HeadCell sort={sortLink(query, "number")}>Number</HeadCell>
@@ -100,15 +100,17 @@ function RfqTable({ list, query }: { list: Route.ComponentProps["loaderData"]["l
             <RowHead className="whitespace-nowrap">
               <Link to={href("/rfqs/:rfqId", { rfqId: rfq.publicId })}>{rfq.number}</Link>
             </RowHead>
-            <Cell>
+            <Cell className="max-tablet:order-1 max-tablet:col-span-2">
               <TwoLines upper={rfq.title} lower={`${rfq.specification} · ${rfq.ownerName}`} />
             </Cell>
-            <Cell>{rfq.state}</Cell>
-            <Cell className="whitespace-nowrap">
+            <Cell className="max-tablet:text-right">{rfq.state}</Cell>
+            <Cell className="whitespace-nowrap max-tablet:order-2 max-tablet:col-span-2" data-label="Due">
               <Instant at={rfq.dueAt} zone={rfq.dueZone} {...(rfq.state === "open" ? { now: list.now } : {})} />
             </Cell>
-            <Cell figure>{formatNumber(rfq.quantity, 0)}</Cell>
-            <Cell figure>
+            <Cell figure className="max-tablet:order-3 max-tablet:text-left!" data-label="Quantity">
+              {formatNumber(rfq.quantity, 0)}
+            </Cell>
+            <Cell figure className="max-tablet:order-4" data-label="Quotes">
               {rfq.quotes.submitted} of {rfq.quotes.invited}
             </Cell>
           </Row>

@@ -92,7 +92,7 @@ export default function SpecificationList({ loaderData }: Route.ComponentProps) 
               sentence={`No specification has a latest revision that is ${view.status ?? "there"}.`}
             />
           ) : (
-            <Table label="Specifications" className="mt-4">
+            <Table label="Specifications" stacks className="mt-4">
               <thead>
                 <tr>
                   <SortHead view={view} by="number">
@@ -119,11 +119,13 @@ export default function SpecificationList({ loaderData }: Route.ComponentProps) 
                         {row.number}
                       </Link>
                     </RowHead>
-                    <Cell className="min-w-44">{row.title}</Cell>
-                    <Cell>{row.letter}</Cell>
-                    <Cell>{row.status}</Cell>
-                    <Cell>{row.ownerName}</Cell>
-                    <Cell className="whitespace-nowrap">
+                    <Cell className="max-tablet:order-1 max-tablet:col-span-2 tablet:min-w-44">{row.title}</Cell>
+                    <Cell className="max-tablet:order-3 max-tablet:text-right" data-label="Revision">
+                      {row.letter}
+                    </Cell>
+                    <Cell className="max-tablet:text-right">{row.status}</Cell>
+                    <Cell className="max-tablet:order-4 max-tablet:col-span-2">{row.ownerName}</Cell>
+                    <Cell className="whitespace-nowrap max-tablet:order-2" data-label="Saved">
                       <Instant at={row.savedAt} zone={timeZone} />
                     </Cell>
                   </Row>

@@ -103,7 +103,7 @@ export function Revisions(props: { publicId: string; revisions: readonly Revisio
   const { publicId: specificationId, revisions, shown, zone } = props;
   return (
     <Section title="Revisions">
-      <Table label="Revisions" className="whitespace-nowrap">
+      <Table label="Revisions" stacks className="whitespace-nowrap">
         <thead>
           <tr>
             <HeadCell>Revision</HeadCell>
@@ -127,13 +127,17 @@ export function Revisions(props: { publicId: string; revisions: readonly Revisio
                   {revision.letter}
                 </Link>
               </RowHead>
-              <Cell>{revision.status}</Cell>
-              <Cell>
+              <Cell className="max-tablet:text-right">{revision.status}</Cell>
+              <Cell data-label="Saved">
                 <Instant at={revision.savedAt} zone={zone} />
               </Cell>
-              <Cell>{revision.releasedAt === null ? "–" : <Instant at={revision.releasedAt} zone={zone} />}</Cell>
-              <Cell>{revision.releasedByName ?? ""}</Cell>
-              <Cell figure>{revision.rfqCount}</Cell>
+              <Cell data-label="Released">
+                {revision.releasedAt === null ? "–" : <Instant at={revision.releasedAt} zone={zone} />}
+              </Cell>
+              <Cell data-label="By">{revision.releasedByName ?? ""}</Cell>
+              <Cell figure data-label="RFQs">
+                {revision.rfqCount}
+              </Cell>
             </Row>
           ))}
         </tbody>
@@ -155,7 +159,7 @@ export function UsedIn({ rfqs, zone }: { rfqs: readonly RfqRow[]; zone: string }
   if (rfqs.length === 0) return null;
   return (
     <Section title="Used in" id="used-in">
-      <Table label="RFQs on this specification" className="[&_td]:whitespace-nowrap">
+      <Table label="RFQs on this specification" stacks className="tablet:whitespace-nowrap">
         <thead>
           <tr>
             <HeadCell>RFQ</HeadCell>
@@ -171,10 +175,12 @@ export function UsedIn({ rfqs, zone }: { rfqs: readonly RfqRow[]; zone: string }
               <RowHead>
                 <Link to={href("/rfqs/:rfqId", { rfqId: rfq.publicId })}>{rfq.number}</Link>
               </RowHead>
-              <Cell>{rfq.title}</Cell>
-              <Cell>{rfq.letter}</Cell>
-              <Cell>{rfq.state}</Cell>
-              <Cell>
+              <Cell className="max-tablet:order-1 max-tablet:col-span-2">{rfq.title}</Cell>
+              <Cell className="max-tablet:order-3 max-tablet:text-right" data-label="Revision">
+                {rfq.letter}
+              </Cell>
+              <Cell className="max-tablet:text-right">{rfq.state}</Cell>
+              <Cell className="max-tablet:order-2" data-label="Due">
                 <Instant at={rfq.dueAt} zone={zone} />
               </Cell>
             </Row>

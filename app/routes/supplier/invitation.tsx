@@ -2,7 +2,7 @@
 import { data, redirect } from "react-router";
 import { Drawing, wallsFromRequirements } from "~/charts/drawing";
 import { Button, LinkButton } from "~/components/button";
-import { Instant } from "~/components/figure";
+import { DueDate } from "~/components/figure";
 import { PostForm } from "~/components/form";
 import { formatNumber } from "~/components/format";
 import { Notice } from "~/components/notice";
@@ -53,7 +53,12 @@ export default function Invitation({ loaderData, actionData }: Route.ComponentPr
           { label: "Specification", value: label },
           { label: "Decision rule", value: DECISION_RULES[loaderData.decisionRule] },
           { label: "Quantity", value: formatNumber(loaderData.quantity, 0) },
-          { label: "Due", value: <Instant at={loaderData.dueAt} zone={loaderData.dueZone} now={loaderData.now} /> },
+          {
+            label: "Due",
+            value: (
+              <DueDate at={loaderData.dueAt} zone={loaderData.dueZone} now={loaderData.now} state={loaderData.state} />
+            ),
+          },
         ]}
         actions={nextStep(loaderData, actionData)}
       />

@@ -2,7 +2,7 @@
 import { href, Link } from "react-router";
 import { Cell, HeadCell, Row, RowHead, Table, TwoLines } from "~/components/data-table";
 import { Empty } from "~/components/empty";
-import { formatDateTime, formatRelative } from "~/components/format";
+import { formatDateTime, formatDue } from "~/components/format";
 import { Page, Section } from "~/components/page";
 import { quoteSheetAddress } from "~/components/supplier-quote-block";
 import { TitleBlock } from "~/components/title-block";
@@ -61,13 +61,13 @@ export default function OpenPoints({ loaderData }: Route.ComponentProps) {
 
 function PointTable({ label, points, now }: { label: string; points: readonly Point[]; now: string }) {
   return (
-    <Table label={label} rows="two-line">
+    <Table label={label} rows="two-line" stacks>
       <thead>
         <tr>
           <HeadCell className="w-40">RFQ</HeadCell>
           <HeadCell>Filter</HeadCell>
-          <HeadCell className="w-64 max-tablet:w-auto">Due</HeadCell>
-          <HeadCell className="w-48 max-tablet:w-auto">State</HeadCell>
+          <HeadCell className="w-64">Due</HeadCell>
+          <HeadCell className="w-48">State</HeadCell>
         </tr>
       </thead>
       <tbody>
@@ -76,13 +76,13 @@ function PointTable({ label, points, now }: { label: string; points: readonly Po
             <RowHead>
               <Link to={addressOf(point)}>{point.rfqNumber}</Link>
             </RowHead>
-            <Cell className="py-1.5">
+            <Cell className="max-tablet:order-1 max-tablet:col-span-2 tablet:py-1.5">
               <TwoLines upper={point.title} lower={point.buyerName} />
             </Cell>
-            <Cell className="py-1.5">
+            <Cell className="max-tablet:order-2 max-tablet:col-span-2 tablet:py-1.5" data-label="Due">
               <TwoLines
                 upper={<time dateTime={point.dueAt}>{formatDateTime(point.dueAt, point.dueZone)}</time>}
-                lower={formatRelative(point.dueAt, now)}
+                lower={formatDue(point.dueAt, now, point.state === "open")}
               />
             </Cell>
             <Cell>

@@ -36,8 +36,8 @@ export async function loader({ request, context, params }: Route.LoaderArgs) {
 
 export async function action({ request, context, params }: Route.ActionArgs) {
   const person = requireRight(context, request, "submit-quote");
-  const { idempotencyKey = "" } = formValues(await request.formData());
-  const outcome = orNotFound(await submitQuote(person, params.quoteId, idempotencyKey));
+  const { idempotencyKey = "", savedAt = "" } = formValues(await request.formData());
+  const outcome = orNotFound(await submitQuote(person, params.quoteId, idempotencyKey, savedAt));
   if (outcome.ok) return redirect(quoteSheetAddress("Results", params.quoteId));
   return data({ values: {}, errors: { form: outcome.errors.form ?? [STILL_MISSING] } }, { status: 400 });
 }
@@ -99,6 +99,7 @@ function Submit({ head, review, idempotencyKey, state }: SubmitProps) {
   return (
     <Section title={head.version === 0 ? "Submit" : `Submit version ${head.version + 1}`}>
       <PostForm state={state} idempotencyKey={idempotencyKey}>
+        <input type="hidden" name="savedAt" value={head.savedAt} />
         <p className="max-w-170 text-13">
           The buyer sees data, terms and declarations as they stand, and both sides are mailed the results. You may
           submit again until the due date; the last version counts.

@@ -83,7 +83,7 @@ type Entries = Route.ComponentProps["loaderData"]["directory"]["entries"];
 
 function SupplierTable({ entries, mayWrite }: { entries: Entries; mayWrite: boolean }) {
   return (
-    <Table label="Suppliers" className="min-w-220">
+    <Table label="Suppliers" stacks className="tablet:min-w-220">
       <thead>
         <tr>
           <HeadCell>Company</HeadCell>
@@ -96,9 +96,13 @@ function SupplierTable({ entries, mayWrite }: { entries: Entries; mayWrite: bool
         {entries.map((entry) => (
           <Row key={entry.publicId}>
             <RowHead>{entry.name}</RowHead>
-            <Cell>{entry.contacts.join(", ")}</Cell>
-            <Cell figure>{entry.invitedTo}</Cell>
-            <Cell className="w-90 pl-10">{mayWrite ? <StatusForm entry={entry} /> : entry.status}</Cell>
+            <Cell className="max-tablet:order-1 max-tablet:col-span-2">{entry.contacts.join(", ")}</Cell>
+            <Cell figure data-label="RFQs invited to">
+              {entry.invitedTo}
+            </Cell>
+            <Cell className="max-tablet:order-2 max-tablet:col-span-2 max-tablet:mt-2 tablet:w-90 tablet:pl-10">
+              {mayWrite ? <StatusForm entry={entry} /> : entry.status}
+            </Cell>
           </Row>
         ))}
       </tbody>
