@@ -163,15 +163,16 @@ export interface LockedQuote extends FoundQuote {
  * Locks the RFQ, then the quote, as everywhere; null where the invitation was revoked meanwhile. Read for the system: a
  * condition on other tables would take the snapshot before the lock is had, and later reads would miss what was committed meanwhile.
  *
- * @param strength "SHARE" lets other suppliers work at once and holds off only who changes the RFQ
+ * @param rfqLock null for what decides nothing but the draft: an upload that takes long must not hold up another supplier's
+ *   submission, and a draft that changes in the due millisecond is worth nothing without one
  */
 export async function lockQuote(
   { quote, rfq }: FoundQuote,
-  strength: "SHARE" | "UPDATE",
+  rfqLock: "UPDATE" | null,
   transaction: Transaction,
 ): Promise<LockedQuote | null> {
   const system = { actor: SYSTEM, transaction, rejectOnEmpty: true } as const;
-  const lockedRfq = await Rfq.findByPk(rfq.id, { ...system, lock: transaction.LOCK[strength] });
+  const lockedRfq = await Rfq.findByPk(rfq.id, { ...system, ...(rfqLock && { lock: transaction.LOCK[rfqLock] }) });
   const lockedQuote = await Quote.findByPk(quote.id, { ...system, lock: transaction.LOCK.UPDATE });
   const invitation = await Invitation.findByPk(quote.invitationId, system);
   if (invitation.state !== "accepted") return null;
@@ -194,7 +195,7 @@ export function changeFoundQuote<T>(
   work: (locked: LockedQuote, transaction: Transaction) => Promise<Result<T>>,
 ): Promise<Result<T> | null> {
   return inTransaction(async (transaction) => {
-    const locked = await lockQuote(found, "SHARE", transaction);
+    const locked = await lockQuote(found, null, transaction);
     if (!locked) return null;
     const refusal = quoteRefusal("edit", locked.quote.state, rfqState(locked.rfq, locked.now));
     return refusal ? invalid({ form: [refusal] }) : work(locked, transaction);
