@@ -1,6 +1,12 @@
 // Makes the first administrator of a database that is not the demo's: `npm run admin:create -- EMAIL "ORGANISATION"`.
+import { randomBytes } from "node:crypto";
 import { z } from "zod";
 import { config, ConfigurationError } from "./config.server";
+
+/** The command mails nobody and signs nobody in: what only the pages need may stay unset. */
+process.env.SMTP_URL ??= "smtp://127.0.0.1:25";
+process.env.APP_URL ??= `http://127.0.0.1:${process.env.PORT ?? "5180"}`;
+process.env.SESSION_SECRET ??= randomBytes(32).toString("base64url");
 
 async function createAdministrator(email: string, organisationName: string): Promise<string> {
   const { sequelize } = await import("~/db/connection.server");
