@@ -153,7 +153,7 @@ function DeclaredWords({ line }: { line: ComplianceLine }) {
   };
   return (
     <span
-      className={`flex items-center gap-2 max-tablet:max-w-48 ${line.verdict === "declared" ? "" : verdictColour(line.verdict)}`}
+      className={`flex items-center gap-2 max-tablet:sticky max-tablet:left-38 max-tablet:max-w-48 ${line.verdict === "declared" ? "" : verdictColour(line.verdict)}`}
     >
       <VerdictMark verdict={line.verdict} size={12} silent />
       <span className="min-w-0">{words[line.verdict] ?? "not answered"}</span>

@@ -5,6 +5,7 @@ import {
   formatBand,
   formatDate,
   formatDateTime,
+  formatDue,
   formatFrequency,
   formatLevel,
   formatMargin,
@@ -116,4 +117,12 @@ test("relative times count whole units down, so that a due date never seems fart
   expect(formatRelative("2026-11-20T14:00:00.000Z", now)).toBe("in 2 hours");
   expect(formatRelative("2026-11-20T11:59:00.000Z", now)).toBe("1 minute ago");
   expect(formatRelative("2026-11-20T12:00:30.000Z", now)).toBe("now");
+});
+
+test("beside a due date stands how far it lies, unless the RFQ takes no quotes any more before it", () => {
+  const now = "2026-11-20T12:00:00.000Z";
+  expect(formatDue("2026-11-23T12:00:00.000Z", now, true)).toBe("in 3 days");
+  expect(formatDue("2026-11-23T12:00:00.000Z", now, false)).toBe("closed early");
+  expect(formatDue("2026-11-19T12:00:00.000Z", now, false)).toBe("1 day ago");
+  expect(formatDue(now, now, false)).toBe("now");
 });

@@ -92,6 +92,23 @@ test("every offered kind is read from engineering units into the core's requirem
   }
 });
 
+test("a match limit comes back as it was typed: as a VSWR where that is what has few digits", () => {
+  const shown = (limit: string) => {
+    const parsed = parse({ kind: "return-loss", ...band, port: "1", limit });
+    return parsed.ok ? specificationToValues(parsed.value)["lines.0.limit"] : undefined;
+  };
+  expect(["1.4:1", "1.5 : 1", "1.4375:1", "2:1"].map(shown)).toEqual(["1.4:1", "1.5:1", "1.4375:1", "2:1"]);
+  expect(["15 dB", "15.5631", "20"].map(shown)).toEqual(["15 dB", "15.5631 dB", "20 dB"]);
+  // Typed in decibels with more digits than a VSWR of four decimals gives: every digit stays.
+  expect(shown("15.56302500")).toBe("15.563025 dB");
+  expect(shown("1.43751:1")).toMatch(/^14\.9\d{10,} dB$/);
+  const sloped = parse({ kind: "return-loss", ...band, port: "1", limit: "1.4:1", limitEnd: "1.6:1" });
+  expect(sloped.ok && specificationToValues(sloped.value)).toMatchObject({
+    "lines.0.limit": "1.4:1",
+    "lines.0.limitEnd": "1.6:1",
+  });
+});
+
 test("a post of a plain HTML form is read like its fields", () => {
   const post = new FormData();
   for (const [name, value] of Object.entries({ ...block, ...rows({ kind: "declared", name: "Size", limit: "60 mm" }) }))
