@@ -65,12 +65,15 @@ export function Instant({ at, zone, now }: InstantProps) {
   );
 }
 
-/** An RFQ's due date with "in 3 days" or, where it was closed before that, "closed early". */
+const dueWords = (at: string, now: string, state: RfqState): string =>
+  state === "cancelled" ? "cancelled" : formatDue(at, now, state === "open" || state === "draft");
+
+/** An RFQ's due date with "in 3 days", or with why that no longer counts. */
 export function DueDate({ at, zone, now, state }: Required<InstantProps> & { state: RfqState }) {
   return (
     <time dateTime={at}>
       {formatDateTime(at, zone)}
-      <span className="text-quiet"> ({formatDue(at, now, state === "open" || state === "draft")})</span>
+      <span className="text-quiet"> ({dueWords(at, now, state)})</span>
     </time>
   );
 }

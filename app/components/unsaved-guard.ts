@@ -18,9 +18,11 @@ export function UnsavedGuard({ form, state }: { form: RefObject<HTMLFormElement 
     else blocker.reset();
   }, [blocker]);
 
-  // What was sent and refused is unsaved again.
+  // What was sent and refused is unsaved again; what the page began with is as it was stored.
+  const drawn = useRef(state);
   useEffect(() => {
-    if (Object.keys(state.errors).length > 0) changed.current = true;
+    if (state !== drawn.current && Object.keys(state.errors).length > 0) changed.current = true;
+    drawn.current = state;
   }, [state]);
 
   useEffect(() => {

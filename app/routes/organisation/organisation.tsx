@@ -44,7 +44,7 @@ export default function Organisation({ loaderData, actionData }: Route.Component
         ]}
       />
       <Section title="People">
-        <Table label="People" rows="two-line">
+        <Table label="People" rows="two-line" stacks>
           <thead>
             <tr>
               <HeadCell>Name</HeadCell>
@@ -57,9 +57,9 @@ export default function Organisation({ loaderData, actionData }: Route.Component
             {loaderData.people.map((person) => (
               <Row key={person.publicId}>
                 <RowHead>{person.name}</RowHead>
-                <Cell>{person.email}</Cell>
-                <Cell>{person.role}</Cell>
-                <Cell>{person.state}</Cell>
+                <Cell data-label="E-mail">{person.email}</Cell>
+                <Cell data-label="Role">{person.role}</Cell>
+                <Cell data-label="State">{person.state}</Cell>
               </Row>
             ))}
           </tbody>
