@@ -46,7 +46,7 @@ export default function Account({ loaderData }: Route.ComponentProps) {
           </Form>
         }
       >
-        <Table label="Open sessions" rows="two-line">
+        <Table label="Open sessions" rows="two-line" stacks>
           <thead>
             <tr>
               <HeadCell>Last seen</HeadCell>
@@ -59,9 +59,9 @@ export default function Account({ loaderData }: Route.ComponentProps) {
             {sessions.map((session) => (
               <Row key={session.key}>
                 <RowHead>{formatDateTime(session.lastSeen, timeZone)}</RowHead>
-                <Cell>{formatDateTime(session.begun, timeZone)}</Cell>
-                <Cell>{session.ip}</Cell>
-                <Cell>{session.browser}</Cell>
+                <Cell data-label="Begun">{formatDateTime(session.begun, timeZone)}</Cell>
+                <Cell data-label="From">{session.ip}</Cell>
+                <Cell data-label="Browser">{session.browser}</Cell>
               </Row>
             ))}
           </tbody>

@@ -39,7 +39,7 @@ export default function Mailbox({ loaderData }: Route.ComponentProps) {
         <Empty sentence="No mail yet." />
       ) : (
         <Section title={`${loaderData.mails.length} mails`}>
-          <Table label="Mails" rows="two-line">
+          <Table label="Mails" rows="two-line" stacks>
             <thead>
               <tr>
                 <HeadCell>Subject</HeadCell>
@@ -53,8 +53,8 @@ export default function Mailbox({ loaderData }: Route.ComponentProps) {
                   <RowHead>
                     <Link to={`/development/mailbox/${mail.id}`}>{mail.subject}</Link>
                   </RowHead>
-                  <Cell>{mail.to}</Cell>
-                  <Cell>{formatDateTime(mail.date, "UTC")}</Cell>
+                  <Cell data-label="To">{mail.to}</Cell>
+                  <Cell data-label="Sent">{formatDateTime(mail.date, "UTC")}</Cell>
                 </Row>
               ))}
             </tbody>
