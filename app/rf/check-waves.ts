@@ -46,7 +46,13 @@ export function largestSingularValue({ s11, s21, s12, s22 }: TwoPort, k: number)
   const crossRe = re11 * re12 + im11 * im12 + re21 * re22 + im21 * im22;
   const crossIm = re11 * im12 - im11 * re12 + re21 * im22 - im21 * re22;
   const spread = Math.hypot((column1 - column2) / 2, crossRe, crossIm);
-  return Math.sqrt((column1 + column2) / 2 + spread);
+  const value = Math.sqrt((column1 + column2) / 2 + spread);
+  return value < Infinity ? value : largestMagnitude([s11, s21, s12, s22], k);
+}
+
+/** A bound from below that no square overflows in, for numbers that no instrument writes; at most twice too small. */
+function largestMagnitude(traces: readonly Trace[], k: number): number {
+  return Math.max(...traces.map((trace) => magnitude(trace, k)));
 }
 
 function checkPassivity(network: TwoPort, uncertainty: number): Note[] {
@@ -80,7 +86,8 @@ function checkReciprocity(network: TwoPort, floor: number): Note[] {
     const forward = magnitude(s21, k);
     const reverse = magnitude(s12, k);
     if (!(forward > gate && reverse > gate)) continue;
-    const difference = Math.abs(decibel(forward / reverse));
+    // Not of the quotient, which may overflow.
+    const difference = Math.abs(decibel(forward) - decibel(reverse));
     if (difference > RECIPROCITY) count += 1;
     if (difference > worst) {
       worst = difference;

@@ -66,6 +66,14 @@ test("a lossless through is passive to the last digit", () => {
   expect(codes(data, { setup: { transmission: 0 } })).not.toContain("not-passive");
 });
 
+test("numbers whose squares overflow are gain and not reciprocal, not a reason to fail", () => {
+  const huge = network({ s21: (k) => polar(k === 50 ? 1e300 : 0.89, -10 * k), s12: () => polar(1e-10, 0) });
+  const notes = checkNetwork(huge, { setup: { noiseFloor: 250 } });
+  expect(notes.find(({ code }) => code === "not-passive")).toMatchObject({ frequency: [1.5e9, 1.5e9] });
+  expect(notes.find(({ code }) => code === "not-passive")?.message).toContain("6000.00 dB");
+  expect(notes.find(({ code }) => code === "not-reciprocal")?.message).toContain("6200.00 dB");
+});
+
 test("S21 and S12 that differ are noted where both stand above the floor", () => {
   const weak = (k: number) => polar(k === 30 ? 1e-4 : 0.89, -10 * k);
   const reverse = (k: number) => polar(k === 30 ? 3e-4 : 0.89, -10 * k);

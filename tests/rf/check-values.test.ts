@@ -8,13 +8,7 @@ import { REFLECTION_CHECKS } from "./check-values/reflection";
 import { checkValueRows, sourceOf } from "./check-values/row";
 import { UNCERTAINTY_CHECKS } from "./check-values/uncertainty";
 
-const checks = [
-  ...REFLECTION_CHECKS,
-  ...NETWORK_CHECKS,
-  ...DELAY_CHECKS,
-  ...UNCERTAINTY_CHECKS,
-  ...PASSIVITY_CHECKS,
-];
+const checks = [...REFLECTION_CHECKS, ...NETWORK_CHECKS, ...DELAY_CHECKS, ...UNCERTAINTY_CHECKS, ...PASSIVITY_CHECKS];
 const listed: Readonly<Record<string, string>> = notComputed.rows;
 const parts: Readonly<Record<string, string>> = notComputed.parts;
 const checked = checkValueRows.filter(({ id }) => !(id in listed));
@@ -40,7 +34,10 @@ test("every row is checked or listed with a reason, none twice and none dropped"
 
 test("parts of checked rows that the product does not compute are listed by the beginning of their ids", () => {
   for (const [beginning, reason] of Object.entries(parts)) {
-    expect(checked.some(({ id }) => id.startsWith(beginning)), beginning).toBe(true);
+    expect(
+      checked.some(({ id }) => id.startsWith(beginning)),
+      beginning,
+    ).toBe(true);
     expect(reason).not.toBe("");
   }
 });

@@ -222,3 +222,37 @@ test("a margin lies within its ends, and a value within its own", () => {
     }),
   );
 });
+
+test("scaling frequency by a factor divides delays and their variation by it", () => {
+  const phaseSteps = fc.array(fc.double({ min: -170, max: 170, noNaN: true }), { minLength: 11, maxLength: 11 });
+  const factor = fc.double({ min: -3, max: 3, noNaN: true }).map((exponent) => 10 ** exponent);
+  const width = fc.option(fc.double({ min: 1e6, max: 2e8, noNaN: true }), { nil: undefined });
+  const kind = fc.constantFrom("group-delay", "group-delay-variation");
+  fc.assert(
+    fc.property(
+      sweeps,
+      phaseSteps,
+      factor,
+      kind,
+      shares,
+      width,
+      width,
+      (text, steps, by, kind, edges, aperture, window) => {
+        const phase = steps.reduce((grid, step) => [...grid, (grid.at(-1) as number) + step], [0]);
+        const [from, to] = bandOf(text.frequency, edges);
+        const lineAt = (scale: number): Requirement => ({
+          ...{ id: "1", kind, band: [from * scale, to * scale], max: 1e-6 / scale },
+          ...(aperture !== undefined && { aperture: aperture * scale }),
+          ...(window !== undefined && kind === "group-delay-variation" && { window: window * scale }),
+        });
+        const networkAt = (scale: number) =>
+          sweepOf({ ...text, phase, frequency: text.frequency.map((hz) => hz * scale) });
+        const one = item(evaluate(networkAt(1), [lineAt(1)]));
+        const scaled = item(evaluate(networkAt(by), [lineAt(by)]));
+        expect(Number.isNaN(scaled.value)).toBe(Number.isNaN(one.value));
+        // 170 degrees in 10 MHz are 47 ns: what the values are rounded against.
+        if (!Number.isNaN(one.value)) expect(Math.abs(scaled.value * by - one.value)).toBeLessThan(1e-9 * 47e-9);
+      },
+    ),
+  );
+});

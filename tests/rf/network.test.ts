@@ -1,6 +1,7 @@
 // Renormalisation against scikit-rf, live, and what it keeps.
 import fc from "fast-check";
 import { beforeAll, expect, test } from "vitest";
+import { largestSingularValue } from "~/rf/check-waves";
 import { renormalise } from "~/rf/network";
 import { expectMatrix, matricesOf, twoPortOf, type ComplexNumber, type MatrixSeries } from "../support/complex-matrix";
 import { runPython } from "../support/python";
@@ -81,6 +82,7 @@ test("a through, which has no Z, renormalises as scikit-rf's cascade of impedanc
 const unit = fc.double({ min: -0.5, max: 0.5, noNaN: true });
 const ohm = fc.double({ min: 1, max: 1000, noNaN: true });
 const element = fc.record({ re: unit, im: unit });
+type MatrixOf<Value> = readonly [readonly [Value, Value], readonly [Value, Value]];
 const pair = <Value>(value: fc.Arbitrary<Value>) => fc.tuple(value, value);
 
 test("renormalising there and back gives the same network", () => {
@@ -109,6 +111,46 @@ test("renormalising keeps reciprocity", () => {
         to,
       );
       expect(forward).toEqual(backward);
+    }),
+  );
+});
+
+/** The size of S^H S - 1 at one point: zero for a network that gives back all the power it takes. */
+function lossOf([[s11, s12], [s21, s22]]: MatrixOf<ComplexNumber>): number {
+  const power = (...numbers: ComplexNumber[]) => numbers.reduce((sum, { re, im }) => sum + re * re + im * im, 0);
+  const across = number(
+    s11.re * s12.re + s11.im * s12.im + s21.re * s22.re + s21.im * s22.im,
+    s11.re * s12.im - s11.im * s12.re + s21.re * s22.im - s21.im * s22.re,
+  );
+  return Math.max(Math.abs(power(s11, s21) - 1), Math.abs(power(s12, s22) - 1), Math.hypot(across.re, across.im));
+}
+
+test("a lossless network stays lossless between any references, reciprocal or not", () => {
+  const angle = fc.double({ min: 0, max: 2 * Math.PI, noNaN: true });
+  // Up to a hundred times apart: steps of which rounding leaves 1e-12.
+  const moderate = fc.double({ min: 5, max: 500, noNaN: true });
+  const polar = (size: number, radians: number) => number(size * Math.cos(radians), size * Math.sin(radians));
+  fc.assert(
+    fc.property(angle, angle, angle, angle, pair(moderate), pair(moderate), (split, p11, p21, p12, from, to) => {
+      // Every unitary 2 x 2 matrix: the phase of S22 follows from the three others.
+      const [reflected, passed] = [Math.cos(split), Math.sin(split)];
+      const matrix: MatrixOf<ComplexNumber> = [
+        [polar(reflected, p11), polar(passed, p12)],
+        [polar(passed, p21), polar(-reflected, p12 + p21 - p11)],
+      ];
+      expect(lossOf(matrix)).toBeLessThan(1e-14);
+      const [moved] = matricesOf(renormalise(twoPortOf([1e9], [matrix], from), to));
+      expect(lossOf(moved as unknown as MatrixOf<ComplexNumber>)).toBeLessThan(1e-11);
+    }),
+  );
+});
+
+test("a passive network stays passive between any references", () => {
+  fc.assert(
+    fc.property(pair(pair(element)), pair(ohm), pair(ohm), (matrix, from, to) => {
+      const network = twoPortOf([1e9], [matrix], from);
+      fc.pre(largestSingularValue(network, 0) <= 1);
+      expect(largestSingularValue(renormalise(network, to), 0)).toBeLessThanOrEqual(1 + 1e-9);
     }),
   );
 });

@@ -22,9 +22,7 @@ test("20,000 mutated example files are read to finite numbers or refused with a 
     totals[outcome] += 1;
     if (fault !== undefined) faults.push(`file ${k}: ${fault}: ${inBase64(bytes)}`);
   }
-  console.log(
-    `seed ${SEED}: ${totals.read} mutants read, ${totals.refused} refused, longest ${longest.toFixed(1)} ms`,
-  );
+  console.log(`seed ${SEED}: ${totals.read} mutants read, ${totals.refused} refused, longest ${longest.toFixed(1)} ms`);
   expect(faults.slice(0, 5)).toEqual([]);
   expect(longest).toBeLessThan(LONGEST_MS);
   // The mutations are neither all harmless nor all fatal.

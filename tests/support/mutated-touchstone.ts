@@ -1,7 +1,10 @@
 // Touchstone files that went wrong: the examples with bytes flipped, cut and spliced, the same in every run of a seed.
 import { readFileSync, readdirSync } from "node:fs";
 import path from "node:path";
-import type { TwoPort } from "~/rf/contract";
+import { checkNetwork } from "~/rf/check-network";
+import type { Requirement, Result, Setup, Trace, TwoPort } from "~/rf/contract";
+import { evaluate } from "~/rf/evaluate";
+import { formatTouchstone } from "~/rf/format-touchstone";
 import { parseTouchstone } from "~/rf/touchstone";
 import { TouchstoneError } from "~/rf/touchstone-error";
 
@@ -35,9 +38,6 @@ export function chanceOf(seed: number): Chance {
 const PIECES = [
   ..."#![]\n\r\t,;-+eD.0\0é".split(""),
   "1e309",
-  "e300",
-  "e154",
-  "e-300",
   "NaN",
   "inf",
   "R 50 75",
@@ -74,6 +74,13 @@ const otherDigit: Mutation = (bytes, chance) => {
   for (let tries = 0; tries < 20 && !isDigit(bytes[at]); tries += 1) at = chance(bytes.length);
   return replaced(bytes, at, 1, Uint8Array.of(DIGIT_ZERO + chance(10)));
 };
+/** Behind a digit: numbers too large and too small to square, to turn from decibels, or to write at all. */
+const exponent: Mutation = (bytes, chance) => {
+  let at = chance(bytes.length);
+  for (let tries = 0; tries < 20 && !isDigit(bytes[at]); tries += 1) at = chance(bytes.length);
+  const text = `e${chance(2) === 0 ? "-" : ""}${chance(4) === 0 ? chance(400) : chance(10)}`;
+  return replaced(bytes, at + 1, 0, new TextEncoder().encode(text));
+};
 const cutOut: Mutation = (bytes, chance) =>
   replaced(bytes, chance(bytes.length), 1 + chance(chance(4) === 0 ? 200 : 3), new Uint8Array());
 const cutEnd: Mutation = (bytes, chance) => bytes.slice(0, chance(bytes.length) + 1);
@@ -90,13 +97,18 @@ const spliceLine: Mutation = (bytes, chance, examples) => {
   const donor = chance(2) === 0 ? bytes : (examples[chance(examples.length)] ?? bytes);
   const from = lineStart(donor, chance(donor.length));
   const end = donor.indexOf(10, from);
-  return replaced(bytes, lineStart(bytes, chance(bytes.length)), 0, donor.subarray(from, end < 0 ? undefined : end + 1));
+  return replaced(
+    bytes,
+    lineStart(bytes, chance(bytes.length)),
+    0,
+    donor.subarray(from, end < 0 ? undefined : end + 1),
+  );
 };
 const lineStart = (bytes: Uint8Array, near: number) => bytes.lastIndexOf(10, near) + 1;
 
 const MUTATIONS = [
   ...[otherDigit, otherDigit, otherDigit, otherDigit],
-  ...[flipBit, anyByte, cutOut, cutEnd, insertPiece, splice, spliceLine],
+  ...[exponent, flipBit, anyByte, cutOut, cutEnd, insertPiece, splice, spliceLine],
 ];
 
 /** One to three mutations of an example; mostly of one that is read, which is where there is most to break. */
@@ -110,16 +122,19 @@ export function mutant({ all, sound }: Examples, chance: Chance): Uint8Array {
 }
 
 /**
- * Reads a file that may be wrong.
+ * Reads a file that may be wrong; one that is read is written, read back, checked and scored too.
  *
  * @returns "read", "refused", or what is wrong with the reader's answer
  */
 export function judge(bytes: Uint8Array): { readonly outcome: "read" | "refused" | "wrong"; readonly fault?: string } {
   try {
-    const fault = faultOf(parseTouchstone(bytes));
+    const network = parseTouchstone(bytes);
+    const fault = faultOf(network) ?? faultOfFigures(network);
     return fault === undefined ? { outcome: "read" } : { outcome: "wrong", fault };
   } catch (error) {
-    if (!(error instanceof TouchstoneError)) return { outcome: "wrong", fault: `threw ${String(error)}` };
+    if (!(error instanceof TouchstoneError)) {
+      return { outcome: "wrong", fault: error instanceof Error ? (error.stack ?? error.message) : String(error) };
+    }
     const lines = 1 + bytes.reduce((count, byte) => count + Number(byte === 10 || byte === 13), 0);
     const isPlace = error.line >= 1 && error.line <= lines;
     return isPlace ? { outcome: "refused" } : { outcome: "wrong", fault: `line ${error.line} of ${lines}` };
@@ -142,6 +157,60 @@ function faultOf({ frequency, s11, s21, s12, s22, referenceImpedance, notes }: T
   if (new Set(notes.map(({ code }) => code)).size !== notes.length) return "a note twice";
   return undefined;
 }
+
+/** What must hold of what is made of a network: the same numbers when written, notes, no figure that is NaN. */
+function faultOfFigures(network: TwoPort): string | undefined {
+  const back = parseTouchstone(formatTouchstone(network));
+  const series = ({ frequency, s11, s21, s12, s22 }: TwoPort) => [frequency, ...[s11, s21, s12, s22].flatMap(both)];
+  const both = ({ re, im }: Trace) => [re, im];
+  const isSame = series(network).every((numbers, at) => numbers.every((x, k) => Object.is(x, series(back)[at]?.[k])));
+  if (!isSame) return "other numbers when written and read";
+
+  const band = [network.frequency[0] ?? 0, network.frequency.at(-1) ?? 0] as const;
+  const requirements = band[1] > 0 ? everyKindOver(band) : [];
+  checkNetwork(network);
+  checkNetwork(network, { requirements, setup: SETUP, impedance: [50, 75] });
+  for (const impedance of [network.referenceImpedance, [37, 91]] as const) {
+    for (const setup of [{}, SETUP]) {
+      const results = evaluate(network, requirements, { impedance, setup });
+      const wrong = results.find(({ verdict, ...figures }) => verdict !== "not-covered" && hasNaN(figures));
+      if (wrong !== undefined) return `NaN in ${JSON.stringify(wrong)}`;
+    }
+  }
+  return undefined;
+}
+
+const SETUP: Setup = {
+  transmission: 0.1,
+  noiseFloor: 90,
+  directivity: 36,
+  sourceMatch: 32,
+  loadMatch: 36,
+  tracking: 0.1,
+};
+
+function everyKindOver(band: readonly [number, number]): Requirement[] {
+  const [id, max] = ["1", 1];
+  return [
+    { id, kind: "insertion-loss", band, max },
+    { id, kind: "ripple", band, max },
+    { id, kind: "rejection", band, min: 3, relativeTo: band },
+    { id, kind: "return-loss", port: 1, band, min: 10 },
+    { id, kind: "reverse-isolation", band, min: 10 },
+    { id, kind: "group-delay", band, max },
+    { id, kind: "group-delay-variation", band, max },
+    { id, kind: "phase-linearity", band, max },
+    { id, kind: "centre-frequency", level: 3, nominal: 1e9, tolerance: 1e9 },
+    { id, kind: "bandwidth", level: 3, max: 1e9 },
+    { id, kind: "shape-factor", levels: [1, 2], max: 3 },
+  ];
+}
+
+function hasNaN({ value, frequency, limit, margin, interval, marginInterval, decidingFrequency }: Figures): boolean {
+  const figures = [value, frequency, limit, margin, ...interval, ...marginInterval, decidingFrequency];
+  return figures.some((figure) => Number.isNaN(figure));
+}
+type Figures = Omit<Result, "verdict">;
 
 /** Names a mutant in a report so that it can be read again. */
 export const inBase64 = (bytes: Uint8Array) => Buffer.from(bytes).toString("base64");

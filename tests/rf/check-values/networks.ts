@@ -4,7 +4,13 @@ import type { TwoPort } from "~/rf/contract";
 import { evaluate } from "~/rf/evaluate";
 import { renormalise, toImpedance } from "~/rf/network";
 import { parseTouchstone } from "~/rf/touchstone";
-import { expectMatrix, matricesOf, twoPortOf, type ComplexNumber, type MatrixSeries } from "../../support/complex-matrix";
+import {
+  expectMatrix,
+  matricesOf,
+  twoPortOf,
+  type ComplexNumber,
+  type MatrixSeries,
+} from "../../support/complex-matrix";
 import { checkValueRows, expectFigures, figuresOf, type CheckValue, type RowCheck } from "./row";
 
 type Matrix = MatrixSeries[number];
@@ -88,7 +94,10 @@ const parts = (value?: ComplexNumber) => [value?.re ?? NaN, value?.im ?? NaN];
 
 /** The elements worked out by hand, in the figures a data sheet would give, and which S-parameters are stated. */
 const BY_HAND: Record<string, () => { network: TwoPort; stated: (s: ComplexNumber[]) => number[] }> = {
-  "hand-series R=Z0 50/50: S11,S21": () => ({ network: readAs("Y", seriesOf(50), [50, 50]), stated: reflectionAndGain }),
+  "hand-series R=Z0 50/50: S11,S21": () => ({
+    network: readAs("Y", seriesOf(50), [50, 50]),
+    stated: reflectionAndGain,
+  }),
   "hand-shunt G=Y0 50/50: S11,S21": () => ({ network: readAs("Z", shuntOf(50), [50, 50]), stated: reflectionAndGain }),
   "hand-75-ohm quarter wave in 50: S11, Im S21": () => ({
     network: readAs("Z", quarterWaveOf(75), [50, 50]),

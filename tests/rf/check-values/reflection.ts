@@ -71,7 +71,11 @@ export const REFLECTION_CHECKS: readonly RowCheck[] = [
       expectFigures(found, figuresOf(row.value), CLOSED_FORM);
       expectPublished(found, row);
       // The way from a return loss to a VSWR is read backwards: this VSWR has this return loss.
-      expectFigures([returnLossOf(vswr), returnLoss, magnitudeOf(returnLoss)], [wanted, wanted, reflection], CLOSED_FORM);
+      expectFigures(
+        [returnLossOf(vswr), returnLoss, magnitudeOf(returnLoss)],
+        [wanted, wanted, reflection],
+        CLOSED_FORM,
+      );
     },
   },
   {

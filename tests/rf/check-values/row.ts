@@ -39,7 +39,11 @@ export function figuresOf(value: unknown): number[] {
 }
 
 /** Every figure equal to the wanted one, or within `tolerance` of it. */
-export function expectFigures(actual: readonly number[], wanted: readonly number[], tolerance: number | number[]): void {
+export function expectFigures(
+  actual: readonly number[],
+  wanted: readonly number[],
+  tolerance: number | number[],
+): void {
   expect(actual).toHaveLength(wanted.length);
   wanted.forEach((figure, k) => {
     const allowed = typeof tolerance === "number" ? tolerance : (tolerance[k] ?? NaN);
