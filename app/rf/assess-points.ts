@@ -22,6 +22,9 @@ export interface Reference {
   readonly high: number;
 }
 
+/** In the readings' unit (dB), far above every tolerance: beyond this a reading's ends lie above those of the least. */
+const NEAR_LEAST = 0.05;
+
 const NO_REFERENCE: Reference = { value: 0, low: 0, high: 0 };
 
 /** The least margin of readings against a limit over the part of the band that is covered. */
@@ -31,12 +34,13 @@ export function assessPoints(readings: Readings, line: PointwiseLine, reference 
   const frame = { band, standing, tolerance, ...coverageOf(segments, band) };
   const pieces = limitPieces(line.limit, band);
   const worst = new WorstPoint(line.isUpperLimit, tolerance);
+  const isLeastLoss = !line.isUpperLimit && readings.endsRise;
   for (const piece of pieces) {
     const isWhole = pieces.length === 1;
     const parts = isWhole
       ? segments
       : segmentsWithin(readings.frequency, readings.value, [piece.from, piece.to], maxStep);
-    for (const part of parts) addSegment(worst, readings, part, piece, reference);
+    for (const part of parts) addSegment(worst, readings, part, piece, reference, isLeastLoss);
   }
   if (worst.isEmpty) return unreached(typeof line.limit === "number" ? line.limit : NaN, frame);
   return { ...frame, ...worst.figures() };
@@ -48,11 +52,26 @@ function addSegment(
   part: Segment,
   piece: LimitPiece,
   reference: Reference,
+  isLeastLoss: boolean,
+): void {
+  const { first, last } = part;
+  const least = piece.slope === 0 && isLeastLoss;
+  if (startsBetween(readings, part)) addBetween(worst, readings, part.from, first - 1, piece, reference);
+  if (least) addLeast(worst, readings, part, piece.level, reference);
+  else addSamples(worst, readings, part, piece, reference);
+  if (stopsBetween(readings, part)) addBetween(worst, readings, part.to, last, piece, reference);
+}
+
+function addSamples(
+  worst: WorstPoint,
+  readings: Readings,
+  { first, last }: Segment,
+  piece: LimitPiece,
+  reference: Reference,
 ): void {
   const { frequency, value, low, high } = readings;
-  const { first, last } = part;
   const { value: subtracted, low: leastSubtracted, high: mostSubtracted } = reference;
-  if (startsBetween(readings, part)) addBetween(worst, readings, part.from, first - 1, piece, reference);
+  readings.fillEnds(first, last);
   // Written out, without a call per sample: this loop is most of what scoring costs.
   for (let index = first; index <= last; index += 1) {
     const hz = frequency[index] as number;
@@ -65,7 +84,32 @@ function addSegment(
       (high[index] as number) - leastSubtracted,
     );
   }
-  if (stopsBetween(readings, part)) addBetween(worst, readings, part.to, last, piece, reference);
+}
+
+/**
+ * Samples against a constant lower limit, where the ends rise with the value: only those near the least value can have the
+ * least ends, so the others need none.
+ */
+function addLeast(
+  worst: WorstPoint,
+  readings: Readings,
+  { first, last }: Segment,
+  limit: number,
+  reference: Reference,
+): void {
+  const { frequency, value } = readings;
+  let least = Infinity;
+  for (let index = first; index <= last; index += 1) least = Math.min(least, value[index] as number);
+  for (let index = first; index <= last; index += 1) {
+    const hz = frequency[index] as number;
+    const reading = value[index] as number;
+    if (reading > least + NEAR_LEAST) {
+      worst.add(hz, reading - reference.value, limit, Infinity, Infinity);
+      continue;
+    }
+    const [low, high] = readings.endsBetween(reading, index, hz);
+    worst.add(hz, reading - reference.value, limit, low - reference.high, high - reference.low);
+  }
 }
 
 function addBetween(
@@ -100,12 +144,13 @@ export function leastReading(readings: Readings, band: Band, maxStep?: number): 
     least.high = Math.min(least.high, high);
   };
   for (const part of segments) {
+    readings.fillEnds(part.first, part.last);
     forEachReading(readings, part, take);
   }
   return least;
 }
 
-/** Every reading of a segment in ascending order, interpolated ends included. */
+/** Every reading of a segment in ascending order, interpolated ends included; its ends must be filled to be used. */
 export function forEachReading(
   readings: Readings,
   part: Segment,

@@ -69,7 +69,10 @@ function checkSteps(frequency: Series, { id, band, maxStep }: BandRequirement): 
 
 function checkSamples(frequency: Series, { id, band }: BandRequirement): Note[] {
   if (sameFrequency(band[0], band[1])) return [];
-  const inside = frequency.filter((hz) => hz >= band[0] && hz <= band[1]).length;
+  let inside = 0;
+  for (let k = 0; k < frequency.length; k += 1) {
+    if ((frequency[k] as number) >= band[0] && (frequency[k] as number) <= band[1]) inside += 1;
+  }
   if (inside >= PASSBAND_SAMPLES || !reaches(frequency, band)) return [];
   const samples = inside === 1 ? "1 sample" : `${inside} samples`;
   const where = `from ${formatFrequency(band[0])} to ${formatFrequency(band[1])}`;

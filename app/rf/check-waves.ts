@@ -21,6 +21,43 @@ const decibel = (magnitude: number) => 20 * Math.log10(magnitude);
 const fromDecibel = (level: number) => 10 ** (level / 20);
 const magnitude = ({ re, im }: Trace, k: number) => Math.hypot(re[k] as number, im[k] as number);
 
+/** Relative distance from a threshold beyond which the squares decide: their rounding is a few parts in 1e16. */
+const CLEAR = 1e-9;
+/** Squares between these are neither lost nor overflown. */
+const SMALLEST_SQUARE = 1e-290;
+const power = ({ re, im }: Trace, k: number) =>
+  (re[k] as number) * (re[k] as number) + (im[k] as number) * (im[k] as number);
+
+/** Whether the magnitude lies above a level; the root, which costs most, is taken only near it. */
+function exceeds(trace: Trace, k: number, level: number): boolean {
+  const square = power(trace, k);
+  const threshold = level * level;
+  if (square > SMALLEST_SQUARE && square < Infinity && threshold > SMALLEST_SQUARE) {
+    if (square > threshold * (1 + CLEAR)) return true;
+    if (square < threshold * (1 - CLEAR)) return false;
+  }
+  return magnitude(trace, k) > level;
+}
+
+/** Whether the largest singular value is clearly below a limit. */
+function isClearlyPassive({ s11, s21, s12, s22 }: TwoPort, k: number, limit: number): boolean {
+  const re11 = s11.re[k] as number;
+  const im11 = s11.im[k] as number;
+  const re21 = s21.re[k] as number;
+  const im21 = s21.im[k] as number;
+  const re12 = s12.re[k] as number;
+  const im12 = s12.im[k] as number;
+  const re22 = s22.re[k] as number;
+  const im22 = s22.im[k] as number;
+  const column1 = re11 * re11 + im11 * im11 + re21 * re21 + im21 * im21;
+  const column2 = re12 * re12 + im12 * im12 + re22 * re22 + im22 * im22;
+  const crossRe = re11 * re12 + im11 * im12 + re21 * re22 + im21 * im22;
+  const crossIm = re11 * im12 - im11 * re12 + re21 * im22 - im21 * re22;
+  const half = (column1 - column2) / 2;
+  const square = (column1 + column2) / 2 + Math.sqrt(half * half + crossRe * crossRe + crossIm * crossIm);
+  return square < limit * limit * (1 - CLEAR);
+}
+
 export function checkWaves(network: TwoPort, setup: Setup = {}): Note[] {
   const floor = transmissionTerms(setup, network.frequency.length).floor;
   return [
@@ -62,6 +99,7 @@ function checkPassivity(network: TwoPort, uncertainty: number): Note[] {
   let at = -1;
   let count = 0;
   for (let k = 0; k < network.frequency.length; k += 1) {
+    if (isClearlyPassive(network, k, limit)) continue;
     const value = largestSingularValue(network, k);
     if (value > limit) count += 1;
     if (value > worst) {
@@ -83,9 +121,9 @@ function checkReciprocity(network: TwoPort, floor: number): Note[] {
   let at = -1;
   let count = 0;
   for (let k = 0; k < network.frequency.length; k += 1) {
+    if (!(exceeds(s21, k, gate) && exceeds(s12, k, gate))) continue;
     const forward = magnitude(s21, k);
     const reverse = magnitude(s12, k);
-    if (!(forward > gate && reverse > gate)) continue;
     // Not of the quotient, which may overflow.
     const difference = Math.abs(decibel(forward) - decibel(reverse));
     if (difference > RECIPROCITY) count += 1;
@@ -103,7 +141,10 @@ function checkReciprocity(network: TwoPort, floor: number): Note[] {
 function readingGate({ s21, s12, frequency }: TwoPort, floor: number): number {
   if (floor > 0) return floor * fromDecibel(ABOVE_FLOOR);
   let peak = 0;
-  for (let k = 0; k < frequency.length; k += 1) peak = Math.max(peak, magnitude(s21, k), magnitude(s12, k));
+  for (let k = 0; k < frequency.length; k += 1) {
+    if (exceeds(s21, k, peak)) peak = magnitude(s21, k);
+    if (exceeds(s12, k, peak)) peak = magnitude(s12, k);
+  }
   return peak * fromDecibel(-BELOW_PEAK);
 }
 
@@ -115,7 +156,7 @@ function checkPhaseSteps(network: TwoPort, floor: number): Note[] {
   let at = -1;
   let count = 0;
   for (let k = 1; k < frequency.length; k += 1) {
-    if (!(magnitude(s21, k - 1) > gate && magnitude(s21, k) > gate)) continue;
+    if (!(exceeds(s21, k - 1, gate) && exceeds(s21, k, gate))) continue;
     const step = phaseStep(s21, k);
     if (step > PHASE_STEP) count += 1;
     if (step > worst) {
@@ -164,6 +205,7 @@ function checkBelow(
   let count = 0;
   let deepest = Infinity;
   for (let k = 0; k < network.frequency.length; k += 1) {
+    if (exceeds(network.s21, k, level)) continue;
     const value = magnitude(network.s21, k);
     if (!(value < level)) continue;
     if (first < 0) first = k;

@@ -21,6 +21,10 @@ export interface Readings {
   readonly high: Series;
   /** Ends of the value interpolated at `hz`, between samples `below` and `below + 1`. */
   readonly endsBetween: (value: number, below: number, hz: number) => Ends;
+  /** Makes `low` and `high` valid from sample `first` to `last`; to be called before either is read. */
+  readonly fillEnds: (first: number, last: number) => void;
+  /** The ends follow from the value alone and rise with it. */
+  readonly endsRise: boolean;
 }
 
 /** An S-parameter below -200 dB at every point was not measured: one-path test sets write zeros. */
@@ -75,19 +79,13 @@ export class Curves {
     const key = `port ${port} ${Object.values(terms).join(" ")}`;
     return this.#keep(key, () => {
       const value = this.loss(port === 1 ? "s11" : "s22");
+      if (Object.values(terms).every((term) => term === 0)) return exactReadings(this.frequency, value);
       const through = this.#through(value);
-      const low = new Float64Array(this.points);
-      const high = new Float64Array(this.points);
-      for (let index = 0; index < value.length; index += 1) {
-        [low[index], high[index]] = reflectionEnds(
-          value[index] as number,
-          magnitudeOf(through[index] as number),
-          terms,
-        );
-      }
+      const endsOf = (index: number) =>
+        reflectionEnds(value[index] as number, magnitudeOf(through[index] as number), terms);
       const endsBetween = (reading: number, below: number, hz: number) =>
         reflectionEnds(reading, magnitudeOf(valueBetween(this.frequency, through, below, hz)), terms);
-      return { frequency: this.frequency, value, low, high, endsBetween };
+      return { ...lazyReadings(this.frequency, value, endsOf, endsBetween), endsRise: false };
     });
   }
 
@@ -123,21 +121,54 @@ export function curvesOf(prepared: Prepared): Curves {
   return made;
 }
 
-/** Readings whose ends depend on the value alone. Without uncertainty the ends are the value itself. */
+/** Readings whose ends depend on the value alone and rise with it. Without uncertainty the ends are the value itself. */
 export function readingsOf(
   frequency: Series,
   value: Series,
   endsOf: (value: number) => Ends,
   withoutUncertainty = false,
 ): Readings {
-  if (withoutUncertainty)
-    return { frequency, value, low: value, high: value, endsBetween: (reading) => [reading, reading] };
+  if (withoutUncertainty) return exactReadings(frequency, value);
+  return lazyReadings(frequency, value, (index) => endsOf(value[index] as number), endsOf);
+}
+
+/** Readings whose ends are the values themselves. */
+function exactReadings(frequency: Series, value: Series): Readings {
+  const endsBetween = (reading: number) => [reading, reading] as const;
+  return { frequency, value, low: value, high: value, endsBetween, fillEnds, endsRise: false };
+}
+
+function fillEnds(): void {
+  // Nothing to fill: the ends are the values.
+}
+
+/** Readings whose ends are computed for the stretch of the sweep that is asked for: most bands are a part of it. */
+function lazyReadings(
+  frequency: Series,
+  value: Series,
+  endsAt: (index: number) => Ends,
+  endsBetween: Readings["endsBetween"],
+): Readings {
   const low = new Float64Array(value.length);
   const high = new Float64Array(value.length);
-  for (let index = 0; index < value.length; index += 1) {
-    [low[index], high[index]] = endsOf(value[index] as number);
-  }
-  return { frequency, value, low, high, endsBetween: endsOf };
+  let filledFrom = 0;
+  let filledTo = 0;
+  const fill = (from: number, to: number) => {
+    for (let index = from; index < to; index += 1) {
+      const ends = endsAt(index);
+      low[index] = ends[0];
+      high[index] = ends[1];
+    }
+  };
+  const fillEnds = (first: number, last: number) => {
+    if (last < first) return;
+    if (filledTo === filledFrom) filledFrom = filledTo = first;
+    fill(first, filledFrom);
+    fill(filledTo, last + 1);
+    filledFrom = Math.min(filledFrom, first);
+    filledTo = Math.max(filledTo, last + 1);
+  };
+  return { frequency, value, low, high, endsBetween, fillEnds, endsRise: true };
 }
 
 function isExact(terms: { factor: number; floor: number }): boolean {

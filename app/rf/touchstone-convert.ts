@@ -1,6 +1,7 @@
 // From numbers as written (DB, MA or RI; S, Y, Z, G or H) to S-parameters at the file's references.
 
 import type { Series, Trace } from "./contract.ts";
+import { turnIntoParts } from "./touchstone-angle.ts";
 import { TouchstoneError } from "./touchstone-error.ts";
 import type { NumberFormat, Parameter } from "./touchstone-option-line.ts";
 import { SET_STRIDE } from "./touchstone-sets.ts";
@@ -10,7 +11,6 @@ export type Matrix = readonly [Trace, Trace, Trace, Trace];
 
 /** Relative size of a determinant below which it is taken for zero. */
 const SINGULAR = 1e-14;
-const RADIANS_PER_DEGREE = Math.PI / 180;
 
 export function newTrace(length: number): Trace {
   return { re: new Float64Array(length), im: new Float64Array(length) };
@@ -24,20 +24,18 @@ export function newTrace(length: number): Trace {
  */
 export function readPairs(rows: Float64Array, count: number, pair: number, format: NumberFormat): Trace {
   const { re, im } = newTrace(count);
-  for (let k = 0, at = 1 + 2 * pair; k < count; k += 1, at += SET_STRIDE) {
-    const first = rows[at] as number;
-    const second = rows[at + 1] as number;
-    if (format === "RI") {
-      re[k] = first;
-      im[k] = second;
-    } else {
-      const magnitude = format === "DB" ? 10 ** (first / 20) : first;
-      const angle = second * RADIANS_PER_DEGREE;
-      re[k] = magnitude * Math.cos(angle);
-      im[k] = magnitude * Math.sin(angle);
-    }
-  }
+  const offset = 1 + 2 * pair;
+  fillFromParts(rows, offset, re, im);
+  if (format === "DB") for (let k = 0; k < count; k += 1) re[k] = 10 ** ((re[k] as number) / 20);
+  if (format !== "RI") turnIntoParts(re, im);
   return { re, im };
+}
+
+function fillFromParts(rows: Float64Array, offset: number, re: Series, im: Series): void {
+  for (let k = 0, at = offset; k < re.length; k += 1, at += SET_STRIDE) {
+    re[k] = rows[at] as number;
+    im[k] = rows[at + 1] as number;
+  }
 }
 
 /** Refuses a number that overflowed on the way from decibels. */

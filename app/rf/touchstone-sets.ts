@@ -8,6 +8,9 @@ export const SET_STRIDE = 9;
 /** Bytes; shorter sets only mean that room is made again. */
 const TYPICAL_SET_BYTES = 80;
 
+/** Lines in a row that were not plain, after which the file is taken to be of another shape. */
+const PATIENCE = 8;
+
 export class SetStore {
   /** SET_STRIDE numbers a set; the first `count` sets are valid. */
   rows: Float64Array;
@@ -18,6 +21,7 @@ export class SetStore {
   /** Sets in the file, repeated ones too. */
   written = 0;
   private readonly cursor: LineCursor;
+  private misses = 0;
   private readonly size: number;
   private readonly maxPoints: number;
 
@@ -35,6 +39,27 @@ export class SetStore {
   reserve(): number {
     if (this.count >= this.lines.length) this.grow();
     return this.count * SET_STRIDE;
+  }
+
+  /**
+   * Takes all sets that stand on one plain line each, from the cursor on.
+   *
+   * @param shift power of ten from the file's frequency unit to Hz
+   * @returns whether there was one
+   */
+  takePlain(shift: number): boolean {
+    if (this.misses >= PATIENCE) return false;
+    const { cursor, rows, count, size } = this;
+    const room = Math.min(this.lines.length, this.maxPoints) - count;
+    if (room <= 0) return false;
+    const { line } = cursor;
+    const base = count * SET_STRIDE;
+    const taken = cursor.readPlainRows(size, shift, this.lastFrequency(), rows, base, SET_STRIDE, room);
+    this.misses = taken > 0 ? 0 : this.misses + 1;
+    for (let k = 0; k < taken; k += 1) this.lines[count + k] = line + k;
+    this.count += taken;
+    this.written += taken;
+    return taken > 0;
   }
 
   lastFrequency(): number {

@@ -88,6 +88,10 @@ class Version1Reader {
   private readSetLine(): void {
     const { cursor, sets, filled } = this;
     const options = this.options ?? this.assumeOptions();
+    if (filled === 0 && sets.takePlain(options.frequencyExponent)) {
+      this.singleLine = true;
+      return;
+    }
     const start = cursor.position();
     const base = sets.reserve();
     const first = filled === 0;

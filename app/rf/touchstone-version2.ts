@@ -202,6 +202,7 @@ class Version2Reader {
   /** A set may go over any number of lines, but begins on its own (Touchstone 2.1, p. 14). */
   private readSetLine(): void {
     const { cursor, sets, filled } = this;
+    if (filled === 0 && sets.takePlain((this.options ?? DEFAULT_OPTIONS).frequencyExponent)) return;
     const { line } = cursor;
     const size = this.symmetric ? 7 : 9;
     const room = size - filled;
