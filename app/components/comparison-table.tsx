@@ -62,7 +62,7 @@ export function ComparisonTable({ groups, quantity, currency, sortBy }: Comparis
       </thead>
       <tbody>
         {rows(groups.conforming)}
-        {groups.conforming.length === 0 ? (
+        {groups.conforming.length === 0 && groups.unscored.length === 0 ? (
           <tr>
             <td colSpan={COLUMNS} className="text-quiet">
               No quote conforms.
@@ -194,19 +194,25 @@ export function ComparisonStack({ groups, quantity, currency }: Omit<ComparisonT
       {list("Conforming", groups.conforming)}
       {list("Nonconforming", groups.nonconforming)}
       {list("Being scored", groups.unscored)}
-      {groups.silent.length === 0 ? null : (
-        <section className="mt-4">
-          <h3 className="border-b border-ink pb-1 text-13">No quote</h3>
-          <ul className="text-13">
-            {groups.silent.map(({ company, state }) => (
-              <li key={company} className="border-b border-rule py-2">
-                {company} <span className="text-quiet">{SILENT_WORDS[state]}</span>
-              </li>
-            ))}
-          </ul>
-        </section>
-      )}
+      <SilentSuppliers suppliers={groups.silent} />
     </div>
+  );
+}
+
+/** Who was invited and has not quoted. */
+export function SilentSuppliers({ suppliers }: { suppliers: readonly SilentSupplierView[] }) {
+  if (suppliers.length === 0) return null;
+  return (
+    <section className="mt-6">
+      <h3 className="border-b border-ink pb-1 text-13">No quote</h3>
+      <ul className="text-13">
+        {suppliers.map(({ company, state }) => (
+          <li key={company} className="border-b border-rule py-2">
+            {company} <span className="text-quiet">{SILENT_WORDS[state]}</span>
+          </li>
+        ))}
+      </ul>
+    </section>
   );
 }
 

@@ -1,8 +1,8 @@
-// What a post of a sheet of the draft comes to: kept, and either in order or told what is not.
+// A sheet of the draft as its page shows it, and what a post of it comes to: kept, and in order or told what is not.
 import { formValues, hasErrors, type FormValues } from "~/forms/fields";
 import type { FieldErrors } from "~/forms/form";
 import type { Person } from "./person.server";
-import { saveDraft } from "./quotes.server";
+import { readQuoteHead, saveDraft } from "./quotes.server";
 import { checkSheet, readQuoteTerms, typedErrors } from "./quote-terms.server";
 
 export type DraftSheet = "terms" | "declarations";
@@ -13,6 +13,16 @@ export interface DraftRefusal {
   readonly lockVersion: number;
   /** Whether the entries were kept all the same. */
   readonly saved: boolean;
+}
+
+/** What the sheet's page shows; null where the person does not see the quote. @param address with `?check`, faults are told */
+export async function readSheet(person: Person, quotePublicId: string, sheet: DraftSheet, address: string) {
+  const head = await readQuoteHead(person, quotePublicId);
+  const terms = head && (await readQuoteTerms(person, quotePublicId));
+  const { searchParams } = new URL(address);
+  const errors = terms && searchParams.has("check") ? await checkSheet(person, quotePublicId, sheet) : {};
+  if (!head || !terms || !errors) return null;
+  return { head, terms, errors, wasSaved: searchParams.has("saved") };
 }
 
 /** `"in-order"` where the next sheet may follow; null where the person does not see the quote. */

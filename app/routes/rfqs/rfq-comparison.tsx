@@ -1,7 +1,7 @@
 // All quotes of an RFQ compared at one quantity.
 import { href, Link } from "react-router";
 import { LinkButton } from "~/components/button";
-import { ComparisonStack, ComparisonTable } from "~/components/comparison-table";
+import { ComparisonStack, ComparisonTable, SilentSuppliers } from "~/components/comparison-table";
 import { Empty } from "~/components/empty";
 import { formatMoney, formatNumber } from "~/components/format";
 import { Instant } from "~/components/figure";
@@ -45,7 +45,7 @@ export default function RfqComparison({ loaderData }: Route.ComponentProps) {
   };
   return (
     <Page>
-      <RfqBlock head={head} sheet="Comparison" actions={<DecisionLink loaded={loaderData} />} />
+      <RfqBlock head={head} sheet="Comparison" actions={decisionLink(loaderData)} />
       <Section
         title={`Comparison at ${formatNumber(quantity, 0)} ${quantity === 1 ? "piece" : "pieces"}`}
         note={<Standing loaded={loaderData} />}
@@ -58,8 +58,12 @@ export default function RfqComparison({ loaderData }: Route.ComponentProps) {
           />
         }
       >
-        {quoted.length === 0 ? <Empty className="mb-6" sentence="No quote has been submitted yet." /> : null}
-        {quoted.length + silent.length === 0 ? null : (
+        {quoted.length === 0 ? (
+          <>
+            <Empty sentence="No quote has been submitted yet." />
+            <SilentSuppliers suppliers={silent} />
+          </>
+        ) : (
           <>
             <ComparisonTable groups={comparison} quantity={quantity} currency={head.currency} sortBy={sortBy} />
             <ComparisonStack groups={comparison} quantity={quantity} currency={head.currency} />
@@ -71,7 +75,8 @@ export default function RfqComparison({ loaderData }: Route.ComponentProps) {
   );
 }
 
-function DecisionLink({ loaded: { head, mayRecommend, comparison } }: { loaded: Loaded }) {
+/** Undefined where there is nothing to go to, so that the title block keeps no empty cell. */
+function decisionLink({ head, mayRecommend, comparison }: Loaded) {
   const to = href("/rfqs/:rfqId/decision", { rfqId: head.publicId });
   if (head.state === "closed" && mayRecommend && comparison.decision === "none")
     return (
@@ -79,7 +84,7 @@ function DecisionLink({ loaded: { head, mayRecommend, comparison } }: { loaded: 
         Recommend award
       </LinkButton>
     );
-  return comparison.decision === "none" ? null : <LinkButton to={to}>Decision</LinkButton>;
+  return comparison.decision === "none" ? undefined : <LinkButton to={to}>Decision</LinkButton>;
 }
 
 function Standing({ loaded: { head, comparison } }: { loaded: Loaded }) {

@@ -71,7 +71,7 @@ export default function Specification({ loaderData, actionData }: Route.Componen
           { label: "Status", value: view.status },
         ]}
         facts={revisionFacts(view, rfqs.length, timeZone)}
-        actions={<Actions loaderData={loaderData} />}
+        actions={actionsFor(loaderData)}
       />
       {actionData?.errors.form?.map((sentence) => (
         <Notice key={sentence} tone="fail" role="alert" className="mt-6">
@@ -85,16 +85,22 @@ export default function Specification({ loaderData, actionData }: Route.Componen
   );
 }
 
-function Actions({ loaderData }: Pick<Route.ComponentProps, "loaderData">) {
-  const { view, mayWrite, mayRelease, mayRequest, idempotencyKey } = loaderData;
+/** What the reader may do with the revision now; undefined where that is nothing, so that the block keeps no empty cell. */
+function actionsFor(loaderData: Route.ComponentProps["loaderData"]) {
+  const { view, idempotencyKey } = loaderData;
+  const canEdit = loaderData.mayWrite && canSpecification("edit", view.status);
+  const canRelease = loaderData.mayRelease && canSpecification("release", view.status);
+  const canRevise = loaderData.mayWrite && canSpecification("revise", view.status);
+  const canRequest = loaderData.mayRequest && canSpecification("open-rfq", view.status);
+  if (!canEdit && !canRelease && !canRevise && !canRequest) return undefined;
   const specificationId = view.publicId;
   const post = { idempotencyKey, "aria-label": view.number };
   return (
     <>
-      {mayWrite && canSpecification("edit", view.status) ? (
+      {canEdit ? (
         <LinkButton to={href("/specifications/:specificationId/edit", { specificationId })}>Edit</LinkButton>
       ) : null}
-      {mayRelease && canSpecification("release", view.status) ? (
+      {canRelease ? (
         <PostForm {...post}>
           <input type="hidden" name="version" value={loaderData.version} />
           <Button kind="filled" name="intent" value="release">
@@ -102,14 +108,14 @@ function Actions({ loaderData }: Pick<Route.ComponentProps, "loaderData">) {
           </Button>
         </PostForm>
       ) : null}
-      {mayWrite && canSpecification("revise", view.status) ? (
+      {canRevise ? (
         <PostForm {...post}>
           <Button name="intent" value="revise">
             Revise
           </Button>
         </PostForm>
       ) : null}
-      {mayRequest && canSpecification("open-rfq", view.status) ? (
+      {canRequest ? (
         <LinkButton to={`${href("/rfqs/new")}?specification=${specificationId}`} kind="filled">
           Request quotes
         </LinkButton>

@@ -7,9 +7,7 @@ import { DeclarationFields } from "~/components/quote-declaration-fields";
 import { QuoteDraftForm } from "~/components/quote-draft-form";
 import { QuoteStateNotice } from "~/components/quote-state-notice";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
-import { saveSheet } from "~/services/quote-draft-save.server";
-import { checkSheet, readQuoteTerms } from "~/services/quote-terms.server";
-import { readQuoteHead } from "~/services/quotes.server";
+import { readSheet, saveSheet } from "~/services/quote-draft-save.server";
 import { orNotFound, requireRight } from "~/services/request.server";
 import type { Route } from "./+types/quote-declarations";
 
@@ -19,11 +17,7 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 
 export async function loader({ request, context, params }: Route.LoaderArgs) {
   const person = requireRight(context, request, "read-own-quote");
-  const head = orNotFound(await readQuoteHead(person, params.quoteId));
-  const terms = orNotFound(await readQuoteTerms(person, params.quoteId));
-  const { searchParams } = new URL(request.url);
-  const errors = searchParams.has("check") ? orNotFound(await checkSheet(person, params.quoteId, "declarations")) : {};
-  return { head, terms, errors, wasSaved: searchParams.has("saved") };
+  return orNotFound(await readSheet(person, params.quoteId, "declarations", request.url));
 }
 
 export async function action({ request, context, params }: Route.ActionArgs) {
