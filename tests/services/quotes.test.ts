@@ -4,7 +4,7 @@ import { AuditEvent, Invitation, Quote } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
 import { newIdempotencyKey } from "~/services/identifiers.server";
-import { saveSheet } from "~/services/quote-draft-save.server";
+import { saveSheet } from "~/services/quote-sheets.server";
 import { submitQuote } from "~/services/quote-submission.server";
 import { checkSheet, readQuoteTerms } from "~/services/quote-terms.server";
 import { readQuoteHead, SAVED_ELSEWHERE, saveDraft, startQuote } from "~/services/quotes.server";

@@ -7,7 +7,7 @@ import { DeclarationFields } from "~/components/quote-declaration-fields";
 import { QuoteDraftForm } from "~/components/quote-draft-form";
 import { QuoteStateNotice } from "~/components/quote-state-notice";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
-import { readSheet, saveSheet } from "~/services/quote-draft-save.server";
+import { readSheet, saveSheet } from "~/services/quote-sheets.server";
 import { orNotFound, requireRight } from "~/services/request.server";
 import type { Route } from "./+types/quote-declarations";
 

@@ -5,7 +5,7 @@ import { QuoteDraftForm } from "~/components/quote-draft-form";
 import { QuoteStateNotice } from "~/components/quote-state-notice";
 import { BasisFields, ConditionFields, DeliveryFields, PriceFields } from "~/components/quote-terms-fields";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
-import { readSheet, saveSheet } from "~/services/quote-draft-save.server";
+import { readSheet, saveSheet } from "~/services/quote-sheets.server";
 import { orNotFound, requireRight } from "~/services/request.server";
 import type { Route } from "./+types/quote-terms";
 
