@@ -28,6 +28,9 @@ export type ParsedBand =
   | { readonly ok: false; readonly reason: string; readonly edge: "from" | "to" };
 
 const LONGEST_ENTRY = 64;
+/** In the kind's own unit: beyond any figure of a filter, and the echo of what lies between is short enough to be typed again. */
+const TOO_LARGE = 1e18;
+const TOO_SMALL = 1e-18;
 const refuse = (reason: string) => ({ ok: false, reason }) as const;
 
 /**
@@ -60,7 +63,9 @@ function parseSigned(entry: string, kind: QuantityKind, unit: string) {
   const scale = written === "" ? ({ ok: true, exponent: 0 } as const) : readUnit(written, kind, unit);
   if (!scale.ok) return scale;
   const value = Number(decimalLiteral(read.number, scale.exponent));
-  if (!Number.isFinite(value)) return refuse(`“${entry}” is too large.`);
+  const size = Math.abs(value);
+  if (!(size < TOO_LARGE)) return refuse(`“${entry}” is too large.`);
+  if (size > 0 && size < TOO_SMALL) return refuse(`“${entry}” is too small. Write 0 if that is meant.`);
   return { ok: true, value: value === 0 ? 0 : value } as const;
 }
 

@@ -187,6 +187,22 @@ test("what is not a number is refused with a sentence, never thrown", () => {
   expect(reason("=1950 MHz - 30 MHz", megahertz)).toMatch(/Arithmetic/);
 });
 
+test("a figure beyond what its echo could be typed back as is refused, and the largest and smallest ones read back", () => {
+  expect(reason("7E70", megahertz)).toMatch(/too large/);
+  expect(reason("1e18", { kind: "plain" })).toMatch(/too large/);
+  expect(reason("1e-19", { kind: "time" })).toMatch(/too small/);
+  expect(value("0e-70", decibel)).toBe(0);
+  for (const [text, how] of [
+    ["9.99999999999999872e11 MHz", megahertz],
+    ["1.2345678901234567e-18 dB", decibel],
+    ["1.2345678901234567e-18", { kind: "time" }],
+  ] as const) {
+    const parsed = parseQuantity(text, how);
+    if (!parsed.ok) throw new Error(parsed.reason);
+    expect(value(parsed.echo.slice(2), how)).toBe(parsed.value);
+  }
+});
+
 test("any text gives an answer, and a number that is printed reads back to the same bits", () => {
   const options = fc.constantFrom<QuantityOptions>(
     megahertz,
