@@ -22,6 +22,7 @@ export default [
       route("quotes/:quoteId/measurements", "routes/api/quote-measurements.tsx"),
       route("quotes/:quoteId/progress", "routes/api/quote-progress.tsx"),
       route("quotes/:quoteId/traces", "routes/api/quote-traces.tsx"),
+      route("quotes/:quoteId/curves", "routes/api/quote-curves.tsx"),
       route("measurements/:measurementId", "routes/api/measurement.tsx"),
     ]),
   ]),
@@ -48,6 +49,8 @@ export default [
     ]),
     ...prefix("quotes/:quoteId", [
       index("routes/quotes/quote-results.tsx"),
+      route("curves", "routes/quotes/quote-curves.tsx"),
+      route("outlook", "routes/quotes/quote-outlook.tsx"),
       route("terms", "routes/quotes/quote-terms.tsx"),
       route("files", "routes/quotes/quote-files.tsx"),
     ]),

@@ -56,6 +56,8 @@ export function QuoteBlock({ head }: { head: QuoteBlockHead }) {
         label="Sheets of the quote"
         items={[
           { label: "Results", to: href("/quotes/:quoteId", { quoteId }) },
+          { label: "Curves", to: href("/quotes/:quoteId/curves", { quoteId }) },
+          { label: "Outlook", to: href("/quotes/:quoteId/outlook", { quoteId }) },
           { label: "Terms", to: href("/quotes/:quoteId/terms", { quoteId }) },
           { label: "Files", to: href("/quotes/:quoteId/files", { quoteId }) },
         ]}

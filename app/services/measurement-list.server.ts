@@ -59,7 +59,7 @@ export async function listMeasurements(person: Person, quotePublicId: string): P
   const where = { quoteId: quote.id, removedAt: null };
   const [measurements, frame] = await Promise.all([
     MeasurementRow.findAll({ where, order: [["id", "ASC"]], actor: person }),
-    readScoringFrame(person, rfq.revisionId),
+    readScoringFrame(person, rfq),
   ]);
   const [files, results] = await Promise.all([
     StoredFile.findAll({ where: { id: { [Op.in]: measurements.map(({ fileId }) => fileId) } }, actor: person }),

@@ -4,21 +4,16 @@ import { MeasurementRow, StoredFile, type Quote } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
 import { invalid, ok, type Result } from "~/forms/form";
-import { checkNetwork, parseTouchstone, TouchstoneError, type Note, type Setup, type TwoPort } from "~/rf/index";
+import { parseTouchstone, TouchstoneError, type Note, type Setup, type TwoPort } from "~/rf/index";
+import { stepProfile } from "~/rf/step-profile";
+import { scoreSweep, setupInUse, sweepNotes, type SweepScore } from "~/rf/score-sweep";
 import { quoteRefusal } from "~/workflow/quote";
 import { rfqState } from "~/workflow/rfq";
 import { packChunks, storeChunks } from "./file-bytes.server";
 import { newPublicId, sha256 } from "./identifiers.server";
 import type { Person } from "./person.server";
 import { changeFoundQuote, findQuote, recordQuoteEvent, type FoundQuote } from "./quotes.server";
-import {
-  readScoringFrame,
-  scoreSweep,
-  setupInUse,
-  storeSweepScore,
-  type ScoringFrame,
-  type SweepScore,
-} from "./scoring-sweeps.server";
+import { readScoringFrame, storeSweepScore, type ScoringFrame } from "./scoring-sweeps.server";
 import { readSweepLabels } from "./sweep-labels.server";
 import { MOST_FILE_BYTES, MOST_FILES, TOO_LARGE } from "./uploads.server";
 
@@ -44,7 +39,7 @@ export async function addMeasurement(
   const found = await findQuote(person, quotePublicId);
   if (!found) return null;
   if (file.bytes.length > MOST_FILE_BYTES) return invalid({ file: [TOO_LARGE] });
-  const [now, frame] = await Promise.all([databaseNow(), readScoringFrame(person, found.rfq.revisionId)]);
+  const [now, frame] = await Promise.all([databaseNow(), readScoringFrame(person, found.rfq)]);
   const refusal = quoteRefusal("edit", found.quote.state, rfqState(found.rfq, now));
   if (refusal) return invalid({ form: [refusal] });
   const packing = packChunks(file.bytes); // deflated in the thread pool while this thread reads the numbers
@@ -55,7 +50,7 @@ export async function addMeasurement(
     file,
     sha256: sha256(file.bytes),
     network,
-    notes: notesOf(network, frame, found.rfq.assumedSetup),
+    notes: sweepNotes(network, frame, found.rfq.assumedSetup),
     setup: setupInUse(null, found.rfq.assumedSetup),
     score: scoreSweep(network, frame, null, found.rfq.assumedSetup),
     frame,
@@ -90,11 +85,6 @@ const placeOf = ({ code, line, column }: TouchstoneError): string => {
   if (WHOLE_FILE.includes(code)) return "";
   return column === undefined ? `Line ${line}: ` : `Line ${line}, column ${column}: `;
 };
-
-const notesOf = (network: TwoPort, { requirements, impedance }: ScoringFrame, setup: Setup): Note[] => [
-  ...network.notes,
-  ...checkNetwork(network, { requirements, impedance, setup }),
-];
 
 function storeSweep(
   person: Person,
@@ -153,6 +143,7 @@ async function createRows(quote: Quote, sweep: PreparedSweep, now: Date, transac
       frequencyTo: network.frequency[points - 1] ?? 0,
       impedance1: network.referenceImpedance[0],
       impedance2: network.referenceImpedance[1],
+      steps: stepProfile(network.frequency),
       notes: sweep.notes,
     },
     { transaction },

@@ -44,7 +44,10 @@ export async function readQuoteTraces(
   const found = await findSubmittedQuote(person, quotePublicId);
   if (!found) return null;
   const [frame, sweeps, reported] = await Promise.all([
-    readScoringFrame(person, found.version.revisionId),
+    readScoringFrame(person, {
+      revisionId: found.version.revisionId,
+      measurementPlan: found.rfq.measurementPlan,
+    }),
     readVersionSweeps(person, found.version.id),
     reportedPlace(person, found, query),
   ]);

@@ -33,21 +33,14 @@ import {
 import { isMeasured } from "~/rf/line-definition";
 import { coversRange } from "~/rf/lot-temperature";
 import { identicalUnits } from "~/rf/same-data";
+import { lotOptionsOf, scoreSweep, setupInUse } from "~/rf/score-sweep";
 import { rfqNumber } from "~/workflow/numbers";
 import { recordEvent } from "./audit.server";
 import { readNetworks, type MeasuredNetwork } from "./measured-networks.server";
 import { queueMail } from "./outbox.server";
 import { receiptOf } from "./quote-submission.server";
 import { resultLines } from "./result-lines.server";
-import {
-  lotOptions,
-  readScoringFrame,
-  resultRow,
-  scoreSweep,
-  setupHash,
-  setupInUse,
-  type ScoringFrame,
-} from "./scoring-sweeps.server";
+import { readScoringFrame, resultRow, setupHash, type ScoringFrame } from "./scoring-sweeps.server";
 import { inTransaction } from "./transaction.server";
 import { standingOf, worstStanding, type LineStanding } from "./worst-line.server";
 
@@ -79,7 +72,7 @@ export async function scoreVersion(
   const sweeps = await readNetworks(SYSTEM, ids, (done) => report(done, ids.length));
   const missing = await missingSweepScores(subject, sweeps);
   const rows = evaluateLot(lotOf(subject, sweeps), subject.frame.requirements, {
-    ...lotOptions(subject.frame, subject.rfq),
+    ...lotOptionsOf(subject.frame, subject.rfq),
     basis: subject.version.basis,
   });
   await inTransaction((transaction) => storeScores(subject, sweeps, missing, rows, transaction));
@@ -88,11 +81,12 @@ export async function scoreVersion(
 async function readSubject(versionId: number): Promise<Subject> {
   const system = { actor: SYSTEM, rejectOnEmpty: true } as const;
   const version = await QuoteVersion.findByPk(versionId, system);
-  const [quote, rfq, frame] = await Promise.all([
+  const [quote, rfq] = await Promise.all([
     Quote.findByPk(version.quoteId, system),
     Rfq.findByPk(version.rfqId, system),
-    readScoringFrame(SYSTEM, version.revisionId),
   ]);
+  const { revisionId } = version;
+  const frame = await readScoringFrame(SYSTEM, { revisionId, measurementPlan: rfq.measurementPlan });
   return { version, quote, rfq, frame };
 }
 

@@ -1,6 +1,7 @@
 // One sweep: an uploaded Touchstone file under its unit and temperature.
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from "sequelize";
 import type { Note, Setup } from "../../app/rf/contract";
+import type { StepStretch } from "../../app/rf/step-profile";
 import { sequelize } from "../connection.server";
 import { id, instant, optionalInstant, publicId, reference } from "./columns";
 
@@ -18,6 +19,8 @@ export class MeasurementRow extends Model<InferAttributes<MeasurementRow>, Infer
   declare frequencyTo: number;
   declare impedance1: number;
   declare impedance2: number;
+  /** How fine the sweep is, stretch by stretch; null for a file stored before it was kept. */
+  declare steps: CreationOptional<readonly StepStretch[] | null>;
   declare notes: Note[];
   declare setup: CreationOptional<Setup | null>;
   declare removedAt: CreationOptional<Date | null>;
@@ -40,6 +43,7 @@ MeasurementRow.init(
     frequencyTo: { type: DataTypes.DOUBLE, allowNull: false },
     impedance1: { type: DataTypes.DOUBLE, allowNull: false },
     impedance2: { type: DataTypes.DOUBLE, allowNull: false },
+    steps: { type: DataTypes.JSON, allowNull: true },
     notes: { type: DataTypes.JSON, allowNull: false },
     setup: { type: DataTypes.JSON, allowNull: true },
     removedAt: { ...optionalInstant },

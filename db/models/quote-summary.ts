@@ -1,5 +1,6 @@
 // What comparison and lists read of a scored version.
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from "sequelize";
+import type { LotNote } from "../../app/rf/lot-notes";
 import { sequelize } from "../connection.server";
 import { instant, reference } from "./columns";
 
@@ -17,6 +18,7 @@ export class QuoteSummary extends Model<InferAttributes<QuoteSummary>, InferCrea
   declare units: number;
   declare unitsOverRange: number;
   declare temperatures: number;
+  declare notes: CreationOptional<readonly LotNote[]>;
   declare createdAt: Date;
 }
 
@@ -35,6 +37,7 @@ QuoteSummary.init(
     units: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
     unitsOverRange: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
     temperatures: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
+    notes: { type: DataTypes.JSON, allowNull: false, defaultValue: [] },
     createdAt: { ...instant },
   },
   { sequelize, tableName: "quote_summaries" },

@@ -1,6 +1,7 @@
 // A submission, frozen.
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from "sequelize";
 import type { Setup } from "../../app/rf/contract";
+import type { Instrument, StatedDrift } from "../../app/rf/stated-measurement";
 import { sequelize } from "../connection.server";
 import { hash, id, instant, reference } from "./columns";
 
@@ -28,6 +29,8 @@ export class QuoteVersion extends Model<InferAttributes<QuoteVersion>, InferCrea
   declare paymentTerms: CreationOptional<string | null>;
   declare remarks: CreationOptional<string | null>;
   declare setup: Setup;
+  declare instrument: CreationOptional<Instrument>;
+  declare drift: CreationOptional<StatedDrift | null>;
   declare contentHash: Buffer;
   declare createdAt: Date;
 }
@@ -57,6 +60,8 @@ QuoteVersion.init(
     paymentTerms: { type: DataTypes.STRING(500), allowNull: true },
     remarks: { type: DataTypes.TEXT, allowNull: true },
     setup: { type: DataTypes.JSON, allowNull: false },
+    instrument: { type: DataTypes.JSON, allowNull: false, defaultValue: {} },
+    drift: { type: DataTypes.JSON, allowNull: true },
     contentHash: { ...hash },
     createdAt: { ...instant },
   },

@@ -1,6 +1,7 @@
 // A request for quotation against one released revision.
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes } from "sequelize";
 import type { Setup } from "../../app/rf/contract";
+import type { MeasurementPlan } from "../../app/rf/measurement-plan";
 import { sequelize } from "../connection.server";
 import { id, instant, optionalInstant, publicId, reference } from "./columns";
 
@@ -26,6 +27,7 @@ export class Rfq extends Model<InferAttributes<Rfq>, InferCreationAttributes<Rfq
   declare unitsAsked: number;
   declare unitsOverRange: number;
   declare assumedSetup: Setup;
+  declare measurementPlan: CreationOptional<MeasurementPlan>;
   declare lockVersion: CreationOptional<number>;
   declare createdAt: Date;
 }
@@ -57,6 +59,7 @@ Rfq.init(
     unitsAsked: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
     unitsOverRange: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
     assumedSetup: { type: DataTypes.JSON, allowNull: false },
+    measurementPlan: { type: DataTypes.JSON, allowNull: false, defaultValue: {} },
     lockVersion: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false, defaultValue: 0 },
     createdAt: { ...instant },
   },

@@ -72,6 +72,8 @@ const ID_RULES: Readonly<Record<string, IdRule>> = {
   "/rfqs/:rfqId/decision": { id: "rfq", post: RECOMMENDATION },
   "/rfqs/:rfqId/history": { id: "rfq" },
   "/quotes/:quoteId": { id: "quote" },
+  "/quotes/:quoteId/curves": { id: "quote" },
+  "/quotes/:quoteId/outlook": { id: "quote" },
   "/quotes/:quoteId/terms": { id: "quote" },
   "/quotes/:quoteId/files": { id: "quote" },
   "/supplier/invitations/:invitationId": { id: "invitation", post: { intent: "start" } },
@@ -84,6 +86,7 @@ const ID_RULES: Readonly<Record<string, IdRule>> = {
   "/api/v1/quotes/:quoteId/measurements": { id: "quote", resource: true, post: { intent: "upload" } },
   "/api/v1/quotes/:quoteId/progress": { id: "quote", resource: true },
   "/api/v1/quotes/:quoteId/traces": { id: "quote", resource: true },
+  "/api/v1/quotes/:quoteId/curves": { id: "quote", resource: true },
   "/api/v1/measurements/:measurementId": {
     id: "measurement",
     resource: true,

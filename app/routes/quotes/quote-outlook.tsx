@@ -1,0 +1,23 @@
+// One quote's outlook.
+import { Page } from "~/components/page";
+import { QuoteBlock } from "~/components/quote-block";
+import { orNotFound, requireRight } from "~/services/request.server";
+import { readSubmittedHead } from "~/services/submitted-quotes.server";
+import type { Route } from "./+types/quote-outlook";
+
+export const meta: Route.MetaFunction = ({ loaderData: { head } }) => [
+  { title: `Outlook, ${head.supplierName}, ${head.rfq.number} · Tenderband` },
+];
+
+export async function loader({ request, context, params }: Route.LoaderArgs) {
+  const person = requireRight(context, request, "read-results");
+  return { head: orNotFound(await readSubmittedHead(person, params.quoteId)) };
+}
+
+export default function QuoteOutlook({ loaderData: { head } }: Route.ComponentProps) {
+  return (
+    <Page>
+      <QuoteBlock head={head} />
+    </Page>
+  );
+}
