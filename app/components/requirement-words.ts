@@ -141,6 +141,7 @@ function conditionsOf(definition: Measured): string[] {
     conditions.push(`below the least loss of ${formatBand(definition.relativeTo)}`);
   if ("level" in definition) conditions.push(`at ${formatQuantity(definition.level, "level")}`);
   if (definition.kind === "shape-factor") conditions.push(`${definition.levels.join(" to ")} dB`);
+  if (definition.maxStep !== undefined) conditions.push(`steps of ${shortFrequency(definition.maxStep)} at most`);
   if (definition.temperature !== undefined)
     conditions.push(definition.temperature === "ambient" ? "at ambient" : "over temperature");
   return conditions;
@@ -189,7 +190,7 @@ function limitWords(definition: Measured): string {
     case "phase-linearity":
       return `max ${level(definition.max)}°`;
     case "centre-frequency":
-      return `${formatFrequency(definition.nominal)} ± ${shortFrequency(definition.tolerance)}`;
+      return `${formatBand([definition.nominal, definition.nominal])} ± ${shortFrequency(definition.tolerance)}`;
     case "bandwidth":
       return bandwidthWords(definition);
     case "shape-factor":

@@ -3,8 +3,10 @@ import type { ReactNode } from "react";
 import type { FormState } from "~/forms/form";
 import { MOST_BREAKS } from "~/forms/rfq";
 import { PROPOSED_SETUP, SETUP_FIELDS } from "~/forms/setup";
+import { SETUP_HELP } from "~/forms/setup-help";
 import { Button } from "./button";
 import { Field, PostForm, SelectField, TextAreaField } from "./form";
+import { MeasurementPlanFields } from "./measurement-plan-fields";
 import { Section } from "./page";
 
 interface RfqFormProps {
@@ -31,11 +33,13 @@ export function RfqForm({ state, zones, idempotencyKey, lockVersion, save, besid
       {lockVersion === undefined ? null : (
         <input type="hidden" name="lockVersion" value={state.values.lockVersion ?? lockVersion} />
       )}
+      {/* Return in a field presses the first button of a form: saving, not "Remove". */}
+      <button name="intent" value="save" tabIndex={-1} aria-hidden className="sr-only" />
       <input type="hidden" name="currency" value={state.values.currency ?? ""} />
       <Request />
       <Quantities currency={state.values.currency ?? ""} />
       <Due zones={zones} state={state} />
-      <MeasurementPlan />
+      <MeasurementPlanFields state={state} />
       <AssumedSetup />
       <div className="mt-9 flex flex-wrap items-center gap-5 border-t border-rule pt-5">
         <Button kind="filled">{save}</Button>
@@ -113,30 +117,6 @@ function Due({ zones, state }: { zones: readonly string[]; state: FormState }) {
   );
 }
 
-function MeasurementPlan() {
-  return (
-    <Section
-      title="Measured data asked"
-      note="Suppliers see what is asked, what they have delivered and what is missing."
-    >
-      <div className="grid gap-4 tablet:grid-cols-2 desktop:grid-cols-4">
-        <Field
-          name="unitsAsked"
-          label="Units in all"
-          inputMode="numeric"
-          hint="Each with its serial and its own files"
-        />
-        <Field
-          name="unitsOverRange"
-          label="Of these over temperature"
-          inputMode="numeric"
-          hint="Measured at ambient and at both ends of the range"
-        />
-      </div>
-    </Section>
-  );
-}
-
 const HELP: Partial<Record<(typeof SETUP_FIELDS)[number]["field"], string>> = {
   transmission: "k = 2, on |S21| well above the noise",
   transmissionRelative: "Between two points of a sweep; blank: from both points' own",
@@ -177,6 +157,25 @@ function AssumedSetup() {
           hint="An rms figure is lowered to a peak one"
         />
       </div>
+      <SetupHelp />
     </Section>
+  );
+}
+
+function SetupHelp() {
+  return (
+    <details className="mt-4 text-13">
+      <summary className="text-signal">Where to find each figure</summary>
+      <dl className="mt-2 max-w-210 border-t border-rule">
+        {[...SETUP_FIELDS, { field: "noiseFloorKind", label: "Noise floor, peak or rms" } as const].map(
+          ({ field, label }) => (
+            <div key={field} className="gap-x-5 border-b border-rule py-2 tablet:grid tablet:grid-cols-[220px_1fr]">
+              <dt className="text-quiet">{label}</dt>
+              <dd>{SETUP_HELP[field]}</dd>
+            </div>
+          ),
+        )}
+      </dl>
+    </details>
   );
 }

@@ -1,8 +1,11 @@
 // What an RFQ asks for, as its overview shows it: text, quantities, measured data, assumed setup.
 import type { ReactNode } from "react";
+import type { MeasurementPlan } from "~/rf/measurement-plan";
 import { Cell, Row, RowHead, Table } from "./data-table";
+import { FactLines } from "./fact-lines";
 import { DueDate, Instant } from "./figure";
 import { formatNumber } from "./format";
+import { COVERAGE_SENTENCE, planFacts } from "./measurement-plan-words";
 import { Section, Split } from "./page";
 import type { RfqBlockHead } from "./rfq-block";
 
@@ -11,6 +14,9 @@ export interface RfqTermsData {
   readonly breaks: readonly number[];
   readonly unitsAsked: number;
   readonly unitsOverRange: number;
+  readonly measurementPlan: MeasurementPlan;
+  /** Hz; of the specification. */
+  readonly lowestTestFrequency: number | null;
   /** Label and figure with its unit. */
   readonly assumedSetup: readonly (readonly [label: string, figure: string])[];
   readonly temperatureRange: readonly [number, number] | null;
@@ -35,6 +41,12 @@ export function RfqTerms({ head, terms }: { head: RfqBlockHead; terms: RfqTermsD
         <Section title="What is asked">
           <Facts label="What is asked" rows={asked(head, terms)} />
         </Section>
+        <Section
+          title="Measurement plan"
+          note={terms.measurementPlan.sweeps === undefined ? undefined : COVERAGE_SENTENCE}
+        >
+          <Facts label="Measurement plan" rows={planned(terms)} />
+        </Section>
         <Section title="Text to the suppliers">
           {terms.text === null ? (
             <p className="text-13 text-quiet">None.</p>
@@ -53,23 +65,33 @@ export function RfqTerms({ head, terms }: { head: RfqBlockHead; terms: RfqTermsD
 type FactRow = readonly [label: string, value: ReactNode];
 
 function asked(head: RfqBlockHead, terms: RfqTermsData): FactRow[] {
-  const { temperatureRange: range, unitsOverRange, dueZone } = { ...terms, dueZone: head.dueZone };
+  const { dueZone } = head;
   const instant = (at: string) => <Instant at={at} zone={dueZone} />;
   return [
     ["Unit price at", terms.breaks.map((quantity) => formatNumber(quantity, 0)).join(" · ")],
     ["Compared at", `${formatNumber(head.quantity, 0)} pieces, in ${head.currency}`],
     ["Decision rule", RULES[head.decisionRule]],
-    ["Units measured", `${terms.unitsAsked} in all`],
-    [
-      "Over temperature",
-      range === null
-        ? `ambient ${celsius(terms.ambient)} °C only: the specification gives no range`
-        : `${unitsOverRange} at ${celsius(terms.ambient)} °C and at both ends of ${celsius(range[0])} to ${celsius(range[1])} °C`,
-    ],
     ["Quotes due", <DueDate key="due" at={head.dueAt} zone={dueZone} now={terms.now} state={head.state} />],
     ["Written", instant(terms.createdAt)],
     ...(terms.openedAt === null ? [] : [["Opened", instant(terms.openedAt)] as const]),
     ...(terms.closedAt === null ? [] : [["Closed", instant(terms.closedAt)] as const]),
+  ];
+}
+
+function planned(terms: RfqTermsData): FactRow[] {
+  const { temperatureRange: range, unitsOverRange, ambient } = terms;
+  return [
+    ["Units measured", `${terms.unitsAsked} in all`],
+    [
+      "Over temperature",
+      range === null
+        ? `ambient ${celsius(ambient)} °C only: the specification gives no range`
+        : `${unitsOverRange} at ${celsius(ambient)} °C and at both ends of ${celsius(range[0])} to ${celsius(range[1])} °C`,
+    ],
+    ...planFacts(terms.measurementPlan, terms.lowestTestFrequency).map(([label, lines]): FactRow => [
+      label,
+      <FactLines key={label} lines={lines} />,
+    ]),
   ];
 }
 

@@ -1,11 +1,18 @@
 // One requirement as it is typed: kind, band, limit, and beneath them what its kind adds and how it reads.
 import { X } from "lucide-react";
-import type { ReactNode } from "react";
-import type { FormValues } from "~/forms/fields";
+import { useState, type ReactNode } from "react";
 import type { FieldErrors } from "~/forms/form";
-import { LINE_KINDS, toDefinition, type SpecificationLineKind } from "~/forms/specification";
-import { FieldError } from "./field-error";
-import { useField } from "./form-state";
+import { LINE_KINDS, toDefinition } from "~/forms/specification";
+import {
+  isBlank,
+  kindOf,
+  LINE_FIELDS,
+  TEXT_FIELDS,
+  type SpecificationLineKind,
+  type TextField,
+} from "~/forms/specification-line-kinds";
+import { Button } from "./button";
+import { EntryCell, EntryChoice, EntryErrors } from "./entry-cell";
 import { describeDefinition, kindName } from "./requirement-words";
 import type { ReadRow } from "./specification-rows";
 
@@ -31,55 +38,33 @@ export function LineHeads() {
       <span>Requirement</span>
       <span>From, MHz</span>
       <span>To, MHz</span>
-      <span>Limit, dB</span>
-      <span>At upper edge, dB</span>
+      <span>Limit</span>
+      <span>At upper edge</span>
     </div>
   );
 }
 
 export function LineFields({ row, liveErrors, onChange, onRemove }: LineFieldsProps) {
   const { index, fields, lineNumber } = row;
-  const kind = LINE_KINDS.find((offered) => offered === fields.kind);
+  const kind = kindOf(fields);
   const prefix = `lines.${index}.`;
-  const cell = (field: string, label: string, className = "") => (
-    <Cell
-      name={prefix + field}
-      label={label}
-      value={fields[field] ?? ""}
-      liveErrors={liveErrors}
-      onChange={(value) => onChange(field, value)}
-      className={className}
-    />
-  );
   return (
     <fieldset className={`${columns} min-w-0 border-b border-rule py-1.5`}>
       <legend className="sr-only">{lineNumber === "" ? "New line" : `Line ${lineNumber}`}</legend>
       <input type="hidden" name={`${prefix}lineKey`} value={fields.lineKey ?? ""} />
-      <b className="self-start py-2 text-13 max-tablet:-order-1">
+      <b className="self-end py-2 text-13 max-tablet:-order-1">
         {lineNumber === "" ? <span className="text-quiet">–</span> : lineNumber}
       </b>
-      <Choice
+      <EntryChoice
         name={`${prefix}kind`}
         label="Requirement"
         value={fields.kind ?? ""}
         options={kindOptions}
         liveErrors={liveErrors}
         onChange={(value) => onChange("kind", value)}
-        className="max-tablet:col-span-2"
+        className="self-end max-tablet:col-span-2"
       />
-      {kind === "declared" ? (
-        <>
-          {cell("name", "What is declared", "col-span-2")}
-          {cell("limit", "Limit in words", "col-span-2")}
-        </>
-      ) : (
-        <>
-          {cell("from", "From, MHz")}
-          {cell("to", "To, MHz")}
-          {cell("limit", "Limit, dB")}
-          {takes(kind, fields, "limitEnd") ? cell("limitEnd", "At upper edge, dB") : <span aria-hidden />}
-        </>
-      )}
+      <MainCells {...{ row, liveErrors, onChange, kind }} />
       <button
         name="intent"
         value={`remove-line.${index}`}
@@ -89,12 +74,20 @@ export function LineFields({ row, liveErrors, onChange, onRemove }: LineFieldsPr
           event.preventDefault();
           onRemove();
         }}
-        className="grid size-9 place-items-center justify-self-end text-quiet hover:text-fail max-tablet:-order-1 pointer-coarse:size-11"
+        className="grid size-9 place-items-center self-end justify-self-end text-quiet hover:text-fail max-tablet:-order-1 pointer-coarse:size-11"
       >
         <X size={20} strokeWidth={1.75} aria-hidden />
       </button>
-      <RowErrors index={index} liveErrors={liveErrors} />
-      <Conditions {...{ row, liveErrors, onChange, kind }} />
+      <EntryErrors
+        names={["kind", ...mainOf(kind).map(({ field }) => field)].map((field) => prefix + field)}
+        liveErrors={liveErrors}
+        className={underFields}
+      />
+      {kind === undefined ? (
+        <KindButton className={underFields} />
+      ) : (
+        <Conditions {...{ row, liveErrors, onChange, kind }} />
+      )}
       <Echo row={row} />
     </fieldset>
   );
@@ -114,69 +107,174 @@ const portOptions = [
   { value: "2", label: "2" },
 ];
 
-const TAKEN: Record<SpecificationLineKind, readonly string[]> = {
-  "insertion-loss": ["limitEnd", "temperature"],
-  ripple: ["window", "temperature"],
-  rejection: ["limitEnd", "relativeFrom", "relativeTo", "temperature"],
-  "reverse-isolation": ["limitEnd", "temperature"],
-  "return-loss": ["limitEnd", "port", "temperature"],
-  declared: [],
+interface MainCell {
+  readonly field: TextField;
+  readonly label: string;
+  readonly unit?: string;
+  /** The table's head does not say what it is. */
+  readonly isOwn?: boolean;
+  readonly className?: string;
+}
+
+const EDGES: readonly MainCell[] = [
+  { field: "from", label: "From, MHz" },
+  { field: "to", label: "To, MHz" },
+];
+const LEVELS: readonly MainCell[] = [
+  ...EDGES,
+  { field: "limit", label: "Limit", unit: "dB" },
+  { field: "limitEnd", label: "At upper edge", unit: "dB" },
+];
+const limitIn = (unit: string): readonly MainCell[] => [...EDGES, { field: "limit", label: "Limit", unit }];
+const own = (field: TextField, label: string, unit?: string): MainCell => ({
+  field,
+  label,
+  isOwn: true,
+  ...(unit === undefined ? {} : { unit }),
+});
+
+/** What stands in a row's first line, after the kind: four columns. */
+const MAIN: Readonly<Record<SpecificationLineKind, readonly MainCell[]>> = {
+  "insertion-loss": LEVELS,
+  ripple: limitIn("dB"),
+  "centre-frequency": [
+    own("nominal", "Nominal", "MHz"),
+    own("limit", "Tolerance, ±", "MHz"),
+    own("level", "Below the peak", "dB"),
+  ],
+  bandwidth: [own("least", "Min", "MHz"), own("largest", "Max", "MHz"), own("level", "Below the peak", "dB")],
+  rejection: LEVELS,
+  "reverse-isolation": LEVELS,
+  "shape-factor": [own("level", "First level", "dB"), own("levelEnd", "Second level", "dB"), own("limit", "Max ratio")],
+  "return-loss": LEVELS,
+  "group-delay": limitIn("ns"),
+  "group-delay-variation": limitIn("ns"),
+  "phase-linearity": limitIn("°"),
+  declared: [
+    { field: "name", label: "What is declared", isOwn: true, className: "col-span-2" },
+    { field: "limit", label: "Limit in words", isOwn: true, className: "col-span-2" },
+  ],
 };
 
-/** Text in a field the kind does not take stays in sight: it is refused there, and has to be cleared. */
-const takes = (kind: SpecificationLineKind | undefined, fields: FormValues, field: string): boolean =>
-  kind === undefined || TAKEN[kind].includes(field) || (fields[field] ?? "").trim() !== "";
+const mainOf = (kind: SpecificationLineKind | undefined) => (kind === undefined ? LEVELS : MAIN[kind]);
+const COLUMNS = 4;
+
+type PartProps<Kind> = Pick<LineFieldsProps, "row" | "liveErrors" | "onChange"> & { kind: Kind };
+
+function MainCells({ row, liveErrors, onChange, kind }: PartProps<SpecificationLineKind | undefined>) {
+  const cells = mainOf(kind);
+  const empty = kind === "declared" ? 0 : COLUMNS - cells.length;
+  return (
+    <>
+      {cells.map(({ field, label, unit, isOwn = false, className = "" }) => (
+        <EntryCell
+          key={field}
+          name={`lines.${row.index}.${field}`}
+          label={label}
+          value={row.fields[field] ?? ""}
+          liveErrors={liveErrors}
+          onChange={(value) => onChange(field, value)}
+          caption={isOwn ? "over" : "head"}
+          className={`self-end ${className}`}
+          {...(unit === undefined ? {} : { unit })}
+        />
+      ))}
+      {Array.from({ length: empty }, (_, place) => (
+        <span key={place} aria-hidden className="max-tablet:hidden" />
+      ))}
+    </>
+  );
+}
 
 const underFields = "col-span-2 tablet:col-span-5 tablet:col-start-2";
 
-function Conditions(
-  props: Pick<LineFieldsProps, "row" | "liveErrors" | "onChange"> & { kind?: SpecificationLineKind },
-) {
-  const { row, liveErrors, onChange, kind } = props;
+const CONDITIONS: readonly TextField[] = ["relativeFrom", "relativeTo", "window", "aperture"];
+const RARER: readonly TextField[] = ["withinFrom", "withinTo", "maxStep"];
+
+const FIELD_LABELS: Readonly<Record<TextField | "port" | "temperature", string>> = {
+  from: "From, MHz",
+  to: "To, MHz",
+  limit: "Limit",
+  limitEnd: "At upper edge",
+  nominal: "Nominal, MHz",
+  least: "Min, MHz",
+  largest: "Max, MHz",
+  level: "Below the peak, dB",
+  levelEnd: "Second level, dB",
+  name: "What is declared",
+  relativeFrom: "Relative to loss from",
+  relativeTo: "Relative to loss to, MHz",
+  withinFrom: "Peak sought from",
+  withinTo: "Peak sought to, MHz",
+  window: "In any window of, MHz",
+  aperture: "Aperture, MHz",
+  maxStep: "Largest step, MHz",
+  port: "Port",
+  temperature: "Temperature",
+};
+
+function Conditions({ row, liveErrors, onChange, kind }: PartProps<SpecificationLineKind>) {
   const { fields, index } = row;
-  const shown = (field: string) => takes(kind, fields, field);
-  const common = (field: string) => ({
+  const taken = LINE_FIELDS[kind];
+  const entry = (field: keyof typeof FIELD_LABELS) => ({
     name: `lines.${index}.${field}`,
+    label: FIELD_LABELS[field],
     value: fields[field] ?? "",
     liveErrors,
     onChange: (value: string) => onChange(field, value),
-    inline: true,
+    caption: "beside" as const,
   });
-  const parts = (
-    <div className={`${underFields} flex flex-wrap gap-x-5`}>
-      {shown("port") && kind !== "declared" && <Choice {...common("port")} label="Port" options={portOptions} />}
-      {shown("relativeFrom") || shown("relativeTo") ? (
-        <>
-          <Cell {...common("relativeFrom")} label="Relative to loss from" />
-          <Cell {...common("relativeTo")} label="to, MHz" />
-        </>
-      ) : null}
-      {shown("window") && <Cell {...common("window")} label="In any window of, MHz" />}
-      {shown("temperature") && <Choice {...common("temperature")} label="Temperature" options={temperatureOptions} />}
-      {kind !== "declared" && shown("name") && (fields.name ?? "") !== "" && <Cell {...common("name")} label="Name" />}
-    </div>
-  );
-  // A row without a kind shows what kinds add only to a reader without script, who cannot see it appear.
-  if (kind !== undefined) return parts;
-  return <noscript className={underFields}>{parts}</noscript>;
-}
-
-/** The columns are too narrow for sentences: those of the main fields stand under them, over the row's whole width. */
-const MAIN_FIELDS = ["kind", "name", "from", "to", "limit", "limitEnd"] as const;
-
-function RowErrors({ index, liveErrors }: { index: number; liveErrors: FieldErrors }) {
+  // Text in a field the kind does not take stays in sight: it is refused there, and has to be cleared.
+  const strays = TEXT_FIELDS.filter((field) => !taken.includes(field) && !isBlank(fields[field]));
+  const cells = (names: readonly TextField[]) =>
+    names.filter((field) => taken.includes(field)).map((field) => <EntryCell key={field} {...entry(field)} />);
   return (
-    <div className={`${underFields} pl-2 empty:hidden`}>
-      {MAIN_FIELDS.map((field) => (
-        <MainError key={field} name={`lines.${index}.${field}`} liveErrors={liveErrors} />
+    <div className={`${underFields} flex flex-wrap gap-x-5`}>
+      {kind === "return-loss" ? <EntryChoice {...entry("port")} options={portOptions} /> : null}
+      {cells(CONDITIONS)}
+      {kind === "declared" && isBlank(fields.temperature) ? null : (
+        <EntryChoice {...entry("temperature")} options={temperatureOptions} />
+      )}
+      {strays.map((field) => (
+        <EntryCell key={field} {...entry(field)} />
       ))}
+      {kind === "declared" ? null : (
+        <Rarer
+          isFilled={RARER.some((field) => !isBlank(fields[field]))}
+          isWrong={RARER.some((field) => liveErrors[`lines.${index}.${field}`] !== undefined)}
+        >
+          {cells(RARER)}
+        </Rarer>
+      )}
+      <KindButton />
     </div>
   );
 }
 
-function MainError(props: Pick<ControlProps, "name" | "liveErrors">) {
-  const { error, errorId } = useCell(props);
-  return <FieldError id={errorId}>{error}</FieldError>;
+/** Folded away while nothing stands in it; its entries are sent either way. */
+function Rarer({ isFilled, isWrong, children }: { isFilled: boolean; isWrong: boolean; children: ReactNode }) {
+  const [isOpen, setOpen] = useState(isFilled);
+  return (
+    <details
+      open={isOpen || isWrong}
+      onToggle={(event) => setOpen(event.currentTarget.open)}
+      className="pl-2 open:basis-full"
+    >
+      <summary className="w-fit py-2.5 text-12 text-signal pointer-coarse:py-3.5">More</summary>
+      <div className="flex flex-wrap gap-x-5 [&>*]:-ml-2">{children}</div>
+    </details>
+  );
+}
+
+/** Without script a changed kind shows its fields when the page is drawn again. */
+function KindButton({ className = "" }: { className?: string }) {
+  return (
+    <noscript className={className}>
+      <Button kind="plain" name="intent" value="show-fields">
+        Show the fields of this kind
+      </Button>
+    </noscript>
+  );
 }
 
 /** How the row is understood, in the words of the requirement table. */
@@ -185,85 +283,8 @@ function Echo({ row }: { row: ReadRow }) {
   const { band, limit } = describeDefinition(toDefinition(row.requirement).definition);
   return (
     <p className={`${underFields} pb-1 pl-2 text-12 text-quiet`}>
-      = {limit}, {band}
+      = {limit}
+      {band === "" ? "" : `, ${band}`}
     </p>
-  );
-}
-
-interface ControlProps {
-  name: string;
-  label: string;
-  value: string;
-  liveErrors: FieldErrors;
-  onChange: (value: string) => void;
-  /** Caption beside the control, at every width. */
-  inline?: boolean;
-  className?: string;
-}
-
-const control =
-  "h-9 rounded-field border bg-leaf px-2 text-13 text-ink hover:border-edge focus-visible:outline-offset-[-2px]";
-
-function useCell({ name, liveErrors }: Pick<ControlProps, "name" | "liveErrors">) {
-  const field = useField(name);
-  const error = field.error === undefined ? undefined : liveErrors[name]?.join(" ");
-  const attributes = error === undefined ? { id: field.id, name } : field.attributes;
-  return { attributes, id: field.id, errorId: field.errorId, error };
-}
-
-function Framed(props: ControlProps & { id: string; errorId: string; error: string | undefined; children: ReactNode }) {
-  const { inline = false, className = "" } = props;
-  return (
-    <div className={`min-w-0 ${className}`}>
-      <div className={inline ? "flex items-center gap-2 pl-2" : ""}>
-        <label
-          htmlFor={props.id}
-          className={`block text-12 text-quiet ${inline ? "whitespace-nowrap" : "pl-2 tablet:sr-only"}`}
-        >
-          {props.label}
-        </label>
-        {props.children}
-      </div>
-      {inline ? <FieldError id={props.errorId}>{props.error}</FieldError> : null}
-    </div>
-  );
-}
-
-const border = (error: string | undefined) =>
-  error === undefined ? "border-transparent" : "border-fail [box-shadow:inset_0_0_0_1px_var(--color-fail)]";
-
-function Cell(props: ControlProps) {
-  const { attributes, ...frame } = useCell(props);
-  return (
-    <Framed {...props} {...frame}>
-      <input
-        {...attributes}
-        type="text"
-        value={props.value}
-        autoComplete="off"
-        onChange={(event) => props.onChange(event.target.value)}
-        className={`${control} ${border(frame.error)} tabular-nums ${props.inline ? "w-26" : "w-full"}`}
-      />
-    </Framed>
-  );
-}
-
-function Choice(props: ControlProps & { options: readonly { value: string; label: string }[] }) {
-  const { attributes, ...frame } = useCell(props);
-  return (
-    <Framed {...props} {...frame}>
-      <select
-        {...attributes}
-        value={props.value}
-        onChange={(event) => props.onChange(event.target.value)}
-        className={`${control} ${border(frame.error)} ${props.inline ? "" : "w-full"}`}
-      >
-        {props.options.map((option) => (
-          <option key={option.value} value={option.value}>
-            {option.label}
-          </option>
-        ))}
-      </select>
-    </Framed>
   );
 }

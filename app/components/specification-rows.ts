@@ -1,40 +1,26 @@
-// Rows of the specification form as flat field values: which there are, one more, one less, and what each reads as.
+// Rows of the specification form: one more, one less, and what each reads as while it is typed.
 import { groupRows, type FormValues } from "~/forms/fields";
-import { isBlankLine, LINE_KINDS, parseLine, type SpecificationRequirement } from "~/forms/specification-line";
+import { parseLine } from "~/forms/specification-line";
+import { isBlankLine, kindOf, type SpecificationRequirement } from "~/forms/specification-line-kinds";
 import { numberRevision } from "~/rf/line-numbers";
+import { addRow, changeRows, removeRow, rowIndices, withRowsOf, type RowGroup } from "./form-rows";
 
 /** Rows a new form begins with. */
 export const BLANK_ROWS = 3;
 
-/** Indices of the rows, ascending; gaps are what was removed. */
-export const lineIndices = (values: FormValues): number[] => groupRows(values, "lines").map(({ index }) => index);
+const LINES: RowGroup = { group: "lines", field: "kind", noun: "line" };
 
-/** Values with an empty row after the last. */
-export function addLine(values: FormValues): FormValues {
-  const index = Math.max(-1, ...lineIndices(values)) + 1;
-  return { ...values, [`lines.${index}.kind`]: "" };
-}
+export const lineIndices = (values: FormValues): number[] => rowIndices(values, LINES);
+export const addLine = (values: FormValues): FormValues => addRow(values, LINES);
+export const removeLine = (values: FormValues, index: number): FormValues => removeRow(values, LINES, index);
+export const withRows = (values: FormValues, count = 1): FormValues => withRowsOf(values, LINES, count);
 
-/** Values without the row of this index. */
-export function removeLine(values: FormValues, index: number): FormValues {
-  const prefix = `lines.${index}.`;
-  return Object.fromEntries(Object.entries(values).filter(([name]) => !name.startsWith(prefix)));
-}
-
-/** Values with at least one row to type in. */
-export const withRows = (values: FormValues, count = 1): FormValues => {
-  let filled = values;
-  while (lineIndices(filled).length < count) filled = addLine(filled);
-  return filled;
-};
-
-/** What a form's submit button asks for, besides saving: "add-line", "remove-line.3". Null for anything else. */
-export function editRows(values: FormValues): FormValues | null {
-  const intent = values.intent ?? "";
-  if (intent === "add-line") return addLine(values);
-  const removed = /^remove-line\.(\d{1,4})$/.exec(intent)?.[1];
-  return removed === undefined ? null : withRows(removeLine(values, Number(removed)));
-}
+/**
+ * What a submit button asks for besides saving: "add-line", "remove-line.3", and "show-fields", which draws the fields of the
+ * kinds as they are chosen. Null for anything else.
+ */
+export const editRows = (values: FormValues): FormValues | null =>
+  values.intent === "show-fields" ? values : changeRows(values, LINES);
 
 export interface ReadRow {
   readonly index: number;
@@ -55,7 +41,7 @@ export function readRows(values: FormValues, released: ReadonlyMap<string, strin
   const keyOf = ({ index, fields }: { index: number; fields: FormValues }) =>
     fields.lineKey === undefined || fields.lineKey === "" ? `row-${index}` : fields.lineKey;
   const kinds = rows.flatMap((row) => {
-    const kind = LINE_KINDS.find((offered) => offered === row.fields.kind);
+    const kind = kindOf(row.fields);
     return kind === undefined ? [] : [{ lineKey: keyOf(row), kind }];
   });
   const numbers = new Map(numberRevision(kinds, released).map((number, place) => [kinds[place]?.lineKey, number]));
@@ -67,6 +53,8 @@ export function readRows(values: FormValues, released: ReadonlyMap<string, strin
 
 function readRow(fields: FormValues, lineKey: string): SpecificationRequirement | undefined {
   const errors = {};
-  const requirement = parseLine({ ...fields, lineKey }, () => lineKey, errors, "");
+  // The list of ports stands at its first entry until another is chosen.
+  const port = fields.port === undefined || fields.port === "" ? "1" : fields.port;
+  const requirement = parseLine({ ...fields, port, lineKey }, () => lineKey, errors, "");
   return Object.keys(errors).length === 0 ? requirement : undefined;
 }

@@ -1,4 +1,4 @@
-// The form of an RFQ: quantities, due date with its zone, decision rule, what is assumed of a measurement, and whom to invite.
+// The form of an RFQ: quantities, due date with its zone, decision rule, measurement plan, what is assumed of a measurement, whom to invite.
 import { z } from "zod";
 import { isCurrency } from "~/commerce/currencies";
 import type { FieldErrors } from "~/forms/form";
@@ -19,9 +19,11 @@ import {
   type FormResult,
   type FormValues,
 } from "~/forms/fields";
+import { planToValues, readPlan } from "~/forms/measurement-plan";
 import { readSetup, setupToValues } from "~/forms/setup";
 import { readZonedTime, zonedTimeToText } from "~/forms/zoned-time";
 import type { Setup } from "~/rf/contract";
+import type { MeasurementPlan } from "~/rf/measurement-plan";
 
 export const MOST_BREAKS = 6;
 export const MOST_INVITATIONS = 30;
@@ -51,6 +53,8 @@ export interface RfqInput {
   readonly text: string;
   readonly unitsAsked: number;
   readonly unitsOverRange: number;
+  /** `{}` where nothing is asked. */
+  readonly measurementPlan: MeasurementPlan;
   readonly assumedSetup: Setup;
   readonly invitations: readonly InvitationInput[];
 }
@@ -76,7 +80,7 @@ const Header = z.object({
 
 /**
  * Reads the posted form: `title`, `breaks.0` …, `askedQuantity`, `dueDate`, `dueTime`, `dueZone` (`dueOffset` where a time occurs twice),
- * `decisionRule`, `currency`, `text`, `unitsAsked`, `unitsOverRange`, `setup.*`, `invitations.0.company`, `invitations.0.email` …
+ * `decisionRule`, `currency`, `text`, `unitsAsked`, `unitsOverRange`, `sweeps.0.from` …, `plan.*`, `setup.*`, `invitations.0.company`, `invitations.0.email` …
  * @param now the clock to compare the due date with; the service asks the database's again
  */
 export function parseRfqForm(source: FormData | FormValues, { now }: { readonly now: Date }): FormResult<RfqInput> {
@@ -85,6 +89,7 @@ export function parseRfqForm(source: FormData | FormValues, { now }: { readonly 
   const header = collect(Header, values, errors);
   const breaks = readBreaks(values, errors);
   const dueAt = readDue(values, now, errors);
+  const measurementPlan = readPlan(values, errors);
   const assumedSetup = readSetup(values, errors, true);
   const invitations = readInvitations(values, errors);
   if (header && breaks.length > 0 && !breaks.includes(header.askedQuantity)) {
@@ -95,7 +100,7 @@ export function parseRfqForm(source: FormData | FormValues, { now }: { readonly 
   }
   if (!header || !dueAt || hasErrors(errors)) return { ok: false, errors, values };
   const dueZone = (values.dueZone ?? "").trim();
-  return { ok: true, value: { ...header, breaks, dueAt, dueZone, assumedSetup, invitations } };
+  return { ok: true, value: { ...header, breaks, dueAt, dueZone, measurementPlan, assumedSetup, invitations } };
 }
 
 function readBreaks(values: FormValues, errors: FieldErrors): number[] {
@@ -171,6 +176,7 @@ export function rfqToValues(rfq: RfqInput): FormValues {
     text: rfq.text,
     unitsAsked: String(rfq.unitsAsked),
     unitsOverRange: String(rfq.unitsOverRange),
+    ...planToValues(rfq.measurementPlan),
     ...setupToValues(rfq.assumedSetup),
   };
   rfq.breaks.forEach((quantity, index) => (values[`breaks.${index}`] = String(quantity)));

@@ -1,125 +1,173 @@
-// One row of the specification form: which fields each kind takes, and what they come to.
+// One row of the specification form read: the requirement its fields come to, or what is wrong with which.
 import { z } from "zod";
 import type { FieldErrors } from "~/forms/form";
 import { addError, collect, optionalQuantityField, quantityField, textField, type FormValues } from "~/forms/fields";
-import type { Band, Limit, Requirement } from "~/rf/contract";
-import { formatBand, formatQuantity, parseQuantity, type LevelMeaning } from "~/rf/quantity";
-
-/** A line the supplier states instead of measuring: what, and the limit in words. */
-export interface DeclaredRequirement {
-  readonly id: string;
-  readonly kind: "declared";
-  readonly name: string;
-  readonly limit: string;
-}
-
-/** Kinds the form offers, in the order of their groups. */
-export const LINE_KINDS = [
-  "insertion-loss",
-  "ripple",
-  "rejection",
-  "reverse-isolation",
-  "return-loss",
-  "declared",
-] as const;
-
-export type SpecificationLineKind = (typeof LINE_KINDS)[number];
-export type SpecificationRequirement = Requirement | DeclaredRequirement;
-
-/** The unit a bare frequency is in. */
-export const FREQUENCY_UNIT = "MHz";
+import {
+  FREQUENCY_UNIT,
+  isBlank,
+  kindOf,
+  LINE_FIELDS,
+  TEXT_FIELDS,
+  type SpecificationLineKind,
+  type SpecificationRequirement,
+} from "~/forms/specification-line-kinds";
+import type { Band, Limit } from "~/rf/contract";
+import { formatQuantity, type LevelMeaning } from "~/rf/quantity";
 
 /** Highest limit taken: beyond it nothing is measured, and a comma meant as a decimal mark shows. */
 const HIGHEST_LEVEL = 200;
 const HIGHEST_FREQUENCY = 1e13;
+const LONGEST_DELAY = 1;
+const LARGEST_PHASE = 360;
+const LARGEST_RATIO = 1000;
 
-/** Fields that hold text of the row; a row where these and the kind are blank was never begun. */
-const TEXT_FIELDS = ["from", "to", "limit", "limitEnd", "relativeFrom", "relativeTo", "window", "name"] as const;
-
-type TextField = (typeof TEXT_FIELDS)[number];
-
-const blank = (text: string | undefined) => (text ?? "").trim() === "";
-
-export const isBlankLine = (fields: FormValues): boolean =>
-  blank(fields.kind) && TEXT_FIELDS.every((field) => blank(fields[field]));
+interface Context {
+  addIssue(message: string): void;
+}
 
 const frequency = { kind: "frequency", unit: FREQUENCY_UNIT } as const;
+const hertz = (value: number) => formatQuantity(value, "frequency");
+
+/** A figure above 0 and up to `most`; the words of `print` show how it was read. */
+const reach =
+  (what: string, most: number, zero: string, print: (value: number) => string) =>
+  (value: number | null, context: Context) => {
+    if (value === null || Number.isNaN(value)) return;
+    if (value <= 0) context.addIssue(`${what} is more than ${zero}.`);
+    else if (value > most) context.addIssue(`${what} is at most ${print(most)}; this reads as ${print(value)}.`);
+  };
+
+const decibels = (value: number) => formatQuantity(value, "level");
+const reachOfLevel = (what: string) => reach(what, HIGHEST_LEVEL, "0 dB", decibels);
+const reachOfFrequency = (what: string) => reach(what, HIGHEST_FREQUENCY, "0 Hz", hertz);
+
+const level = (meaning: LevelMeaning) =>
+  quantityField({ kind: "level", unit: "dB", meaning }, "Enter the limit.").superRefine(reachOfLevel("A limit"));
+const optionalLevel = (meaning: LevelMeaning) =>
+  optionalQuantityField({ kind: "level", unit: "dB", meaning }).superRefine(reachOfLevel("A limit"));
+/** Of the response below its peak. */
+const below = (empty: string) =>
+  quantityField({ kind: "level", unit: "dB", meaning: "loss" }, empty).superRefine(reachOfLevel("A level"));
+const delay = quantityField({ kind: "time", unit: "ns" }, "Enter the limit.").superRefine(
+  reach("A limit", LONGEST_DELAY, "0 ns", (value) => formatQuantity(value, "time")),
+);
+const positive = (what: string, empty: string) => quantityField(frequency, empty).superRefine(reachOfFrequency(what));
+const optionalPositive = (what: string) => optionalQuantityField(frequency).superRefine(reachOfFrequency(what));
+const degrees = quantityField({ kind: "plain", unit: "" }, "Enter the limit.").superRefine(
+  reach("A limit", LARGEST_PHASE, "0°", (value) => `${formatQuantity(value, "plain")}°`),
+);
+const ratio = quantityField({ kind: "plain", unit: "" }, "Enter the largest ratio.").superRefine((value, context) => {
+  if (value < 1) context.addIssue("A shape factor is 1 or more.");
+  if (value > LARGEST_RATIO) context.addIssue(`A shape factor is at most ${LARGEST_RATIO}.`);
+});
+
+const LINE_NAMES: Readonly<Record<SpecificationLineKind, string>> = {
+  "insertion-loss": "Insertion loss",
+  ripple: "Ripple",
+  "centre-frequency": "Centre frequency",
+  bandwidth: "Bandwidth",
+  rejection: "Rejection",
+  "reverse-isolation": "Reverse isolation",
+  "shape-factor": "Shape factor",
+  "return-loss": "Return loss",
+  "group-delay": "Group delay",
+  "group-delay-variation": "Group delay variation",
+  "phase-linearity": "Phase linearity",
+  declared: "A declared line",
+};
+
+/** Fields the kind does not take are refused when filled: silently dropped text would look like a limit. */
+function unused(kind: SpecificationLineKind) {
+  const empty = z
+    .string()
+    .default("")
+    .refine(isBlank, `${LINE_NAMES[kind]} does not take this. Clear the field.`)
+    .transform(() => undefined);
+  const others = TEXT_FIELDS.filter((field) => !LINE_FIELDS[kind].includes(field));
+  return Object.fromEntries(others.map((field) => [field, empty]));
+}
+
+const lineKey = z
+  .string()
+  .regex(/^([A-Za-z0-9_-]{1,16})?$/, "Reload the page: the key of this line is damaged.")
+  .default("");
+const shared = {
+  lineKey,
+  temperature: z.enum(["", "ambient", "range"], { error: "Choose ambient, range or neither." }).default(""),
+  maxStep: optionalPositive("A step"),
+};
 const edges = {
   from: quantityField(frequency, "Enter the lower edge."),
   to: quantityField(frequency, "Enter the upper edge."),
 };
-const level = (meaning: LevelMeaning) =>
-  quantityField({ kind: "level", unit: "dB", meaning }, "Enter the limit.").superRefine(checkLevel);
-const optionalLevel = (meaning: LevelMeaning) =>
-  optionalQuantityField({ kind: "level", unit: "dB", meaning }).superRefine(checkLevel);
+const search = { withinFrom: optionalQuantityField(frequency), withinTo: optionalQuantityField(frequency) };
+const window = optionalQuantityField(frequency);
+const aperture = optionalQuantityField(frequency);
+const sloped = (meaning: LevelMeaning) => ({ limit: level(meaning), limitEnd: optionalLevel(meaning) });
 
-function checkLevel(value: number | null, context: { addIssue(message: string): void }) {
-  if (value === null || Number.isNaN(value)) return;
-  if (value <= 0) context.addIssue("A limit is more than 0 dB.");
-  if (value > HIGHEST_LEVEL)
-    context.addIssue(`A limit is at most ${HIGHEST_LEVEL} dB; this reads as ${formatQuantity(value, "level")}.`);
-}
-
-const shared = {
-  lineKey: z
-    .string()
-    .regex(/^([A-Za-z0-9_-]{1,16})?$/, "Reload the page: the key of this line is damaged.")
-    .default(""),
-  temperature: z.enum(["", "ambient", "range"], { error: "Choose ambient, range or neither." }).default(""),
+const SCHEMAS = {
+  "insertion-loss": z.object({ ...unused("insertion-loss"), ...shared, ...edges, ...sloped("loss") }),
+  ripple: z.object({ ...unused("ripple"), ...shared, ...edges, limit: level("ripple"), window }),
+  "centre-frequency": z.object({
+    ...unused("centre-frequency"),
+    ...shared,
+    ...search,
+    nominal: positive("A frequency", "Enter the nominal frequency."),
+    limit: positive("A tolerance", "Enter the tolerance."),
+    level: below("Enter the level below the peak."),
+  }),
+  bandwidth: z.object({
+    ...unused("bandwidth"),
+    ...shared,
+    ...search,
+    least: optionalPositive("A bandwidth"),
+    largest: optionalPositive("A bandwidth"),
+    level: below("Enter the level below the peak."),
+  }),
+  rejection: z.object({
+    ...unused("rejection"),
+    ...shared,
+    ...edges,
+    ...sloped("loss"),
+    relativeFrom: optionalQuantityField(frequency),
+    relativeTo: optionalQuantityField(frequency),
+  }),
+  "reverse-isolation": z.object({ ...unused("reverse-isolation"), ...shared, ...edges, ...sloped("loss") }),
+  "shape-factor": z.object({
+    ...unused("shape-factor"),
+    ...shared,
+    ...search,
+    level: below("Enter the first level."),
+    levelEnd: below("Enter the second level."),
+    limit: ratio,
+  }),
+  "return-loss": z.object({
+    ...unused("return-loss"),
+    ...shared,
+    ...edges,
+    ...sloped("return-loss"),
+    port: z.enum(["1", "2"], { error: "Choose port 1 or port 2." }),
+  }),
+  "group-delay": z.object({ ...unused("group-delay"), ...shared, ...edges, limit: delay, aperture }),
+  "group-delay-variation": z.object({
+    ...unused("group-delay-variation"),
+    ...shared,
+    ...edges,
+    limit: delay,
+    window,
+    aperture,
+  }),
+  "phase-linearity": z.object({ ...unused("phase-linearity"), ...shared, ...edges, limit: degrees }),
+  declared: z.object({
+    ...unused("declared"),
+    lineKey,
+    temperature: z.literal("", { error: "Name the temperature in the limit of a declared line." }).default(""),
+    name: textField("Enter what is declared.", 80),
+    limit: textField("Enter the limit in words.", 200),
+  }),
 };
 
-/** Fields the kind does not take are refused when filled: silently dropped text would look like a limit. */
-function unused(name: string, ...fields: readonly TextField[]) {
-  const empty = z.string().default("").refine(blank, `${name} does not take this. Clear the field.`);
-  return Object.fromEntries(fields.map((field) => [field, empty]));
-}
-
-const reference = { relativeFrom: optionalQuantityField(frequency), relativeTo: optionalQuantityField(frequency) };
-
-const InsertionLoss = z.object({
-  ...unused("Insertion loss", "relativeFrom", "relativeTo", "window", "name"),
-  ...shared,
-  ...edges,
-  limit: level("loss"),
-  limitEnd: optionalLevel("loss"),
-});
-const Ripple = z.object({
-  ...unused("Ripple", "limitEnd", "relativeFrom", "relativeTo", "name"),
-  ...shared,
-  ...edges,
-  limit: level("ripple"),
-  window: optionalQuantityField(frequency),
-});
-const Rejection = z.object({
-  ...unused("Rejection", "window", "name"),
-  ...shared,
-  ...edges,
-  ...reference,
-  limit: level("loss"),
-  limitEnd: optionalLevel("loss"),
-});
-const ReverseIsolation = z.object({
-  ...unused("Reverse isolation", "relativeFrom", "relativeTo", "window", "name"),
-  ...shared,
-  ...edges,
-  limit: level("loss"),
-  limitEnd: optionalLevel("loss"),
-});
-const ReturnLoss = z.object({
-  ...unused("Return loss", "relativeFrom", "relativeTo", "window", "name"),
-  ...shared,
-  ...edges,
-  port: z.enum(["1", "2"], { error: "Choose port 1 or port 2." }),
-  limit: level("return-loss"),
-  limitEnd: optionalLevel("return-loss"),
-});
-const Declared = z.object({
-  ...unused("A declared line", "from", "to", "limitEnd", "relativeFrom", "relativeTo", "window"),
-  lineKey: shared.lineKey,
-  temperature: z.literal("", { error: "Name the temperature in the limit of a declared line." }).default(""),
-  name: textField("Enter what is declared.", 80),
-  limit: textField("Enter the limit in words.", 200),
-});
+type Fault = (field: string, sentence: string) => void;
 
 /**
  * A row's requirement, or undefined with the reasons added under `prefix` + field.
@@ -131,82 +179,154 @@ export function parseLine(
   errors: FieldErrors,
   prefix: string,
 ): SpecificationRequirement | undefined {
-  const kind = LINE_KINDS.find((offered) => offered === fields.kind);
-  const read = <S extends z.ZodType>(schema: S) => collect(schema, fields, errors, prefix);
-  const fault = (field: string, sentence: string) => addError(errors, prefix + field, sentence);
-  const identity = (line: { lineKey: string; temperature: "" | "ambient" | "range" }) => ({
-    id: line.lineKey === "" ? newLineKey() : line.lineKey,
-    ...(line.temperature === "" ? {} : { temperature: line.temperature }),
-  });
+  const kind = kindOf(fields);
+  const fault: Fault = (field, sentence) => addError(errors, prefix + field, sentence);
+  if (kind === undefined) {
+    fault("kind", "Choose what this line limits.");
+    return undefined;
+  }
+  const faults = Object.keys(errors).length;
+  const typed = { ...fields, limit: withoutSigns(kind, fields.limit ?? "") };
+  const definition = readDefinition(kind, (schema) => collect(schema, typed, errors, prefix), fault);
+  if (definition === undefined || Object.keys(errors).length > faults) return undefined;
+  return { ...definition, id: isBlank(fields.lineKey) ? newLineKey() : (fields.lineKey ?? "") };
+}
+
+/** A limit without what its field says already: the ± of a tolerance, the degrees of a phase. */
+function withoutSigns(kind: SpecificationLineKind, text: string): string {
+  if (kind === "centre-frequency") return text.replace(/^\s*(±|\+\/[-\u2212])/u, "");
+  return kind === "phase-linearity" ? text.replace(/(°|degrees?|deg)\s*$/u, "") : text;
+}
+
+type WithoutId<R> = R extends { readonly id: string } ? Omit<R, "id"> : never;
+type Definition = WithoutId<SpecificationRequirement>;
+type Read = <S extends z.ZodType>(schema: S) => z.output<S> | undefined;
+
+function readDefinition(kind: SpecificationLineKind, read: Read, fault: Fault): Definition | undefined {
   switch (kind) {
     case "insertion-loss": {
-      const line = read(InsertionLoss);
+      const line = read(SCHEMAS[kind]);
       const band = line && bandOf(line, fault);
-      return line && band && { ...identity(line), kind, band, max: limitOver(band, line, fault) };
-    }
-    case "ripple": {
-      const line = read(Ripple);
-      const band = line && bandOf(line, fault);
-      if (!line || !band) return undefined;
-      if (line.window !== null && !(line.window > 0 && line.window <= band[1] - band[0])) {
-        fault(
-          "window",
-          `A window is above 0 and no wider than the band, ${formatQuantity(band[1] - band[0], "frequency")}.`,
-        );
-      }
-      return {
-        ...identity(line),
-        kind,
-        band,
-        max: line.limit,
-        ...(line.window === null ? {} : { window: line.window }),
-      };
+      return line && band && { kind, band, max: limitOver(band, line, fault), ...conditions(line, band, fault) };
     }
     case "rejection": {
-      const line = read(Rejection);
+      const line = read(SCHEMAS[kind]);
       const band = line && bandOf(line, fault);
-      if (!line || !band) return undefined;
-      const relativeTo = referenceOf(line, fault);
-      return {
-        ...identity(line),
-        kind,
-        band,
-        min: limitOver(band, line, fault),
-        ...(relativeTo ? { relativeTo } : {}),
-      };
+      const relativeTo = line && optionalBand(line.relativeFrom, line.relativeTo, RELATIVE, fault);
+      const min = line && band && limitOver(band, line, fault);
+      if (!line || !band || min === undefined) return undefined;
+      return { kind, band, min, ...(relativeTo ? { relativeTo } : {}), ...conditions(line, band, fault) };
     }
     case "reverse-isolation": {
-      const line = read(ReverseIsolation);
+      const line = read(SCHEMAS[kind]);
       const band = line && bandOf(line, fault);
-      return line && band && { ...identity(line), kind, band, min: limitOver(band, line, fault) };
+      return line && band && { kind, band, min: limitOver(band, line, fault), ...conditions(line, band, fault) };
     }
     case "return-loss": {
-      const line = read(ReturnLoss);
+      const line = read(SCHEMAS[kind]);
       const band = line && bandOf(line, fault);
-      const port = line?.port === "1" ? 1 : 2;
-      return line && band && { ...identity(line), kind, port, band, min: limitOver(band, line, fault) };
+      if (!line || !band) return undefined;
+      const port = line.port === "1" ? 1 : 2;
+      return { kind, port, band, min: limitOver(band, line, fault), ...conditions(line, band, fault) };
     }
+    case "ripple":
+    case "phase-linearity": {
+      const line = read(SCHEMAS[kind]);
+      const band = line && bandOf(line, fault);
+      return line && band && { kind, band, max: line.limit, ...conditions(line, band, fault) };
+    }
+    case "group-delay":
+    case "group-delay-variation": {
+      const line = read(SCHEMAS[kind]);
+      const band = line && bandOf(line, fault);
+      return line && band && { kind, band, max: line.limit, ...conditions(line, band, fault) };
+    }
+    case "centre-frequency":
+    case "bandwidth":
+    case "shape-factor":
+      return readCrossing(kind, read, fault);
     case "declared": {
-      const line = read(Declared);
-      return line && { id: identity(line).id, kind, name: line.name, limit: line.limit };
+      const line = read(SCHEMAS.declared);
+      return line && { kind, name: line.name, limit: line.limit };
     }
-    case undefined:
-      fault("kind", "Choose what this line limits.");
-      return undefined;
   }
 }
 
-type Fault = (field: string, sentence: string) => void;
+/** The kinds that are read where the response crosses a level. */
+function readCrossing(
+  kind: "centre-frequency" | "bandwidth" | "shape-factor",
+  read: Read,
+  fault: Fault,
+): Definition | undefined {
+  if (kind === "centre-frequency") {
+    const line = read(SCHEMAS[kind]);
+    if (!line) return undefined;
+    if (line.limit >= line.nominal) fault("limit", `A tolerance is less than the frequency, ${hertz(line.nominal)}.`);
+    return { kind, level: line.level, nominal: line.nominal, tolerance: line.limit, ...sought(line, fault) };
+  }
+  if (kind === "bandwidth") {
+    const line = read(SCHEMAS[kind]);
+    if (!line) return undefined;
+    const { least, largest } = line;
+    if (least === null && largest === null) fault("least", "Enter the least bandwidth, the largest, or both.");
+    if (least !== null && largest !== null && least > largest)
+      fault("largest", `The largest bandwidth lies below the least, ${hertz(least)}.`);
+    const ends = { ...(least === null ? {} : { min: least }), ...(largest === null ? {} : { max: largest }) };
+    return { kind, level: line.level, ...ends, ...sought(line, fault) };
+  }
+  const line = read(SCHEMAS[kind]);
+  if (!line) return undefined;
+  if (line.levelEnd <= line.level)
+    fault("levelEnd", `The second level lies deeper than the first, ${formatQuantity(line.level, "level")}.`);
+  return { kind, levels: [line.level, line.levelEnd], max: line.limit, ...sought(line, fault) };
+}
+
+interface ReadConditions {
+  readonly temperature: "" | "ambient" | "range";
+  readonly maxStep: number | null;
+  readonly window?: number | null;
+  readonly aperture?: number | null;
+}
+
+const temperatureOf = ({ temperature }: ReadConditions) => (temperature === "" ? {} : { temperature });
+
+/** What a line over a band adds, of what its kind takes. */
+function conditions(line: ReadConditions, [from, to]: Band, fault: Fault) {
+  const { maxStep, window = null, aperture = null } = line;
+  const width = to - from;
+  if (maxStep !== null && width > 0 && maxStep >= width)
+    fault("maxStep", `A step is narrower than the band, ${hertz(width)}.`);
+  const noWider = (name: string) => `${name} is above 0 and no wider than the band, ${hertz(width)}.`;
+  if (window !== null && !(window > 0 && window <= width)) fault("window", noWider("A window"));
+  if (aperture !== null && !(aperture > 0 && (width === 0 || aperture <= width)))
+    fault("aperture", noWider("An aperture"));
+  return {
+    ...temperatureOf(line),
+    ...(window === null ? {} : { window }),
+    ...(aperture === null ? {} : { aperture }),
+    ...(maxStep === null ? {} : { maxStep }),
+  };
+}
+
+interface ReadSearch extends ReadConditions {
+  readonly withinFrom: number | null;
+  readonly withinTo: number | null;
+}
+
+function sought(line: ReadSearch, fault: Fault) {
+  const band = optionalBand(line.withinFrom, line.withinTo, SEARCH, fault);
+  if (band && band[0] === band[1]) fault("withinTo", "A peak is sought in a band, not at one frequency.");
+  return {
+    ...temperatureOf(line),
+    ...(band ? { within: band } : {}),
+    ...(line.maxStep === null ? {} : { maxStep: line.maxStep }),
+  };
+}
 
 function bandOf({ from, to }: { from: number; to: number }, fault: Fault): Band | undefined {
-  if (from > to) {
-    fault(
-      "to",
-      `The lower edge lies above the upper: ${formatQuantity(from, "frequency")} to ${formatQuantity(to, "frequency")}.`,
-    );
-  } else if (to === 0) fault("to", "The upper edge is above DC.");
-  else if (to > HIGHEST_FREQUENCY)
-    fault("to", `${formatQuantity(to, "frequency")} is beyond any filter. Check the unit.`);
+  if (from > to) fault("to", `The lower edge lies above the upper: ${hertz(from)} to ${hertz(to)}.`);
+  else if (to === 0) fault("to", "The upper edge is above DC.");
+  else if (to > HIGHEST_FREQUENCY) fault("to", `${hertz(to)} is beyond any filter. Check the unit.`);
   else return [from, to];
   return undefined;
 }
@@ -224,64 +344,12 @@ function limitOver(band: Band, line: { limit: number; limitEnd: number | null },
   };
 }
 
-function referenceOf(line: { relativeFrom: number | null; relativeTo: number | null }, fault: Fault): Band | undefined {
-  const { relativeFrom: from, relativeTo: to } = line;
+const RELATIVE = { from: "relativeFrom", to: "relativeTo", name: "reference band" };
+const SEARCH = { from: "withinFrom", to: "withinTo", name: "search band" };
+
+function optionalBand(from: number | null, to: number | null, fields: typeof RELATIVE, fault: Fault): Band | undefined {
   if (from === null && to === null) return undefined;
-  if (from === null || to === null) {
-    fault(from === null ? "relativeFrom" : "relativeTo", "Give both edges of the reference band, or neither.");
-    return undefined;
-  }
-  return bandOf({ from, to }, (_field, sentence) => fault("relativeTo", sentence));
-}
-
-/**
- * A requirement as the row's fields.
- * @throws RangeError for a kind or a slope the form cannot show: dropping a part of it would change the specification
- */
-export function lineToValues(line: SpecificationRequirement): FormValues {
-  const frequencyText = (hz: number) => formatQuantity(hz, "frequency");
-  if (line.kind === "declared") return { lineKey: line.id, kind: line.kind, name: line.name, limit: line.limit };
-  const kind = LINE_KINDS.find((offered) => offered === line.kind);
-  if (!kind || !("band" in line)) throw new RangeError(`The form does not offer ${line.kind}`);
-  if (line.maxStep !== undefined) throw new RangeError("The form does not offer a largest step");
-  const values: FormValues = {
-    lineKey: line.id,
-    kind,
-    from: frequencyText(line.band[0]),
-    to: frequencyText(line.band[1]),
-    temperature: line.temperature ?? "",
-    ...limitTexts("min" in line ? line.min : line.max, line.band, kind === "return-loss" ? returnLossText : levelText),
-  };
-  if (line.kind === "return-loss") values.port = String(line.port);
-  if (line.kind === "ripple" && line.window !== undefined) values.window = frequencyText(line.window);
-  if (line.kind === "rejection" && line.relativeTo) {
-    values.relativeFrom = frequencyText(line.relativeTo[0]);
-    values.relativeTo = frequencyText(line.relativeTo[1]);
-  }
-  return values;
-}
-
-const levelText = (value: number): string => formatQuantity(value, "level");
-
-/** Decimals a return loss is typed with at most; one with more was most likely typed as a VSWR. */
-const MOST_DECIMALS = 4;
-
-/** A return loss in dB, or as the VSWR it was typed as where that is shorter and reads back to the same number. */
-function returnLossText(value: number): string {
-  const text = levelText(value);
-  if (value === Number(value.toFixed(MOST_DECIMALS))) return text;
-  const reflection = 10 ** (-value / 20);
-  const ratio = (1 + reflection) / (1 - reflection);
-  const written = `${Number(ratio.toFixed(MOST_DECIMALS))}:1`;
-  const read = parseQuantity(written, { kind: "level", meaning: "return-loss" });
-  return read.ok && read.value === value ? written : text;
-}
-
-function limitTexts(limit: Limit, band: Band, text: (value: number) => string): FormValues {
-  if (typeof limit === "number") return { limit: text(limit) };
-  const [first, last, ...more] = limit.points;
-  if (!first || !last || more.length > 0 || limit.scale !== "linear" || first[0] !== band[0] || last[0] !== band[1]) {
-    throw new RangeError(`The form shows a slope from edge to edge of ${formatBand(band)} only`);
-  }
-  return { limit: text(first[1]), limitEnd: text(last[1]) };
+  if (from !== null && to !== null) return bandOf({ from, to }, (_field, sentence) => fault(fields.to, sentence));
+  fault(from === null ? fields.from : fields.to, `Give both edges of the ${fields.name}, or neither.`);
+  return undefined;
 }

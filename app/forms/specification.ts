@@ -13,13 +13,9 @@ import {
   type FormResult,
   type FormValues,
 } from "~/forms/fields";
-import {
-  isBlankLine,
-  lineToValues,
-  parseLine,
-  type DeclaredRequirement,
-  type SpecificationRequirement,
-} from "~/forms/specification-line";
+import { parseLine } from "~/forms/specification-line";
+import { isBlankLine, type DeclaredRequirement, type SpecificationRequirement } from "~/forms/specification-line-kinds";
+import { lineToValues } from "~/forms/specification-line-values";
 import type { Requirement } from "~/rf/contract";
 import type { RequirementDefinition } from "~/rf/line-definition";
 import { numberRevision } from "~/rf/line-numbers";
@@ -32,7 +28,7 @@ export {
   type DeclaredRequirement,
   type SpecificationLineKind,
   type SpecificationRequirement,
-} from "~/forms/specification-line";
+} from "~/forms/specification-line-kinds";
 
 /** Figures in Hz, dB, °C, ohm. A requirement's id is the key that names its line through all revisions. */
 export interface SpecificationDraft {
@@ -152,13 +148,25 @@ function refuseContradictions(
     released,
   );
   const placeOf = new Map(
-    lines.map(({ index, requirement }, row) => [requirement.id, { index, number: numbers[row] ?? "" }]),
+    lines.map(({ index, requirement }, row) => [
+      requirement.id,
+      { index, number: numbers[row] ?? "", field: limitField(requirement) },
+    ]),
   );
   const measured = requirements.filter((line): line is Requirement => !isDeclared(line));
   for (const contradiction of checkMask(measured)) {
     const sentence = describeContradiction(contradiction, (id) => placeOf.get(id)?.number ?? id);
-    for (const id of contradiction.lines) addError(errors, `lines.${placeOf.get(id)?.index ?? 0}.limit`, sentence);
+    for (const id of contradiction.lines) {
+      const { index, field } = placeOf.get(id) ?? { index: 0, field: "limit" };
+      addError(errors, `lines.${index}.${field}`, sentence);
+    }
   }
+}
+
+/** The field in which the row's limit stands. */
+function limitField(requirement: SpecificationRequirement): string {
+  if (requirement.kind !== "bandwidth") return "limit";
+  return requirement.min === undefined ? "largest" : "least";
 }
 
 /** 16 characters from an alphabet of 32, 80 bits. */

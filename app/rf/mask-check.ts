@@ -4,10 +4,11 @@ import { formatBand, formatQuantity } from "./quantity.ts";
 
 /**
  * - `excluding`: a loss limit lies below a rejection limit where both hold
- * - `bandwidths`: the least bandwidth of one line lies above the largest of another at the same level
+ * - `bandwidths`: the least bandwidth of one line lies above the largest of another at the same or a deeper level
+ * - `centres`: two lines allow centre frequencies at the same level that no filter has at once
  * - `inverted`: a band, a pair of limits or the points of a slope stand in the wrong order
  */
-export type ContradictionCode = "excluding" | "bandwidths" | "inverted";
+export type ContradictionCode = "excluding" | "bandwidths" | "centres" | "inverted";
 
 export interface Contradiction {
   readonly code: ContradictionCode;
@@ -27,6 +28,8 @@ type Rejection = OfKind<"rejection">;
 
 /** Margins within this of zero are zero, in dB. */
 const LEVEL_TOLERANCE = 1e-9;
+/** Frequencies within this, relative, are one. */
+const FREQUENCY_TOLERANCE = 1e-9;
 
 /**
  * All contradictions of a mask, inverted lines first. An inverted line takes no part in the comparison with others.
@@ -41,7 +44,7 @@ export function checkMask(requirements: readonly Requirement[]): Contradiction[]
     if (detail === undefined) sound.push(requirement);
     else inverted.push({ code: "inverted", lines: [requirement.id], detail, ...place(requirement) });
   }
-  return [...inverted, ...excluding(sound), ...bandwidths(sound)];
+  return [...inverted, ...excluding(sound), ...bandwidths(sound), ...centres(sound)];
 }
 
 /** The sentence a page shows. `lineNumber` gives "2.1" for a line's id. */
@@ -187,14 +190,44 @@ function limitAt(limit: Limit, hz: number, pick: (a: number, b: number) => numbe
   return found;
 }
 
+/** The response crosses a deeper level farther out: its bandwidth is never less. */
 function bandwidths(requirements: readonly Requirement[]): Contradiction[] {
   const lines = requirements.filter((line): line is OfKind<"bandwidth"> => line.kind === "bandwidth");
   return lines.flatMap((least) =>
     lines.flatMap((largest) => {
-      if (least === largest || least.level !== largest.level) return [];
+      if (least === largest || least.level > largest.level || !haveOnePeak(least, largest)) return [];
       if (least.min === undefined || largest.max === undefined || least.min <= largest.max) return [];
-      const detail = `bandwidth min ${formatQuantity(least.min, "frequency")}, max ${formatQuantity(largest.max, "frequency")}`;
+      const detail =
+        least.level === largest.level
+          ? `bandwidth min ${hertz(least.min)}, max ${hertz(largest.max)}`
+          : `bandwidth min ${hertz(least.min)} at ${decibels(least.level)}, max ${hertz(largest.max)} at ${decibels(largest.level)}`;
       return [{ code: "bandwidths" as const, lines: [least.id, largest.id] as const, detail }];
     }),
   );
 }
+
+function centres(requirements: readonly Requirement[]): Contradiction[] {
+  const lines = requirements.filter((line): line is OfKind<"centre-frequency"> => line.kind === "centre-frequency");
+  return lines.flatMap((one, index) =>
+    lines.slice(index + 1).flatMap((other) => {
+      if (one.level !== other.level || !haveOnePeak(one, other)) return [];
+      const apart = Math.abs(one.nominal - other.nominal) - one.tolerance - other.tolerance;
+      if (apart <= FREQUENCY_TOLERANCE * Math.max(one.nominal, other.nominal)) return [];
+      const words = ({ nominal, tolerance }: typeof one) => `${hertz(nominal)} ± ${hertz(tolerance)}`;
+      return [
+        {
+          code: "centres" as const,
+          lines: [one.id, other.id] as const,
+          detail: `centre frequency ${words(one)}, ${words(other)}`,
+        },
+      ];
+    }),
+  );
+}
+
+/** Sought in different bands the peaks may be different ones, and the crossings with them. */
+const haveOnePeak = ({ within: one }: { within?: Band }, { within: other }: { within?: Band }): boolean =>
+  one?.[0] === other?.[0] && one?.[1] === other?.[1];
+
+const hertz = (value: number): string => formatQuantity(value, "frequency");
+const decibels = (value: number): string => formatQuantity(value, "level");

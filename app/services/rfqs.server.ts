@@ -17,6 +17,8 @@ import { DEFAULT_UNITS_ASKED, DEFAULT_UNITS_OVER_RANGE, rfqToValues, type RfqInp
 import { PROPOSED_SETUP, SETUP_FIELDS, setupToValues } from "~/forms/setup";
 import { zonedTimeToText } from "~/forms/zoned-time";
 import type { Setup } from "~/rf/contract";
+import { measuredRequirements, type SpecificationLine } from "~/rf/line-definition";
+import { proposeSweeps, type MeasurementPlan } from "~/rf/measurement-plan";
 import { rfqNumber, specificationNumber } from "~/workflow/numbers";
 import { canRfq, rfqRefusal, rfqState } from "~/workflow/rfq";
 import { canSpecification, specificationRefusal } from "~/workflow/specification";
@@ -26,6 +28,7 @@ import { newPublicId } from "./identifiers.server";
 import { sendInvitation } from "./invitations.server";
 import type { Person } from "./person.server";
 import { findRfq, lockRfq } from "./rfq-head.server";
+import { readLines } from "./specification-lines.server";
 import { blockedRefusal, supplierNames } from "./suppliers.server";
 import { inTransaction } from "./transaction.server";
 
@@ -70,8 +73,9 @@ export async function listReleasedSpecifications(person: Person): Promise<RfqSub
 export async function proposeRfq(person: Person, specificationPublicId: string): Promise<RfqProposal | null> {
   const found = await findSubject(person, specificationPublicId);
   if (!found) return null;
-  const [organisation, now] = await Promise.all([
+  const [organisation, lines, now] = await Promise.all([
     Organisation.findByPk(person.organisationId, { actor: person, rejectOnEmpty: true }),
+    readLines(person, found.revision.id),
     databaseNow(),
   ]);
   const due = zonedTimeToText(new Date(now.getTime() + PROPOSED_DAYS * DAY_MS), organisation.timeZone);
@@ -86,6 +90,7 @@ export async function proposeRfq(person: Person, specificationPublicId: string):
     text: "",
     unitsAsked: DEFAULT_UNITS_ASKED,
     unitsOverRange: DEFAULT_UNITS_OVER_RANGE,
+    measurementPlan: proposedPlan(lines),
     assumedSetup: PROPOSED_SETUP,
     invitations: [],
   });
@@ -94,6 +99,11 @@ export async function proposeRfq(person: Person, specificationPublicId: string):
     refusal: specificationRefusal("open-rfq", found.revision.status),
     values: { ...proposed, askedQuantity: "", dueDate: due.date, dueTime: "17:00", dueOffset: "" },
   };
+}
+
+function proposedPlan(lines: readonly SpecificationLine[]): MeasurementPlan {
+  const sweeps = proposeSweeps(measuredRequirements(lines));
+  return sweeps.length === 0 ? {} : { sweeps };
 }
 
 const subjectOf = (specification: Specification, revision: SpecificationRevision): RfqSubject => ({
@@ -175,6 +185,7 @@ const columns = (input: RfqFields) => ({
   text: input.text === "" ? null : input.text,
   unitsAsked: input.unitsAsked,
   unitsOverRange: input.unitsOverRange,
+  measurementPlan: input.measurementPlan,
   assumedSetup: input.assumedSetup,
 });
 
@@ -216,6 +227,7 @@ export async function readRfqDraft(person: Person, rfqPublicId: string): Promise
     text: rfq.text ?? "",
     unitsAsked: rfq.unitsAsked,
     unitsOverRange: rfq.unitsOverRange,
+    measurementPlan: rfq.measurementPlan,
     assumedSetup: rfq.assumedSetup,
     invitations: [],
   });
@@ -308,6 +320,9 @@ export interface RfqOverview {
   readonly breaks: readonly number[];
   readonly unitsAsked: number;
   readonly unitsOverRange: number;
+  readonly measurementPlan: MeasurementPlan;
+  /** Hz; of the specification. */
+  readonly lowestTestFrequency: number | null;
   /** Label and figure with its unit, of what is assumed. */
   readonly assumedSetup: readonly (readonly [label: string, figure: string])[];
   /** °C, lower end first; null where the specification gives no range. */
@@ -346,6 +361,8 @@ export async function readRfqOverview(person: Person, rfqPublicId: string): Prom
     breaks,
     unitsAsked: rfq.unitsAsked,
     unitsOverRange: rfq.unitsOverRange,
+    measurementPlan: rfq.measurementPlan,
+    lowestTestFrequency: revision.lowestTestFrequency,
     assumedSetup: setupInWords(rfq.assumedSetup),
     temperatureRange: from === null || to === null ? null : [from, to],
     ambient: revision.ambient,

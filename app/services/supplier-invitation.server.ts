@@ -2,6 +2,7 @@
 import { Invitation, Organisation, Quote, Rfq, RfqQuantity } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import type { Setup } from "~/rf/index";
+import type { MeasurementPlan } from "~/rf/measurement-plan";
 import { rfqNumber } from "~/workflow/numbers";
 import { quoteRefusal, type QuoteState } from "~/workflow/quote";
 import { rfqState, type RfqState } from "~/workflow/rfq";
@@ -24,6 +25,7 @@ export interface SupplierInvitation {
   readonly text: string | null;
   readonly unitsAsked: number;
   readonly unitsOverRange: number;
+  readonly measurementPlan: MeasurementPlan;
   readonly assumedSetup: Setup;
   readonly specification: SpecificationView;
   readonly quote: { readonly publicId: string; readonly state: QuoteState } | null;
@@ -61,6 +63,7 @@ export async function readSupplierInvitation(person: Person, publicId: string): 
     text: rfq.text,
     unitsAsked: rfq.unitsAsked,
     unitsOverRange: rfq.unitsOverRange,
+    measurementPlan: rfq.measurementPlan,
     assumedSetup: rfq.assumedSetup,
     specification,
     quote: quote && { publicId: quote.publicId, state: quote.state },

@@ -1,6 +1,7 @@
 // The demo's two RFQs for the receive filter: one to decide on, one open for quotes.
 import { Temporal } from "temporal-polyfill";
 import { PROPOSED_SETUP } from "~/forms/setup";
+import type { MeasurementPlan } from "~/rf/measurement-plan";
 import { closeRfq } from "~/services/closing.server";
 import { newIdempotencyKey } from "~/services/identifiers.server";
 import { addInvitations } from "~/services/invitations.server";
@@ -27,12 +28,25 @@ const QUOTING_TAKES_MS = 5 * 60 * 1000;
 /** The first quarter of an hour that leaves the suppliers of the demo time to quote: it has passed soon after. */
 const dueSoon = (): Date => new Date(Math.ceil((Date.now() + QUOTING_TAKES_MS) / QUARTER_MS) * QUARTER_MS);
 
+/** The sweeps as they are proposed for the receive filter; the demo's files keep to all of it. */
+const MEASUREMENT_PLAN: MeasurementPlan = {
+  sweeps: [
+    { band: [1.76e9, 2.14e9], maxStep: 2e6 },
+    { band: [1.92e9, 1.98e9], maxStep: 600e3 },
+  ],
+  ifBandwidth: 1000,
+  power: 0,
+  referencePlane: "connector",
+  referencePlaneWords: "SMA, at the mating plane of both ports",
+};
+
 const COMMON = {
   dueZone: TIME_ZONE,
   decisionRule: "simple",
   currency: "EUR",
   unitsAsked: 3,
   unitsOverRange: 1,
+  measurementPlan: MEASUREMENT_PLAN,
   assumedSetup: PROPOSED_SETUP,
 } as const;
 

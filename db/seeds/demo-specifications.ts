@@ -29,8 +29,10 @@ export const RECEIVE_LINES: readonly Line[] = [
 
 const DRAFT_LINES: readonly Line[] = [
   { kind: "insertion-loss", from: "2.11G", to: "2.17G", limit: "1.0 dB" },
+  { kind: "bandwidth", least: "64 MHz", level: "3 dB" },
   { kind: "rejection", from: "1.92G", to: "1.98G", limit: "70 dB" },
   { kind: "return-loss", port: "1", from: "2.11G", to: "2.17G", limit: "16 dB" },
+  { kind: "group-delay-variation", from: "2.112G", to: "2.168G", limit: "25 ns", window: "5 MHz", aperture: "1 MHz" },
 ];
 
 /** Writes the receive filter and releases revision A; returns its public id. */

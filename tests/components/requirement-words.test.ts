@@ -37,6 +37,9 @@ test("every kind reads in the trade's words with its band, conditions and limit"
     words({ kind: "centre-frequency", level: 3, nominal: 1.95e9, tolerance: 2e6 }),
     words({ kind: "bandwidth", level: 3, min: 60e6, max: 72.5e6 }),
     words({ kind: "shape-factor", levels: [3, 60], max: 2.5 }),
+    words({ kind: "bandwidth", level: 3, min: 60e6, within: [1.9e9, 2e9], maxStep: 500e3 }),
+    words({ kind: "group-delay", band, max: 0.85e-9, maxStep: 250e3, temperature: "range" }),
+    words({ kind: "phase-linearity", band, max: 2.5 }),
     words({ kind: "declared", name: "Connectors", limit: "SMA female" }),
   ]).toEqual([
     "Insertion loss | 1.9200 to 1.9800 GHz, over temperature | max 0.95 dB",
@@ -49,8 +52,17 @@ test("every kind reads in the trade's words with its band, conditions and limit"
     "Centre frequency | at 3 dB | 1.9500 GHz ± 2 MHz",
     "Bandwidth | at 3 dB | 60 MHz to 72.5 MHz",
     "Shape factor | 3 to 60 dB | max 2.5",
+    "Bandwidth | peak within 1.9000 to 2.0000 GHz, at 3 dB, steps of 500 kHz at most | min 60 MHz",
+    "Group delay | 1.9200 to 1.9800 GHz, steps of 250 kHz at most, over temperature | max 850 ps",
+    "Phase linearity | 1.9200 to 1.9800 GHz | max 2.5°",
     "Connectors |  | SMA female",
   ]);
+});
+
+test("a centre frequency is said to the last digit it was typed with", () => {
+  expect(words({ kind: "centre-frequency", level: 3, nominal: 1.95005e9, tolerance: 500e3 })).toBe(
+    "Centre frequency | at 3 dB | 1.95005 GHz ± 500 kHz",
+  );
 });
 
 test("a band from DC says where it is tested from", () => {

@@ -25,6 +25,7 @@ test("only the buttons of the rows change rows, and the last one leaves an empty
   expect(editRows({ ...values, intent: "save" })).toBeNull();
   expect(editRows({ ...values, intent: "remove-line.x" })).toBeNull();
   expect(editRows(values)).toBeNull();
+  expect(editRows({ ...values, intent: "show-fields" })).toEqual({ ...values, intent: "show-fields" });
   expect(lineIndices(editRows({ ...values, intent: "add-line" }) ?? {})).toEqual([0, 3, 4]);
   expect(lineIndices(editRows({ ...values, intent: "remove-line.0" }) ?? {})).toEqual([3]);
   expect(editRows({ "lines.2.kind": "ripple", intent: "remove-line.2" })).toEqual({
@@ -39,4 +40,14 @@ test("rows are numbered as they will be, and read one by one", () => {
   expect(rows[0]?.requirement).toMatchObject({ kind: "rejection", band: [2.04e9, 2.14e9], min: 50 });
   expect(rows[1]).not.toHaveProperty("requirement");
   expect(readRows({ ...values, "lines.3.to": "1980", "lines.3.limit": "1" })[1]?.requirement?.id).toBe("kept");
+});
+
+test("a return loss reads as that of port 1 while the list of ports stands untouched", () => {
+  const [row] = readRows({
+    "lines.0.kind": "return-loss",
+    "lines.0.from": "1920",
+    "lines.0.to": "1980",
+    "lines.0.limit": "15",
+  });
+  expect(row?.requirement).toMatchObject({ kind: "return-loss", port: 1 });
 });

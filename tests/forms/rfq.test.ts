@@ -43,6 +43,7 @@ test("a filled form becomes an RFQ with its due date in UTC and the proposed set
       text: "Line one\nline two",
       unitsAsked: 3,
       unitsOverRange: 1,
+      measurementPlan: {},
       assumedSetup: {
         transmission: 0.1,
         directivity: 36,

@@ -179,7 +179,7 @@ test("limits out of order, out of reach or of no use are refused at their field"
   ]);
   expect(errorsOf({ kind: "rejection", from: "DC", to: "DC", limit: "30" })).toHaveProperty(["lines.0.to"]);
   expect(errorsOf({ kind: "rejection", from: "1 GHz", to: "20 THz", limit: "30" })).toHaveProperty(["lines.0.to"]);
-  expect(errorsOf({ kind: "group-delay", ...band, limit: "30" })).toHaveProperty(["lines.0.kind"]);
+  expect(errorsOf({ kind: "noise-figure", ...band, limit: "30" })).toHaveProperty(["lines.0.kind"]);
 });
 
 test("text in a field the kind does not take is refused, not dropped", () => {
@@ -201,6 +201,15 @@ test("a mask that contradicts itself is refused at both lines, by their numbers"
   const sentence =
     "Lines 2.1 and 3.1 cannot both hold from 1.9200 to 1.9300 GHz: loss max 0.95 dB, rejection min 55.00 dB.";
   expect(errors).toEqual({ "lines.1.limit": [sentence], "lines.0.limit": [sentence] });
+});
+
+test("a contradiction of bandwidths stands where each has its limit", () => {
+  const errors = errorsOf(
+    { kind: "bandwidth", level: "3", least: "70" },
+    { kind: "bandwidth", level: "30", largest: "60" },
+  );
+  const sentence = "Lines 2.1 and 2.2 cannot both hold: bandwidth min 70.00 MHz at 3 dB, max 60.00 MHz at 30 dB.";
+  expect(errors).toEqual({ "lines.0.least": [sentence], "lines.1.largest": [sentence] });
 });
 
 test("temperatures come as a pair in order, and a line over temperature needs them", () => {
@@ -241,12 +250,15 @@ test("what the form cannot show is a fault, since saving it again would lose a p
   } as const;
   const line = { id: "a", kind: "insertion-loss", band: [1e9, 2e9] } as const;
   expect(() => specificationToValues({ ...draft, requirements: [{ ...line, max: log }] })).toThrow(RangeError);
-  expect(() => specificationToValues({ ...draft, requirements: [{ ...line, max: 1, maxStep: 1e6 }] })).toThrow(
-    RangeError,
-  );
-  expect(() =>
-    specificationToValues({ ...draft, requirements: [{ id: "b", kind: "group-delay", band: [1e9, 2e9], max: 1e-9 }] }),
-  ).toThrow(RangeError);
+  const bent = {
+    scale: "linear",
+    points: [
+      [1e9, 1],
+      [1.5e9, 1.5],
+      [2e9, 3],
+    ],
+  } as const;
+  expect(() => specificationToValues({ ...draft, requirements: [{ ...line, max: bent }] })).toThrow(RangeError);
 });
 
 test("the lowest test frequency is proposed as the lower of 10 MHz and a tenth of the lowest edge", () => {

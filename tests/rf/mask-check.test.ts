@@ -120,9 +120,33 @@ test("inverted limits are named with their line and take no part in comparisons"
   );
 });
 
-test("two bandwidth lines at one level contradict each other, at different levels they do not", () => {
+test("two bandwidth lines contradict each other at one level, and where the wider one is asked at the shallower level", () => {
   const least: Requirement = { id: "least", kind: "bandwidth", level: 3, min: 70e6 };
   const largest: Requirement = { id: "largest", kind: "bandwidth", level: 3, max: 60e6 };
-  expect(checkMask([largest, least])).toMatchObject([{ code: "bandwidths", lines: ["least", "largest"] }]);
-  expect(checkMask([least, { ...largest, level: 1 }])).toEqual([]);
+  const between = (one: Requirement, other: Requirement) => checkMask([one, other]);
+  expect(between(largest, least)).toMatchObject([{ code: "bandwidths", lines: ["least", "largest"] }]);
+  expect(between(least, { ...largest, level: 1 })).toEqual([]);
+  const [found] = between(least, { ...largest, level: 30 });
+  expect(found && describeContradiction(found, (id) => (id === "least" ? "2.1" : "2.2"))).toBe(
+    "Lines 2.1 and 2.2 cannot both hold: bandwidth min 70.00 MHz at 3 dB, max 60.00 MHz at 30 dB.",
+  );
+  // Sought elsewhere, the other line may speak of another peak.
+  expect(between(least, { ...largest, within: [1e9, 2e9] })).toEqual([]);
+  expect(between({ ...least, within: [1e9, 2e9] }, { ...largest, within: [1e9, 2e9] })).toHaveLength(1);
+});
+
+test("two centre frequencies at one level contradict each other where their tolerances do not meet", () => {
+  const centre = (id: string, nominal: number, tolerance: number, level = 3): Requirement => ({
+    id,
+    kind: "centre-frequency",
+    level,
+    nominal,
+    tolerance,
+  });
+  const [found] = checkMask([centre("a", 1.95e9, 1e6), centre("b", 1.953e9, 1e6)]);
+  expect(found && describeContradiction(found, (id) => id)).toBe(
+    "Lines a and b cannot both hold: centre frequency 1.9500 GHz ± 1.00 MHz, 1.9530 GHz ± 1.00 MHz.",
+  );
+  expect(checkMask([centre("a", 1.95e9, 1e6), centre("b", 1.952e9, 1e6)])).toEqual([]);
+  expect(checkMask([centre("a", 1.95e9, 1e6), centre("b", 1.953e9, 1e6, 1)])).toEqual([]);
 });

@@ -18,7 +18,15 @@ import {
   readRfqOverview,
   type RfqFields,
 } from "~/services/rfqs.server";
-import { ASSUMED_SETUP, buildOrganisation, buildPerson, buildRfq, buildSpecification } from "../support/factories";
+import { readSupplierInvitation } from "~/services/supplier-invitation.server";
+import {
+  ASSUMED_SETUP,
+  buildInvitation,
+  buildOrganisation,
+  buildPerson,
+  buildRfq,
+  buildSpecification,
+} from "../support/factories";
 import { useDatabase } from "../support/database";
 
 useDatabase();
@@ -36,6 +44,7 @@ const fields = (overrides: Partial<RfqFields> = {}): RfqFields => ({
   text: "Measured data of three units, please.",
   unitsAsked: 3,
   unitsOverRange: 1,
+  measurementPlan: {},
   assumedSetup: ASSUMED_SETUP,
   ...overrides,
 });
@@ -84,6 +93,52 @@ test("the proposal is a form that is read back but for the quantities, with the 
     ok: true,
     value: { title: "Receive band-pass", decisionRule: "guarded", currency: "GBP", dueZone: "Europe/Berlin" },
   });
+});
+
+test("the proposal's sweeps are those of the released lines, and a draft's plan comes back as it was typed", async () => {
+  const { engineer } = await buyerAndEngineer();
+  const { specification } = await buildSpecification(engineer);
+  const proposal = await proposeRfq(engineer, specification.publicId);
+  // A hundredth of 60 MHz in the passband, a tenth of 100 MHz over all edges.
+  expect(proposal?.values).toMatchObject({
+    "sweeps.0.from": "1.9200 GHz",
+    "sweeps.0.to": "1.9800 GHz",
+    "sweeps.0.maxStep": "600 kHz",
+    "sweeps.1.from": "1.9200 GHz",
+    "sweeps.1.to": "2.1400 GHz",
+    "sweeps.1.maxStep": "10.00 MHz",
+  });
+  const values = { ...proposal?.values, "breaks.0": "100", askedQuantity: "100", "plan.temperatures": "-10; 50" };
+  const read = parseRfqForm({ ...values, "sweeps.1.to": "4.4G", "plan.power": "-5" }, { now: new Date() });
+  if (!read.ok) throw new Error(JSON.stringify(read.errors));
+  const plan = {
+    sweeps: [
+      { band: [1.92e9, 1.98e9], maxStep: 600e3 },
+      { band: [1.92e9, 4.4e9], maxStep: 10e6 },
+    ],
+    temperatures: [-10, 50],
+    power: -5,
+  };
+  expect(read.value.measurementPlan).toEqual(plan);
+  const rfqId = await create(engineer, specification.publicId, { measurementPlan: read.value.measurementPlan });
+  expect((await readRfqOverview(engineer, rfqId))?.measurementPlan).toEqual(plan);
+
+  const draft = await readRfqDraft(engineer, rfqId);
+  const again = parseRfqForm(draft?.values ?? {}, { now: new Date() });
+  expect(again).toMatchObject({ ok: true, value: { measurementPlan: plan } });
+  expect(await editRfq(engineer, rfqId, 0, fields({ measurementPlan: {} }))).toMatchObject({ ok: true });
+  expect((await readRfqOverview(engineer, rfqId))?.measurementPlan).toEqual({});
+});
+
+test("an invited supplier reads the plan", async () => {
+  const { engineer } = await buyerAndEngineer();
+  const measurementPlan = { sweeps: [{ band: [1e9, 2e9] as const, maxStep: 1e6 }], referencePlane: "board" as const };
+  const { rfq } = await buildRfq(engineer, { measurementPlan });
+  const organisation = await buildOrganisation("supplier");
+  const supplier = await buildPerson(organisation);
+  const { invitation } = await buildInvitation(rfq, organisation);
+  const read = await readSupplierInvitation(supplier, invitation.publicId);
+  expect(read?.measurementPlan).toEqual(measurementPlan);
 });
 
 test("the currency is the organisation's, whatever the form says", async () => {

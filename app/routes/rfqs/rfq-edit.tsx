@@ -1,6 +1,7 @@
 // A draft RFQ in its form.
 import { data, href, redirect } from "react-router";
 import { LinkButton } from "~/components/button";
+import { editSweeps } from "~/components/measurement-plan-fields";
 import { Notice } from "~/components/notice";
 import { Page, Section } from "~/components/page";
 import { RfqBlock } from "~/components/rfq-block";
@@ -25,6 +26,8 @@ export async function loader({ request, context, params }: Route.LoaderArgs) {
 export async function action({ request, context, params }: Route.ActionArgs) {
   const person = requireRight(context, request, "manage-rfq");
   const form = await request.formData();
+  const rows = editSweeps(formValues(form));
+  if (rows) return data({ values: rows, errors: {} }, { status: 200 });
   const read = parseRfqForm(form, { now: new Date() });
   if (!read.ok) return data({ values: read.values, errors: read.errors }, { status: 400 });
   const lockVersion = Number(form.get("lockVersion"));

@@ -3,6 +3,7 @@ import { data, href, Link, redirect } from "react-router";
 import { LinkButton } from "~/components/button";
 import { Cell, HeadCell, Row, RowHead, Table } from "~/components/data-table";
 import { Empty } from "~/components/empty";
+import { editSweeps } from "~/components/measurement-plan-fields";
 import { Notice } from "~/components/notice";
 import { Page, Section } from "~/components/page";
 import { RfqForm } from "~/components/rfq-form";
@@ -30,6 +31,8 @@ export async function loader({ request, context }: Route.LoaderArgs) {
 export async function action({ request, context }: Route.ActionArgs) {
   const person = requireRight(context, request, "manage-rfq");
   const form = await request.formData();
+  const rows = editSweeps(formValues(form));
+  if (rows) return data({ values: rows, errors: {} }, { status: 200 });
   const read = parseRfqForm(form, { now: new Date() });
   if (!read.ok) return data({ values: read.values, errors: read.errors }, { status: 400 });
   const key = formValues(form).idempotencyKey ?? "";

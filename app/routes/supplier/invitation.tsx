@@ -2,9 +2,11 @@
 import { data, redirect } from "react-router";
 import { Drawing, wallsFromRequirements } from "~/charts/drawing";
 import { Button, LinkButton } from "~/components/button";
+import { FactLines } from "~/components/fact-lines";
 import { DueDate } from "~/components/figure";
 import { PostForm } from "~/components/form";
 import { formatNumber } from "~/components/format";
+import { COVERAGE_SENTENCE, planFacts } from "~/components/measurement-plan-words";
 import { Notice } from "~/components/notice";
 import { Page, Section, Split } from "~/components/page";
 import { QuoteFacts, type QuoteFact } from "~/components/quote-facts";
@@ -79,6 +81,12 @@ export default function Invitation({ loaderData, actionData }: Route.ComponentPr
           <Section title="What is asked">
             <QuoteFacts label="What is asked" rows={asked(loaderData)} />
           </Section>
+          <Section
+            title="Measurement plan"
+            note={loaderData.measurementPlan.sweeps === undefined ? undefined : COVERAGE_SENTENCE}
+          >
+            <QuoteFacts label="Measurement plan" rows={planned(loaderData)} />
+          </Section>
           {text === null ? null : (
             <Section title="Text of the buyer">
               <p className="max-w-170 whitespace-pre-line">{text}</p>
@@ -111,20 +119,15 @@ function nextStep({ quote, refusal }: Loaded, state: Route.ComponentProps["actio
   );
 }
 
-function asked({
-  breaks,
-  quantity,
-  currency,
-  decisionRule,
-  unitsAsked,
-  unitsOverRange,
-  specification,
-}: Loaded): QuoteFact[] {
-  const { temperatureRange: range, ambient } = specification;
+const asked = ({ breaks, quantity, currency, decisionRule }: Loaded): QuoteFact[] => [
+  ["Unit price at", breaks.map((count) => formatNumber(count, 0)).join(" · ")],
+  ["Compared at", `${formatNumber(quantity, 0)} pieces, in ${currency}`],
+  ["Decision rule", RULES[decisionRule]],
+];
+
+function planned({ unitsAsked, unitsOverRange, measurementPlan, specification }: Loaded): QuoteFact[] {
+  const { temperatureRange: range, ambient, lowestTestFrequency } = specification;
   return [
-    ["Unit price at", breaks.map((count) => formatNumber(count, 0)).join(" · ")],
-    ["Compared at", `${formatNumber(quantity, 0)} pieces, in ${currency}`],
-    ["Decision rule", RULES[decisionRule]],
     ["Units measured", `${unitsAsked} in all, each with its serial and its own files`],
     [
       "Over temperature",
@@ -132,6 +135,10 @@ function asked({
         ? `ambient only, ${formatQuantity(ambient, "temperature")}`
         : `${unitsOverRange} at ${formatQuantity(ambient, "temperature")} and at both ends of ${formatTemperatureRange(range)}`,
     ],
+    ...planFacts(measurementPlan, lowestTestFrequency).map(([label, lines]): QuoteFact => [
+      label,
+      <FactLines key={label} lines={lines} />,
+    ]),
     ["Files", "two-port Touchstone, at most 64 MiB each, 200 in all"],
   ];
 }
