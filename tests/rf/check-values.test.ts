@@ -6,9 +6,17 @@ import { NETWORK_CHECKS } from "./check-values/networks";
 import { PASSIVITY_CHECKS } from "./check-values/passivity";
 import { REFLECTION_CHECKS } from "./check-values/reflection";
 import { checkValueRows, sourceOf } from "./check-values/row";
+import { TOLERANCE_CHECKS } from "./check-values/tolerance";
 import { UNCERTAINTY_CHECKS } from "./check-values/uncertainty";
 
-const checks = [...REFLECTION_CHECKS, ...NETWORK_CHECKS, ...DELAY_CHECKS, ...UNCERTAINTY_CHECKS, ...PASSIVITY_CHECKS];
+const checks = [
+  ...REFLECTION_CHECKS,
+  ...NETWORK_CHECKS,
+  ...DELAY_CHECKS,
+  ...UNCERTAINTY_CHECKS,
+  ...PASSIVITY_CHECKS,
+  ...TOLERANCE_CHECKS,
+];
 const listed: Readonly<Record<string, string>> = notComputed.rows;
 const parts: Readonly<Record<string, string>> = notComputed.parts;
 const checked = checkValueRows.filter(({ id }) => !(id in listed));
