@@ -10,7 +10,7 @@ stamp=$state/npm-installed
 # Debian's names. The server core alone: the full server package would start a service of the system.
 packages=""
 if [ "$purpose" = test ] || [ -z "${DATABASE_URL:-}" ]; then packages="mariadb-server-core mariadb-client"; fi
-if [ "$purpose" = test ]; then packages="$packages chromium python3-scikit-rf python3-scipy"; fi
+if [ "$purpose" = test ]; then packages="$packages chromium python3-scikit-rf python3-scipy ngspice"; fi
 
 say() { echo "[provision] $*"; }
 fail() {
@@ -42,6 +42,7 @@ present() {
     mariadb-server-core) found mariadbd && found mariadb-install-db ;;
     mariadb-client) found mariadb && found mariadb-dump ;;
     chromium) found chromium ;;
+    ngspice) found ngspice ;;
     python3-scikit-rf) ! found dpkg-query && python3 -c "import skrf" 2>/dev/null ;;
     python3-scipy) ! found dpkg-query && python3 -c "import scipy" 2>/dev/null ;;
     *) return 1 ;;

@@ -5,6 +5,8 @@ import { valueWithInterval } from "~/charts/words";
 import type { Cell } from "~/rf/index";
 import {
   celsiusWords,
+  decidedElsewhere,
+  isConditional,
   limitSense,
   marginWithInterval,
   shownResult,
@@ -41,7 +43,9 @@ export function ComplianceCell({ line, cell, lowestTestFrequency, className = ""
           </Fact>
         </dl>
         <p className="mt-3 text-13">{VERDICT_SENTENCES[result.verdict]}</p>
-        {result.reason === undefined ? null : <p className="mt-1.5 text-13">{result.reason}</p>}
+        {result.reason === undefined ? null : (
+          <p className={`mt-1.5 text-13 ${isConditional(result.verdict) ? "font-semibold" : ""}`}>{result.reason}</p>
+        )}
         {line.verdict !== result.verdict && line.verdict === "not-covered" ? (
           <p className="mt-1.5 text-13">
             The line as a whole is not covered{line.reason === null ? "." : `: ${line.reason}`}
@@ -90,9 +94,8 @@ function rows(line: ComplianceLine, cell: Cell, lowestTestFrequency: number | nu
   if (isSloped(line) && Number.isFinite(shown.limit))
     found.push(["Limit there", `${formatLevel(shown.limit)} ${shown.unit}`]);
   if (!Number.isNaN(shown.margin)) found.push(["Margin", marginWithInterval(shown)]);
-  const deciding = result.decidingFrequency;
-  const differs = hasPlace && Number.isFinite(deciding) && Math.abs(deciding - result.frequency) > 1e-9 * deciding;
-  if (differs) found.push(["Decided at", formatFrequency(deciding)]);
+  const deciding = decidedElsewhere(result);
+  if (deciding !== null) found.push(["Decided at", formatFrequency(deciding)]);
   return found;
 }
 

@@ -1,17 +1,21 @@
 // The compliance matrix: requirements against units and temperatures, each cell a link to its details.
 import { Link } from "react-router";
-import { complies, isMeasured } from "~/rf/index";
+import { complies, isMeasured, type Cell as ScoredCell } from "~/rf/index";
 import {
   cellAt,
   cellFigure,
+  cellInterval,
   cellSearch,
   celsiusWords,
+  decidedElsewhere,
   shownResult,
   type ComplianceColumns,
   type ComplianceLine,
+  type ShownResult,
 } from "./compliance-words";
 import { Cell, HeadCell, Row, RowHead, Table, TwoLines } from "./data-table";
 import { Margin } from "./figure";
+import { formatFrequency } from "./format";
 import { describeDefinition } from "./requirement-words";
 import { Verdict, VerdictMark, verdictColour, verdictTint, verdictWord, type ShownVerdict } from "./verdict-mark";
 
@@ -23,8 +27,15 @@ interface MatrixProps {
   selected: { readonly lineKey: string; readonly unit: string; readonly celsius: number } | null;
 }
 
+/** More columns than this leave no room for intervals: they stand in the details of a cell, and in its name. */
+const MOST_ROOMY = 9;
+
+const countColumns = (units: readonly ComplianceColumns[]): number =>
+  units.reduce((count, { temperatures }) => count + temperatures.length, 0);
+
 export function ComplianceMatrix(props: MatrixProps) {
   const { lines, units } = props;
+  const isDense = countColumns(units) > MOST_ROOMY;
   return (
     <Table label="Compliance matrix" rows="two-line" scroll="inside">
       <thead>
@@ -52,7 +63,12 @@ export function ComplianceMatrix(props: MatrixProps) {
           <HeadCell className="top-6 max-tablet:hidden">Limit</HeadCell>
           {units.flatMap(({ unit, temperatures }) =>
             temperatures.map(({ celsius, predicted }, place) => (
-              <HeadCell key={`${unit} ${celsius}`} figure parted={place === 0} className="top-6 min-w-17 pr-2">
+              <HeadCell
+                key={`${unit} ${celsius}`}
+                figure
+                parted={place === 0}
+                className={`top-6 pr-2 ${isDense ? "min-w-13 pl-0!" : "min-w-17"}`}
+              >
                 {celsiusWords(celsius)}
                 {predicted ? <span className="block">predicted</span> : null}
               </HeadCell>
@@ -65,16 +81,21 @@ export function ComplianceMatrix(props: MatrixProps) {
       </thead>
       <tbody>
         {lines.map((line) => (
-          <LineRow key={line.lineKey} line={line} {...props} />
+          <LineRow key={line.lineKey} line={line} isDense={isDense} {...props} />
         ))}
       </tbody>
     </Table>
   );
 }
 
-function LineRow({ line, units, rule, lowestTestFrequency, selected }: MatrixProps & { line: ComplianceLine }) {
+interface LineRowProps extends MatrixProps {
+  line: ComplianceLine;
+  isDense: boolean;
+}
+
+function LineRow({ line, units, rule, lowestTestFrequency, selected, isDense }: LineRowProps) {
   const words = describeDefinition(line.definition, lowestTestFrequency ?? undefined);
-  const columns = units.reduce((count, { temperatures }) => count + temperatures.length, 0);
+  const columns = countColumns(units);
   return (
     <Row>
       <RowHead className="max-tablet:max-w-36 max-tablet:min-w-36 max-tablet:py-1 max-tablet:pr-2!">
@@ -82,7 +103,7 @@ function LineRow({ line, units, rule, lowestTestFrequency, selected }: MatrixPro
         <span className="font-normal tablet:hidden"> {words.requirement}</span>
         <span className="block text-12 font-normal text-quiet tablet:hidden">{words.limit}</span>
       </RowHead>
-      <Cell className="max-w-64 min-w-44 py-1 max-tablet:hidden">
+      <Cell className={`max-w-64 py-1 max-tablet:hidden ${isDense ? "min-w-36" : "min-w-44"}`}>
         {words.band === "" ? words.requirement : <TwoLines upper={words.requirement} lower={words.band} />}
       </Cell>
       <Cell className="whitespace-nowrap max-tablet:hidden">{words.limit}</Cell>
@@ -95,6 +116,7 @@ function LineRow({ line, units, rule, lowestTestFrequency, selected }: MatrixPro
               place={{ unit, celsius }}
               parted={place === 0}
               rule={rule}
+              isDense={isDense}
               isSelected={selected?.lineKey === line.lineKey && selected.unit === unit && selected.celsius === celsius}
             />
           )),
@@ -114,10 +136,11 @@ interface ResultCellProps {
   place: { readonly unit: string; readonly celsius: number };
   parted: boolean;
   rule: "simple" | "guarded";
+  isDense: boolean;
   isSelected: boolean;
 }
 
-function ResultCell({ line, place, parted, rule, isSelected }: ResultCellProps) {
+function ResultCell({ line, place, parted, rule, isDense, isSelected }: ResultCellProps) {
   const cell = cellAt(line, place.unit, place.celsius);
   if (!cell) return <Cell parted={parted} />;
   const { verdict } = cell.result;
@@ -135,13 +158,45 @@ function ResultCell({ line, place, parted, rule, isSelected }: ResultCellProps) 
         preventScrollReset
         replace
         aria-current={isSelected ? "true" : undefined}
-        className={`flex h-11 items-center justify-between gap-1.5 pr-2 pl-2 no-underline hover:bg-signal/8 aria-[current]:shadow-none aria-[current]:outline-2 aria-[current]:-outline-offset-2 aria-[current]:outline-signal max-tablet:h-13 ${colour}`}
+        className={`flex min-h-11 flex-col justify-center ${isDense ? "px-1" : "px-2"} py-1 leading-4 no-underline hover:bg-signal/8 aria-[current]:shadow-none aria-[current]:outline-2 aria-[current]:-outline-offset-2 aria-[current]:outline-signal max-tablet:min-h-13 ${colour} ${cell.predicted ? "border border-dashed border-edge" : ""}`}
       >
-        <VerdictMark verdict={verdict} size={12} />
-        <span>{cellFigure(shown)}</span>
-        {cell.scored ? null : <span className="sr-only">not scored</span>}
+        <CellFigures cell={cell} shown={shown} isDense={isDense} />
       </Link>
     </Cell>
+  );
+}
+
+interface CellFiguresProps {
+  cell: ScoredCell;
+  shown: ShownResult;
+  isDense: boolean;
+}
+
+/** The value over its interval, and where it was decided if that is elsewhere. */
+function CellFigures({ cell: { result, scored, predicted }, shown, isDense }: CellFiguresProps) {
+  const interval = cellInterval(shown, result.assumed === true);
+  const deciding = decidedElsewhere(result);
+  const bound = result.bound === undefined ? "" : result.bound === "at-least" ? "at least " : "at most ";
+  return (
+    <>
+      <span className="flex items-center justify-between gap-1.5">
+        <VerdictMark verdict={result.verdict} size={12} />
+        <span>
+          {bound}
+          {cellFigure(shown)}
+        </span>
+      </span>
+      {interval === null ? null : (
+        <span className={isDense ? "sr-only" : "text-12 font-normal text-quiet"}>{interval}</span>
+      )}
+      {deciding === null ? null : (
+        <span className="text-12 font-normal text-quiet">
+          decided at <span className="block">{formatFrequency(deciding)}</span>
+        </span>
+      )}
+      {scored ? null : <span className="sr-only">not scored</span>}
+      {predicted ? <span className="sr-only">predicted</span> : null}
+    </>
   );
 }
 
@@ -193,7 +248,8 @@ const SHOWN: readonly ShownVerdict[] = [
 ];
 
 /** The marks of the matrix with their words. */
-export function ComplianceLegend() {
+export function ComplianceLegend({ units }: Pick<MatrixProps, "units">) {
+  const hasPredicted = units.some(({ temperatures }) => temperatures.some(({ predicted }) => predicted));
   return (
     <ul className="flex flex-wrap items-center gap-x-5 gap-y-1 text-12" aria-label="Marks">
       {SHOWN.map((verdict) => (
@@ -203,6 +259,8 @@ export function ComplianceLegend() {
         </li>
       ))}
       <li>tinted: does not comply</li>
+      {countColumns(units) > MOST_ROOMY ? null : <li>( ): from the assumed setup</li>}
+      {hasPredicted ? <li className="border border-dashed border-edge px-1.5">predicted</li> : null}
     </ul>
   );
 }

@@ -1,38 +1,39 @@
-// "What this data does not show": evidence missing, lines not covered, and doubts about the files, each with its place.
+// "What this data does not show": lines not covered, what was assumed, and doubts about files and lot, each with its place.
 import { SETUP_FIELDS } from "~/forms/setup";
 import { isMeasured } from "~/rf/index";
 import { celsiusWords, type ComplianceLine } from "./compliance-words";
 import { Section } from "./page";
 
+interface NotePlace {
+  readonly unit: string;
+  /** Null for a note on a unit at all temperatures. */
+  readonly celsius: number | null;
+  /** Names of the files it is about, where it is about several. */
+  readonly files?: readonly string[];
+  readonly message: string;
+}
+
 export interface DataNoteView {
   readonly code: string;
   readonly severity: "repaired" | "doubtful";
   readonly lineNumber: string | null;
-  readonly places: readonly { readonly unit: string; readonly celsius: number; readonly message: string }[];
-}
-
-export interface EvidenceView {
-  readonly unitsAsked: number;
-  readonly unitsOverRangeAsked: number;
-  readonly units: number;
-  readonly unitsOverRange: number;
-  readonly temperatures: number;
-  readonly assumed: readonly string[];
+  readonly places: readonly NotePlace[];
 }
 
 interface NotesProps {
   lines: readonly ComplianceLine[];
   notes: readonly DataNoteView[];
-  evidence: EvidenceView | null;
+  /** Setup fields that were not stated of every sweep. */
+  assumed: readonly string[];
   basis: "measured" | "similar" | "simulated";
 }
 
-export function ComplianceNotes({ lines, notes, evidence, basis }: NotesProps) {
-  const sentences = [...missingEvidence(evidence, basis), ...notCovered(lines)];
+export function ComplianceNotes({ lines, notes, assumed, basis }: NotesProps) {
+  const sentences = [...caveats(assumed, basis), ...notCovered(lines)];
   return (
     <Section title="What this data does not show">
       {sentences.length === 0 && notes.length === 0 ? (
-        <p className="text-13 text-quiet">Nothing was found missing or doubtful.</p>
+        <p className="text-13 text-quiet">Nothing was found doubtful.</p>
       ) : (
         <ul className="text-13">
           {sentences.map((sentence) => (
@@ -51,13 +52,16 @@ export function ComplianceNotes({ lines, notes, evidence, basis }: NotesProps) {
   );
 }
 
+/** More places than this are folded. */
+const MOST_PLACES = 4;
+
 function NoteWords({ note }: { note: DataNoteView }) {
   const [first, ...rest] = note.places;
   if (!first) return null;
   const line = note.lineNumber === null ? "" : `Line ${note.lineNumber}. `;
   const repaired = note.severity === "repaired" ? " Repaired on reading." : "";
   const isAlike = rest.every(({ message }) => message === first.message);
-  if (rest.length === 0 || isAlike)
+  if (rest.length === 0 || (isAlike && rest.length <= MOST_PLACES))
     return (
       <>
         {line}
@@ -78,7 +82,7 @@ function NoteWords({ note }: { note: DataNoteView }) {
       <ul className="mt-1 pl-4">
         {rest.map((place) => (
           <li key={placeWords(place)}>
-            {place.message} <span className="text-quiet">{placeWords(place)}</span>
+            {isAlike ? null : place.message} <span className="text-quiet">{placeWords(place)}</span>
           </li>
         ))}
       </ul>
@@ -86,29 +90,16 @@ function NoteWords({ note }: { note: DataNoteView }) {
   );
 }
 
-const placeWords = ({ unit, celsius }: { unit: string; celsius: number }): string =>
-  `unit ${unit}, ${celsiusWords(celsius)}`;
+const placeWords = ({ unit, celsius, files = [] }: NotePlace): string =>
+  [`unit ${unit}`, ...(celsius === null ? [] : [celsiusWords(celsius)]), ...files].join(", ");
 
-const counted = (count: number): string => `${count} ${count === 1 ? "unit" : "units"}`;
-
-function missingEvidence(evidence: EvidenceView | null, basis: NotesProps["basis"]): string[] {
-  if (!evidence) return [];
-  const { units, unitsAsked, unitsOverRange, unitsOverRangeAsked, assumed } = evidence;
+function caveats(assumed: readonly string[], basis: NotesProps["basis"]): string[] {
   const fields = SETUP_FIELDS.filter(({ field }) => assumed.includes(field)).map(({ label }) =>
     lowerFirst(label).replace(/, ±$/, ""),
   );
+  const origin = basis === "similar" ? "of a similar part" : "simulated";
   return [
-    ...(basis === "measured"
-      ? []
-      : [
-          `The data is ${basis === "similar" ? "of a similar part" : "simulated"}: no line exceeds a conditional pass.`,
-        ]),
-    ...(units < unitsAsked ? [`${counted(unitsAsked)} asked, ${units} measured.`] : []),
-    ...(unitsOverRange < unitsOverRangeAsked
-      ? [
-          `${counted(unitsOverRangeAsked)} over temperature asked, ${unitsOverRange === 0 ? "none" : unitsOverRange} measured.`,
-        ]
-      : []),
+    ...(basis === "measured" ? [] : [`The data is ${origin}: no line exceeds a conditional pass.`]),
     ...(fields.length > 0 ? [`Not stated, assumed as the RFQ says: ${fields.join("; ")}.`] : []),
   ];
 }

@@ -57,6 +57,35 @@ export function cellFigure({ value, limit, margin, unit }: ShownResult): string 
   return formatLevel(value, { decimals, ...(margin < 0 ? { failingAgainst: limit } : {}) });
 }
 
+/**
+ * What a matrix cell says under its value: "± 0.10", "57.1 to 59.6" where the ends lie unevenly, "from 57.1" where one is
+ * open; in brackets where it rests on the assumed setup. Null where there is no interval.
+ */
+export function cellInterval({ value, interval: [low, high], unit }: ShownResult, isAssumed: boolean): string | null {
+  const decimals = valueDecimals(value, unit);
+  const words = intervalWords(value, low, high, decimals);
+  return words === null || !isAssumed ? words : `(${words})`;
+}
+
+function intervalWords(value: number, low: number, high: number, decimals: number): string | null {
+  if (!Number.isFinite(value) || Number.isNaN(low) || Number.isNaN(high) || low === high) return null;
+  if (high === Infinity) return low === -Infinity ? null : `from ${formatNumber(low, decimals)}`;
+  if (low === -Infinity) return `to ${formatNumber(high, decimals)}`;
+  const [below, above] = [(value - low).toFixed(decimals), (high - value).toFixed(decimals)];
+  if (below === above) return Number(below) === 0 ? null : `± ${formatNumber(Number(below), decimals)}`;
+  return `${formatNumber(low, decimals)} to ${formatNumber(high, decimals)}`;
+}
+
+/** Hz, where the verdict is read from another frequency than the reported one; else null. */
+export function decidedElsewhere({ frequency, decidingFrequency }: Cell["result"]): number | null {
+  if (!Number.isFinite(frequency) || !Number.isFinite(decidingFrequency)) return null;
+  return Math.abs(decidingFrequency - frequency) > 1e-9 * decidingFrequency ? decidingFrequency : null;
+}
+
+/** Whether what a result says besides is what would settle it: a conditional verdict's reason is that and nothing else. */
+export const isConditional = (verdict: ShownVerdict): boolean =>
+  verdict === "conditional-pass" || verdict === "conditional-fail";
+
 /** "+0.34 ± 0.10 dB"; "+10.98 dB (10.35 to 11.65)" where the ends lie unevenly. */
 export function marginWithInterval({
   margin,

@@ -1,6 +1,8 @@
 // What measured data do not show, or make doubtful, each with its place; nothing is subtracted or repaired by guess.
 
 import { checkColumns } from "./check-columns.ts";
+import { checkFlatOffset } from "./check-offset.ts";
+import { checkPorts } from "./check-ports.ts";
 import { checkSampling } from "./check-sampling.ts";
 import { checkWaves } from "./check-waves.ts";
 import type { Note, Requirement, Setup, TwoPort } from "./contract.ts";
@@ -10,6 +12,8 @@ export interface CheckContext {
   /** Ohm, of the specification. */
   readonly impedance?: readonly [number, number];
   readonly setup?: Setup;
+  /** Hz: where a band that starts at exactly 0 Hz is taken to start. */
+  readonly lowestTestFrequency?: number;
   /** The part the data are said to be of. */
   readonly partNumber?: string;
 }
@@ -19,7 +23,10 @@ const PART_LABEL = /(?:\bpart(?:\s*(?:no\.?|number|#))?|\bp\/n|\bdut)\s*[:=#]\s*
 
 /**
  * Notes on data quality: passivity, reciprocity, columns not measured, sampling against the requirements, floor, phase
- * steps, reference impedance and comments that name another part. All are doubts; none changes a number.
+ * steps, a flat offset, swapped ports, reference impedance and comments that name another part. All are doubts; none changes
+ * a number.
+ *
+ * @throws RangeError for a malformed requirement, setup or impedance
  */
 export function checkNetwork(network: TwoPort, context: CheckContext = {}): Note[] {
   return [
@@ -27,6 +34,8 @@ export function checkNetwork(network: TwoPort, context: CheckContext = {}): Note
     ...checkColumns(network),
     ...checkWaves(network, context.setup),
     ...checkSampling(network, context.requirements),
+    ...checkFlatOffset(network, context.requirements ?? [], context.impedance),
+    ...checkPorts(network, context.requirements ?? [], context),
     ...checkComments(network.comments, context.partNumber),
   ];
 }

@@ -1,6 +1,7 @@
 // Where the sweep is too coarse to show what a requirement asks: holes, wide steps, few samples.
 
 import type { Note, Requirement, Series, TwoPort } from "./contract.ts";
+import { isHole } from "./coverage.ts";
 import { formatFrequency } from "./describe.ts";
 import { sameFrequency } from "./frequency.ts";
 
@@ -37,6 +38,29 @@ const stretch = (frequency: Series, k: number) => [frequency[k] as number, frequ
 
 function checkRequirement(frequency: Series, requirement: Requirement): Note[] {
   if (!("band" in requirement)) return [];
+  return [...checkAperture(frequency, requirement), ...checkDensity(frequency, requirement)];
+}
+
+/** The aperture of a delay where none is stated: from the sample below to the one above, at each sample in the band. */
+function checkAperture(frequency: Series, requirement: BandRequirement): Note[] {
+  if (requirement.kind !== "group-delay" && requirement.kind !== "group-delay-variation") return [];
+  if (requirement.aperture !== undefined) return [];
+  const { id, band } = requirement;
+  let [narrowest, widest] = [Infinity, 0];
+  for (let k = 1; k < frequency.length - 1; k += 1) {
+    if ((frequency[k] as number) < band[0] || (frequency[k] as number) > band[1]) continue;
+    const aperture = (frequency[k + 1] as number) - (frequency[k - 1] as number);
+    narrowest = Math.min(narrowest, aperture);
+    widest = Math.max(widest, aperture);
+  }
+  if (widest === 0) return [];
+  const [from, to] = [narrowest, widest].map((hz) => formatFrequency(Number(hz.toPrecision(4))));
+  const aperture = from === to ? `${from}` : `${from} to ${to}`;
+  const message = `No aperture is stated for the delay: it is taken over the two steps about each sample, ${aperture}; noise grows as steps shrink.`;
+  return [{ code: "delay-aperture", severity: "doubtful", message, frequency: band, requirementId: id }];
+}
+
+function checkDensity(frequency: Series, requirement: BandRequirement): Note[] {
   const isStopband = STOPBAND_KINDS.includes(requirement.kind);
   if (requirement.maxStep !== undefined || isStopband) return checkSteps(frequency, requirement);
   return checkSamples(frequency, requirement);
@@ -44,7 +68,7 @@ function checkRequirement(frequency: Series, requirement: Requirement): Note[] {
 
 type BandRequirement = Extract<Requirement, { band: unknown }>;
 
-/** Steps within the band wider than maxStep, or than f/500 where none is asked. */
+/** The step within the band that exceeds most what is asked: maxStep as the coverage counts it, f/500 where none is asked. */
 function checkSteps(frequency: Series, { id, band, maxStep }: BandRequirement): Note[] {
   let worst = -1;
   let worstRatio = 1;
@@ -53,7 +77,7 @@ function checkSteps(frequency: Series, { id, band, maxStep }: BandRequirement): 
     if (!(to > band[0] && from < band[1])) continue;
     const allowed = maxStep ?? to / STOPBAND_STEPS;
     const width = to - from;
-    if (width <= worstRatio * allowed || sameFrequency(width, allowed)) continue;
+    if (width <= worstRatio * allowed || !isWider(frequency, k, allowed)) continue;
     worst = k;
     worstRatio = width / allowed;
   }
@@ -62,10 +86,14 @@ function checkSteps(frequency: Series, { id, band, maxStep }: BandRequirement): 
   const width = formatFrequency(range[1] - range[0]);
   const allowed = formatFrequency(maxStep ?? range[1] / STOPBAND_STEPS);
   const consequence =
-    maxStep === undefined ? "a response between samples would not show" : "the stretch is not covered";
+    maxStep === undefined ? "a response between samples would not show" : "the stretch is not covered by this sweep";
   const message = `A step of ${width} at ${formatFrequency(range[0])}, wider than ${allowed}: ${consequence}.`;
   return [{ code: "wide-step", severity: "doubtful", message, frequency: range, requirementId: id }];
 }
+
+/** Two frequencies within 1e-9 are one: a step rounded to whole hertz keeps what it was rounded from. */
+const isWider = (frequency: Series, below: number, allowed: number): boolean =>
+  isHole(frequency, frequency, below, allowed);
 
 function checkSamples(frequency: Series, { id, band }: BandRequirement): Note[] {
   if (sameFrequency(band[0], band[1])) return [];

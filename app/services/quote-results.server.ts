@@ -1,12 +1,30 @@
 // The results of a submitted quote: each line over units and temperatures, and what the data does not show.
 import { Op } from "sequelize";
-import { MeasurementRow, QuoteDeclaration, VersionMeasurement, type QuoteVersion, type Rfq } from "~/db/models";
+import {
+  MeasurementRow,
+  QuoteDeclaration,
+  StoredFile,
+  VersionMeasurement,
+  type QuoteVersion,
+  type Rfq,
+} from "~/db/models";
 import type { LineVerdict } from "~/emails/index";
 import { mergeSetup } from "~/rf/assumed-setup";
-import { readCell, type Cell, type Note, type RequirementDefinition, type Setup } from "~/rf/index";
+import { evidenceOf, type Evidence } from "~/rf/evidence";
+import {
+  readCell,
+  type Cell,
+  type Note,
+  type RequirementDefinition,
+  type Setup,
+  type SpecificationLine,
+} from "~/rf/index";
+import type { LotNote } from "~/rf/lot-notes";
+import { unitsCountedAs } from "~/rf/same-data";
+import { statedOf } from "~/rf/score-sweep";
 import type { Person } from "./person.server";
 import { lineVerdict, readScores, type QuoteScore } from "./quote-scores.server";
-import { readSpecificationView } from "./specification-view.server";
+import { readSpecificationView, type SpecificationView } from "./specification-view.server";
 import { findSubmittedQuote, headOf, type SubmittedQuoteHead } from "./submitted-quotes.server";
 
 export interface QuoteLine {
@@ -32,20 +50,28 @@ export interface UnitColumns {
   readonly temperatures: readonly { readonly celsius: number; readonly predicted: boolean }[];
 }
 
-/** One doubt about the data, with each sweep it was raised on. */
+/** One doubt about the data, with each sweep, measurement or unit it was raised on. */
 export interface DataNote {
   readonly code: string;
   readonly severity: Note["severity"];
   readonly lineNumber: string | null;
-  readonly places: readonly { readonly unit: string; readonly celsius: number; readonly message: string }[];
+  readonly places: readonly NotePlace[];
+}
+
+export interface NotePlace {
+  readonly unit: string;
+  /** Null for a note on a unit at all temperatures. */
+  readonly celsius: number | null;
+  /** Names of the files, where it is about several. */
+  readonly files?: readonly string[];
+  readonly message: string;
 }
 
 export interface QuoteEvidence {
-  readonly unitsAsked: number;
-  readonly unitsOverRangeAsked: number;
   readonly units: number;
-  readonly unitsOverRange: number;
   readonly temperatures: number;
+  /** What was asked, delivered and missing. */
+  readonly grid: Evidence;
   /** Fields of the measurement setup the supplier did not state for every sweep. */
   readonly assumed: readonly (keyof Setup)[];
 }
@@ -61,6 +87,8 @@ export interface QuoteResults {
   readonly worstLineKey: string | null;
   /** Hz; for the words of a band from DC. */
   readonly lowestTestFrequency: number | null;
+  /** Ohm, port 1 and port 2 of the specification; null until the version is scored. */
+  readonly impedances: readonly [number, number] | null;
 }
 
 /** The results of a quote's current version, or null where the person does not see it. */
@@ -68,15 +96,14 @@ export async function readQuoteResults(person: Person, quotePublicId: string): P
   const found = await findSubmittedQuote(person, quotePublicId);
   if (!found) return null;
   const { version, rfq } = found;
-  const [scores, specification, declarations, sweeps] = await Promise.all([
-    readScores(person, [version]),
-    readSpecificationView(person, version.revisionId),
+  const score = (await readScores(person, [version])).get(version.id);
+  // Of the revision the figures speak of, which after an amendment need not be the one the version was submitted to.
+  const [specification, declarations, sweeps] = await Promise.all([
+    readSpecificationView(person, score?.summary.revisionId ?? version.revisionId),
     QuoteDeclaration.findAll({ where: { versionId: version.id }, actor: person }),
     readVersionSweeps(person, version.id),
   ]);
-  const score = scores.get(version.id);
   const answers = new Map(declarations.map((row) => [row.lineKey, { answer: row.answer, text: row.text }]));
-  const numbers = new Map(specification?.lines.map(({ lineKey, lineNumber }) => [lineKey, lineNumber]));
   const lines = (score && specification ? specification.lines : []).flatMap((line): QuoteLine[] => {
     const result = score?.lines.get(line.lineKey);
     if (!result) return [];
@@ -97,10 +124,14 @@ export async function readQuoteResults(person: Person, quotePublicId: string): P
     head: await headOf(person, found, score),
     lines,
     units: unitColumns(lines),
-    notes: notesOf(sweeps, numbers),
-    evidence: score ? evidenceOf(score, rfq, version, sweeps) : null,
+    notes: [
+      ...(await lotNotesOf(person, score?.summary.notes ?? [], sweeps)),
+      ...notesOf(sweeps, specification?.lines ?? []),
+    ],
+    evidence: score && specification ? quoteEvidenceOf(score, rfq, version, specification, sweeps) : null,
     worstLineKey: score?.summary.worstLineKey ?? null,
     lowestTestFrequency: specification?.lowestTestFrequency ?? null,
+    impedances: specification?.impedances ?? null,
   };
 }
 
@@ -136,11 +167,37 @@ export function unitColumns(lines: readonly Pick<QuoteLine, "cells">[]): UnitCol
     }));
 }
 
+/** Notes on how finely a line's band was sampled. */
+const SAMPLING: readonly Note["code"][] = ["wide-step", "few-samples"];
+
+/** Whether another sweep of the measurement shows the note's line as finely as this one should: a wide sweep beside a fine one is as usual. */
+function isAnswered(
+  note: Note,
+  sweep: MeasurementRow,
+  sweeps: readonly MeasurementRow[],
+  lines: readonly SpecificationLine[],
+) {
+  const definition = lines.find(({ lineKey }) => lineKey === note.requirementId)?.definition;
+  if (!SAMPLING.includes(note.code) || !definition || !("band" in definition)) return false;
+  const [from, to] = definition.band;
+  return sweeps.some(
+    (other) =>
+      other.id !== sweep.id &&
+      other.serial === sweep.serial &&
+      other.temperature === sweep.temperature &&
+      other.frequencyFrom <= from &&
+      other.frequencyTo >= to &&
+      !other.notes.some(({ code, requirementId }) => code === note.code && requirementId === note.requirementId),
+  );
+}
+
 /** Notes on the sweeps, those that say the same of several sweeps as one. */
-function notesOf(sweeps: readonly MeasurementRow[], numbers: ReadonlyMap<string, string>): DataNote[] {
+function notesOf(sweeps: readonly MeasurementRow[], lines: readonly SpecificationLine[]): DataNote[] {
+  const numbers = new Map(lines.map(({ lineKey, lineNumber }) => [lineKey, lineNumber]));
   const notes = new Map<string, { note: Note; places: DataNote["places"][number][] }>();
   for (const sweep of sweeps)
     for (const note of sweep.notes) {
+      if (isAnswered(note, sweep, sweeps, lines)) continue;
       const key = `${note.code} ${note.requirementId ?? ""}`;
       const known = notes.get(key) ?? { note, places: [] };
       known.places.push({ unit: sweep.serial ?? "", celsius: Number(sweep.temperature), message: note.message });
@@ -154,21 +211,72 @@ function notesOf(sweeps: readonly MeasurementRow[], numbers: ReadonlyMap<string,
   }));
 }
 
-function evidenceOf(
+/** Notes on the lot, those of a kind as one, with the names of the files that they are about. */
+async function lotNotesOf(
+  person: Person,
+  notes: readonly LotNote[],
+  sweeps: readonly MeasurementRow[],
+): Promise<DataNote[]> {
+  const named = new Set(notes.flatMap(({ sweepIds }) => sweepIds ?? []));
+  const rows = sweeps.filter(({ publicId }) => named.has(publicId));
+  const files = await StoredFile.findAll({
+    where: { id: { [Op.in]: rows.map(({ fileId }) => fileId) } },
+    attributes: ["id", "name"],
+    actor: person,
+  });
+  const fileNames = new Map(files.map(({ id, name }) => [id, name]));
+  const nameOf = new Map(rows.map(({ publicId, fileId }) => [publicId, fileNames.get(fileId)]));
+  const placeOf = ({ unit, temperature, message, sweepIds = [] }: LotNote): NotePlace => ({
+    unit,
+    celsius: temperature ?? null,
+    message,
+    files: sweepIds.flatMap((id) => nameOf.get(id) ?? []),
+  });
+  return [...new Set(notes.map(({ code }) => code))].map((code) => ({
+    code,
+    severity: "doubtful",
+    lineNumber: null,
+    places: notes.filter((note) => note.code === code).map(placeOf),
+  }));
+}
+
+function quoteEvidenceOf(
   { summary }: QuoteScore,
   rfq: Rfq,
   version: QuoteVersion,
+  { ambient, temperatureRange, lowestTestFrequency }: SpecificationView,
   sweeps: readonly MeasurementRow[],
 ): QuoteEvidence {
   const assumed = sweeps.flatMap(({ setup }) => [
-    ...mergeSetup({ ...version.setup, ...(setup ?? {}) }, rfq.assumedSetup).assumed,
+    ...mergeSetup(statedOf(version.setup, setup), rfq.assumedSetup).assumed,
   ]);
+  const asked = {
+    units: rfq.unitsAsked,
+    unitsOverRange: rfq.unitsOverRange,
+    ambient,
+    plan: rfq.measurementPlan,
+    basis: version.basis,
+    ...(temperatureRange === null ? {} : { range: temperatureRange }),
+    ...(lowestTestFrequency === null ? {} : { lowestTestFrequency }),
+  };
   return {
-    unitsAsked: rfq.unitsAsked,
-    unitsOverRangeAsked: rfq.unitsOverRange,
     units: summary.units,
-    unitsOverRange: summary.unitsOverRange,
     temperatures: summary.temperatures,
+    grid: evidenceOf(asked, sweeps.map(deliveredSweep), sameUnits(summary.notes)),
     assumed: [...new Set(assumed)],
   };
 }
+
+/** A stored sweep as the evidence grid counts it. */
+export const deliveredSweep = ({ serial, temperature, frequencyFrom, frequencyTo, points, steps }: MeasurementRow) => ({
+  unit: serial,
+  temperature: temperature === null ? null : Number(temperature),
+  from: frequencyFrom,
+  to: frequencyTo,
+  points,
+  steps,
+});
+
+/** Units that the lot's notes found to be another one by their data, each with the unit it counts as. */
+const sameUnits = (notes: readonly LotNote[]): Map<string, string> =>
+  unitsCountedAs(notes.flatMap(({ code, units }) => (code === "identical-data" && units ? [units] : [])));

@@ -153,6 +153,29 @@ test("fewer than 20 samples in a passband are noted, where the sweep reaches it"
   expect(codes(network(), { requirements: [loss(3e9, 4e9), loss(1.5e9, 1.5e9)] })).toEqual([]);
 });
 
+test("a delay without an aperture names the one it is taken over, per line", () => {
+  const delay = (aperture?: number): Requirement => ({
+    id: "5.1",
+    kind: "group-delay",
+    band: [1.2e9, 1.6e9],
+    max: 1e-8,
+    ...(aperture !== undefined && { aperture }),
+  });
+  const note = only(network(), { requirements: [delay()] });
+  expect(note).toMatchObject({ code: "delay-aperture", requirementId: "5.1", frequency: [1.2e9, 1.6e9] });
+  // Two steps of 10 MHz.
+  expect(note?.message).toContain("20.00 MHz;");
+  expect(codes(network(), { requirements: [delay(20e6)] })).toEqual([]);
+  const uneven = [
+    ...grid(51),
+    ...grid(101)
+      .slice(51)
+      .filter((_, k) => k % 2 === 1),
+  ];
+  const spread = checkNetwork(network({}, uneven), { requirements: [delay()] });
+  expect(spread.find(({ code }) => code === "delay-aperture")?.message).toContain("20.00 MHz to 40.00 MHz");
+});
+
 test("references unlike the specification's and comments that name another part are noted", () => {
   expect(only(network(), { impedance: [50, 75] })).toMatchObject({
     code: "reference-impedance",

@@ -1,13 +1,16 @@
 // Results of a measured quote, against figures an independent tool computed for the same files.
 import { expect, test } from "vitest";
-import { Quote } from "~/db/models";
+import { MeasurementRow, Quote, QuoteSummary, StoredFile, VersionMeasurement } from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
+import type { Note } from "~/rf/contract";
+import type { LotNote } from "~/rf/lot-notes";
+import { newPublicId, sha256 } from "~/services/identifiers.server";
 import { readQuoteResults } from "~/services/quote-results.server";
 import { readQuoteFiles, readQuoteTerms } from "~/services/quote-terms-view.server";
 import { readQuoteTraces } from "~/services/quote-traces.server";
 import { buildOrganisation, buildPerson, buildRfq } from "../support/factories";
 import { expectedSupplier, JOURNEY_LINES, JOURNEY_SETUP, journeyKey } from "../support/journey";
-import { buildSubmittedQuote, measureAndScore } from "../support/scored-quote";
+import { buildSubmittedQuote, measureAndScore, storeScore } from "../support/scored-quote";
 import { useDatabase } from "../support/database";
 
 useDatabase();
@@ -81,6 +84,73 @@ test(
     }
   },
 );
+
+test("the evidence grid counts what was delivered against the RFQ's plan, and the lot's notes name unit and files", async () => {
+  const buyer = await buildOrganisation("buyer");
+  const engineer = await buildPerson(buyer);
+  const plan = { temperatures: [50], sweeps: [{ band: [1.9e9, 2e9] as const, maxStep: 0.1e6 }] };
+  const asked = { assumedSetup: JOURNEY_SETUP, measurementPlan: plan, unitsAsked: 2, unitsOverRange: 1 };
+  const { rfq } = await buildRfq(engineer, asked, JOURNEY_LINES);
+  const { quote, version } = await buildSubmittedQuote(rfq, JOURNEY_LINES);
+  await storeScore(version, JOURNEY_LINES, {}, false);
+  const { buyerOrganisationId, supplierOrganisationId } = version;
+  const tenants = { buyerOrganisationId, supplierOrganisationId };
+  const sweeps = [
+    { serial: "A", temperature: "25.0", steps: [[1.9e9, 2e9, 0.1e6]] as const, name: "a-ambient.s2p" },
+    { serial: "B", temperature: "25.0", steps: [[1.9e9, 2e9, 0.1e6]] as const, name: "b-ambient.s2p" },
+    { serial: "A", temperature: "50.0", steps: [[1.9e9, 2e9, 1e6]] as const, name: "a-warm.s2p" },
+    { serial: "A", temperature: "25.0", steps: [[1.9e9, 2e9, 1e6]] as const, name: "a-wide.s2p" },
+  ];
+  const coarse: Note = {
+    code: "wide-step",
+    severity: "doubtful",
+    message: "A step of 1 MHz, wider than 600 kHz.",
+    requirementId: journeyKey("2.1"),
+  };
+  const publicIds: string[] = [];
+  for (const [place, { name, ...columns }] of sweeps.entries()) {
+    const stored = { ...tenants, quoteId: quote.id, sharedAt: version.createdAt, createdAt: version.createdAt };
+    const file = await StoredFile.create({
+      ...{ ...stored, publicId: newPublicId(), name, mediaType: "application/octet-stream", size: 1 },
+      sha256: sha256(name),
+    });
+    const reach = { points: 1001, frequencyFrom: 1.9e9, frequencyTo: 2e9, impedance1: 50, impedance2: 50 };
+    const notes = place < 2 ? [] : [coarse];
+    const publicId = newPublicId();
+    const { id } = await MeasurementRow.create({ ...stored, ...columns, ...reach, notes, publicId, fileId: file.id });
+    await VersionMeasurement.create({ ...tenants, versionId: version.id, measurementId: id });
+    publicIds.push(publicId);
+  }
+  const note: LotNote = {
+    code: "identical-data",
+    severity: "doubtful",
+    message: "Units A and B have the same data to the bit in one sweep, at +25 °C: they count as one unit.",
+    unit: "A",
+    units: ["A", "B"],
+    sweepIds: publicIds.slice(0, 2),
+  };
+  await QuoteSummary.update({ notes: [note] }, { where: { versionId: version.id }, actor: SYSTEM });
+
+  const results = await readQuoteResults(engineer, quote.publicId);
+  const grid = results?.evidence?.grid;
+  expect(grid?.columns.map(({ celsius }) => celsius)).toEqual([-30, 25, 50, 70]);
+  expect(grid?.rows.map(({ unit, copies, cells }) => [unit, copies, ...cells.map(({ state }) => state)])).toEqual([
+    ["A", ["B"], "missing", "delivered", "partly", "missing"],
+    [null, [], "not-asked", "missing", "not-asked", "not-asked"],
+  ]);
+  expect(grid?.missing).toContain("Unit A at +50 °C: 1.9000 to 2.0000 GHz in steps of up to 1.00 MHz, 100 kHz asked.");
+  expect(grid?.missing).toContain("2 units asked, 1 measured.");
+  expect(results?.notes[0]).toEqual({
+    code: "identical-data",
+    severity: "doubtful",
+    lineNumber: null,
+    places: [{ unit: "A", celsius: null, message: note.message, files: ["a-ambient.s2p", "b-ambient.s2p"] }],
+  });
+  // The wide sweep at ambient has a fine one beside it, the warm one has none.
+  expect(results?.notes.slice(1)).toEqual([
+    { code: "wide-step", severity: "doubtful", lineNumber: "2.1", places: [expect.objectContaining({ celsius: 50 })] },
+  ]);
+});
 
 test("a quote that is not scored yet has no verdict and no lines, and a draft is not there", async () => {
   const buyer = await buildOrganisation("buyer");

@@ -1,14 +1,17 @@
-// One quote's results: the compliance matrix, the details of a cell, the overlay plot, what the data does not show.
+// One quote's results: compliance matrix, details of a cell, overlay plot, what would settle it, evidence, what the data does not show.
 import { useSearchParams, type ShouldRevalidateFunctionArgs } from "react-router";
 import { ComplianceCell } from "~/components/compliance-cell";
 import { ComplianceLegend, ComplianceMatrix } from "~/components/compliance-matrix";
 import { ComplianceNotes } from "~/components/compliance-notes";
+import { ComplianceSettling } from "~/components/compliance-settling";
+import { EvidenceGrid } from "~/components/evidence-grid";
 import { ComplianceProgress } from "~/components/compliance-progress";
 import { ComplianceTraces } from "~/components/compliance-traces";
 import { cellAt } from "~/components/compliance-words";
 import { Notice } from "~/components/notice";
 import { Page, Section, Split } from "~/components/page";
 import { QuoteBlock } from "~/components/quote-block";
+import { impedanceOffsetWords } from "~/components/requirement-words";
 import { orNotFound, requireRight } from "~/services/request.server";
 import { readQuoteResults } from "~/services/quote-results.server";
 import type { Route } from "./+types/quote-results";
@@ -45,7 +48,7 @@ export default function QuoteResults({ loaderData }: Route.ComponentProps) {
   return (
     <Page>
       <QuoteBlock head={head} />
-      <Section title={matrixTitle(loaderData)} tools={<ComplianceLegend />}>
+      <Section title={matrixTitle(loaderData)} tools={<ComplianceLegend units={units} />}>
         <ComplianceMatrix
           lines={lines}
           units={units}
@@ -54,6 +57,7 @@ export default function QuoteResults({ loaderData }: Route.ComponentProps) {
           selected={selected && place && { lineKey: selected.line.lineKey, ...place }}
         />
         <Conformity loaded={loaderData} />
+        <ImpedanceOffset impedances={loaderData.impedances} />
       </Section>
       <Split>
         <Section title="Measured traces">
@@ -71,7 +75,18 @@ export default function QuoteResults({ loaderData }: Route.ComponentProps) {
           ) : null}
         </div>
       </Split>
-      <ComplianceNotes lines={lines} notes={loaderData.notes} evidence={loaderData.evidence} basis={head.basis} />
+      <ComplianceSettling lines={lines} rule={head.decisionRule} lowestTestFrequency={lowestTestFrequency} />
+      {loaderData.evidence ? (
+        <Section title="Evidence asked and delivered">
+          <EvidenceGrid evidence={loaderData.evidence.grid} />
+        </Section>
+      ) : null}
+      <ComplianceNotes
+        lines={lines}
+        notes={loaderData.notes}
+        assumed={loaderData.evidence?.assumed ?? []}
+        basis={head.basis}
+      />
     </Page>
   );
 }
@@ -91,6 +106,12 @@ function matrixTitle({ evidence }: Loaded): string {
   if (!evidence) return "Compliance";
   const { units, temperatures } = evidence;
   return `Compliance of ${units} ${units === 1 ? "unit" : "units"} at ${temperatures} ${temperatures === 1 ? "temperature" : "temperatures"}`;
+}
+
+/** Said where the specification's impedances differ: the trade knows two losses then. */
+function ImpedanceOffset({ impedances }: Pick<Loaded, "impedances">) {
+  const words = impedances && impedanceOffsetWords(impedances);
+  return words ? <p className="mt-3 text-12 text-quiet">{words}</p> : null;
 }
 
 /** Said where the verdict of the measured lines alone would mislead. */
