@@ -38,10 +38,16 @@ module.exports = {
     only(
       "components",
       "^app/components/",
-      "^app/(components|forms|charts|rf|workflow|commerce)/",
+      "^app/(components|forms|charts|workers|rf|workflow|commerce)/",
       "A part gets its data as props.",
     ),
     only("charts", "^app/charts/", "^app/(charts|components|rf|workflow|commerce)/", "A plot gets its data as props."),
+    only(
+      "workers",
+      "^app/workers/",
+      "^app/(workers|rf|commerce)/",
+      "What runs in the browser's worker is the cores, and what it says is theirs.",
+    ),
     only(
       "services",
       "^app/services/",

@@ -1,7 +1,12 @@
-// Where measured files are dropped or chosen, and what is still on its way. Without script the same form posts them all.
+// Where measured files are dropped or chosen: checked on this machine first, sent when asked. Without script the form posts them all.
 import { Upload } from "lucide-react";
-import { useEffect, useId, useRef, useState, useSyncExternalStore, type DragEvent } from "react";
+import { useEffect, useEffectEvent, useId, useRef, useState, useSyncExternalStore, type DragEvent } from "react";
 import { Button } from "./button";
+import { CheckBar, CheckedFiles, RefusedFiles } from "./check-list";
+import { CheckLot } from "./check-lot";
+import type { CheckFrame } from "~/workers/check-messages";
+import { CheckQueue, isPending, startCheckWorker, type CheckState } from "./check-queue";
+import { counted } from "./check-words";
 import { PostForm } from "./form";
 import { formatNumber } from "./format";
 import { UploadQueue, sendTo, type UploadItem } from "./upload-queue";
@@ -10,19 +15,23 @@ import { VerdictMark } from "./verdict-mark";
 interface UploadPanelProps {
   /** Takes one file a post. */
   address: string;
+  /** What dropped files are checked against. */
+  frame: CheckFrame;
   /** Told after each stored file. */
   onStored: () => void;
 }
 
-export function UploadPanel({ address, onStored }: UploadPanelProps) {
+export function UploadPanel({ address, frame, onStored }: UploadPanelProps) {
   const [queue] = useState(() => new UploadQueue(sendTo(address), onStored));
   const items = useSyncExternalStore(queue.subscribe, queue.items, queue.items);
-  useLeaveGuard(items.some(({ state }) => state !== "refused"));
+  const [checks, state] = useCheckQueue(frame);
+  useLeaveGuard(items.some(({ state: at }) => at !== "refused"));
+  const take = (files: readonly File[]) => (state.canCheck ? checks.add(files) : queue.add(files));
   return (
     <div>
-      <DropZone onFiles={(files) => queue.add(files)} />
+      <DropZone onFiles={take} canCheck={state.canCheck} />
       <p role="status" className="sr-only">
-        {statusWords(items)}
+        {[checkWords(state), statusWords(items)].filter(Boolean).join(" ")}
       </p>
       {items.length === 0 ? null : (
         <ul aria-label="Files on their way" className="mt-3 border-t border-edge">
@@ -36,14 +45,58 @@ export function UploadPanel({ address, onStored }: UploadPanelProps) {
           ))}
         </ul>
       )}
+      {state.items.length === 0 ? null : (
+        <>
+          <CheckBar
+            items={state.items}
+            onSend={() => queue.add(checks.take())}
+            onCancelRest={() => checks.cancelRest()}
+            onClear={() => checks.clear()}
+          />
+          <RefusedFiles items={state.items} onRemove={(id) => checks.remove(id)} />
+          <CheckedFiles
+            items={state.items}
+            frame={frame}
+            onRemove={(id) => checks.remove(id)}
+            onRetry={(id) => checks.retry(id)}
+          />
+          <CheckLot state={state} frame={frame} />
+        </>
+      )}
     </div>
   );
+}
+
+/** The worker runs from the first moment, so that what is dropped needs no request, and is ended with the page. */
+function useCheckQueue(frame: CheckFrame): readonly [CheckQueue, CheckState] {
+  const [queue] = useState(() => new CheckQueue(startCheckWorker));
+  useEffect(() => queue.open(frame), [queue, frame]);
+  useEffect(() => () => queue.close(), [queue]);
+  useEffect(loadFonts, []);
+  return [queue, useSyncExternalStore(queue.subscribe, queue.state, queue.state)];
+}
+
+/** Greek letters have a font file of their own, and a note with the first Ω would ask for it after files were dropped. */
+function loadFonts(): void {
+  const family = getComputedStyle(document.body).fontFamily;
+  document.fonts.load(`13px ${family}`, "aΩ").catch(() => undefined);
+}
+
+/** For those who hear the page; said once all are checked. */
+function checkWords({ items }: CheckState): string {
+  if (items.length === 0 || items.some(isPending)) return "";
+  const refused = items.filter(({ state }) => state === "refused").length;
+  const checked = counted(items.length - refused, "file");
+  return `${checked} checked on this machine${refused > 0 ? `, ${refused} refused` : ""}; nothing has been sent.`;
 }
 
 function statusWords(items: readonly UploadItem[]): string {
   const refused = items.filter(({ state }) => state === "refused").length;
   const under = items.length - refused;
-  return [under > 0 ? `${under} files on their way` : "", refused > 0 ? `${refused} files refused` : ""]
+  return [
+    under > 0 ? `${counted(under, "file")} on their way` : "",
+    refused > 0 ? `${counted(refused, "file")} refused` : "",
+  ]
     .filter(Boolean)
     .join(", ");
 }
@@ -58,7 +111,12 @@ function useLeaveGuard(isBusy: boolean): void {
   }, [isBusy]);
 }
 
-function DropZone({ onFiles }: { onFiles: (files: readonly File[]) => void }) {
+interface DropZoneProps {
+  onFiles: (files: readonly File[]) => void;
+  canCheck: boolean;
+}
+
+function DropZone({ onFiles, canCheck }: DropZoneProps) {
   const input = useRef<HTMLInputElement>(null);
   const [isOver, setIsOver] = useState(false);
   const hint = useId();
@@ -73,6 +131,9 @@ function DropZone({ onFiles }: { onFiles: (files: readonly File[]) => void }) {
     onFiles([...files]);
     if (input.current) input.current.value = "";
   };
+  // Files chosen before the script ran.
+  const chooseEarly = useEffectEvent(choose);
+  useEffect(() => chooseEarly(), []);
   return (
     <PostForm upload aria-label="Upload measured files">
       <div
@@ -85,13 +146,18 @@ function DropZone({ onFiles }: { onFiles: (files: readonly File[]) => void }) {
         className={`flex flex-wrap items-center gap-x-6 gap-y-3 border border-dashed px-6 py-5 ${isOver ? "border-signal bg-signal/8" : "border-edge"}`}
       >
         <Upload size={20} strokeWidth={1.75} aria-hidden className="text-quiet" />
-        <div className="min-w-0 grow">
+        <div className="min-w-0 flex-1 basis-90">
           <label htmlFor={`${hint}-file`} className="block font-semibold">
             Drop two-port Touchstone files here, or choose them
           </label>
           <p id={hint} className="text-13 text-quiet">
             S2P or version 2 files, at most 64 MiB each and 200 in all. Serial and temperature are read from name or
-            comments where they stand there.
+            comments where they stand there.{" "}
+            <span className="noscript:hidden">
+              {canCheck
+                ? "They are checked on this machine first; nothing is sent before you press Upload."
+                : "This browser cannot check files by itself: what you choose is sent at once, and scored by the server."}
+            </span>
           </p>
         </div>
         <input

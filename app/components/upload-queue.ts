@@ -25,8 +25,9 @@ export interface SendCallbacks {
 export type Send = (file: File, callbacks: SendCallbacks) => () => void;
 
 const AT_ONCE = 2;
-const MOST_BYTES = 64 * 1024 * 1024;
-const TOO_LARGE = "The file is larger than 64 MiB. Save the sweep with fewer points, or split it.";
+/** Of one file. */
+export const MOST_BYTES = 64 * 1024 * 1024;
+export const TOO_LARGE = "The file is larger than 64 MiB. Save the sweep with fewer points, or split it.";
 const BROKEN = "The connection broke off. Send it again.";
 const UNREADABLE = "The server could not take this file. Send it again in a minute.";
 

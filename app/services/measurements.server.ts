@@ -4,21 +4,24 @@ import { MeasurementRow, StoredFile, type Quote } from "~/db/models";
 import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
 import { invalid, ok, type Result } from "~/forms/form";
+import { statedSetup } from "~/forms/quote-setup";
 import { parseTouchstone, TouchstoneError, type Note, type Setup, type TwoPort } from "~/rf/index";
 import { stepProfile } from "~/rf/step-profile";
 import { scoreSweep, setupInUse, sweepNotes, type SweepScore } from "~/rf/score-sweep";
+import { readSweepLabels } from "~/rf/sweep-labels";
+import { refusalSentence } from "~/rf/touchstone-refusal";
 import { quoteRefusal } from "~/workflow/quote";
 import { rfqState } from "~/workflow/rfq";
 import { packChunks, storeChunks } from "./file-bytes.server";
 import { newPublicId, sha256 } from "./identifiers.server";
+import { queueDraftScoring } from "./jobs.server";
 import type { Person } from "./person.server";
 import { changeFoundQuote, findQuote, recordQuoteEvent, type FoundQuote } from "./quotes.server";
-import { readScoringFrame, storeSweepScore, type ScoringFrame } from "./scoring-sweeps.server";
-import { readSweepLabels } from "./sweep-labels.server";
+import { readScoringFrame, setupHash, storeSweepScore, type ScoringFrame } from "./scoring-sweeps.server";
 import { MOST_FILE_BYTES, MOST_FILES, TOO_LARGE } from "./uploads.server";
 
 /** Of all files of a quote together, 200 sweeps of 25,000: a quote is scored as a whole, in memory. */
-const MOST_POINTS = 5_000_000;
+export const MOST_POINTS = 5_000_000;
 const TOO_MANY_POINTS =
   "The files of a quote hold at most 5,000,000 points together. Save the sweep with fewer points.";
 
@@ -46,13 +49,16 @@ export async function addMeasurement(
   packing.catch(() => undefined);
   const network = readNetwork(file);
   if ("refusal" in network) return invalid({ file: [network.refusal] });
+  const { assumedSetup } = found.rfq;
+  const stated = statedSetup({ ...found.quote.draft.values });
+  const setup = setupInUse(stated, assumedSetup);
   const sweep: PreparedSweep = {
     file,
     sha256: sha256(file.bytes),
     network,
-    notes: sweepNotes(network, frame, found.rfq.assumedSetup),
-    setup: setupInUse(null, found.rfq.assumedSetup),
-    score: scoreSweep(network, frame, null, found.rfq.assumedSetup),
+    notes: sweepNotes(network, frame, setup),
+    setup,
+    score: scoreSweep(network, frame, stated, assumedSetup),
     frame,
     chunks: await packing,
   };
@@ -64,6 +70,7 @@ interface PreparedSweep {
   readonly sha256: Buffer;
   readonly network: TwoPort;
   readonly notes: Note[];
+  /** What it was scored with: what the draft states, completed by what the RFQ assumes. */
   readonly setup: Setup;
   readonly score: SweepScore;
   readonly frame: ScoringFrame;
@@ -75,16 +82,9 @@ function readNetwork({ bytes, name }: UploadedFile): TwoPort | { readonly refusa
     return parseTouchstone(bytes, name);
   } catch (error) {
     if (!(error instanceof TouchstoneError)) throw error;
-    return { refusal: `${placeOf(error)}${error.message}` };
+    return { refusal: refusalSentence(error) };
   }
 }
-
-const WHOLE_FILE: readonly TouchstoneError["code"][] = ["empty-file", "too-large", "not-text", "no-data"];
-
-const placeOf = ({ code, line, column }: TouchstoneError): string => {
-  if (WHOLE_FILE.includes(code)) return "";
-  return column === undefined ? `Line ${line}: ` : `Line ${line}, column ${column}: `;
-};
 
 function storeSweep(
   person: Person,
@@ -103,6 +103,9 @@ function storeSweep(
     if (same) return invalid({ file: [`These bytes are in this quote already, as ${same}.`] });
     const measurement = await createRows(locked.quote, sweep, now, transaction);
     await storeSweepScore(measurement, sweep.frame, sweep.setup, sweep.score, now, transaction);
+    // The setup was stated otherwise while the file was read: the worker scores it with what is stated now.
+    const inUse = setupInUse(statedSetup({ ...locked.quote.draft.values }), locked.rfq.assumedSetup);
+    if (setupHash(inUse) !== setupHash(sweep.setup)) await queueDraftScoring(quoteId, now, transaction);
     await locked.quote.update({ savedAt: now }, { transaction });
     const detail = { file: sweep.file.name, sha256: sweep.sha256.toString("hex"), points: measurement.points };
     await recordQuoteEvent(person, now, locked.quote, "file uploaded", detail, transaction);

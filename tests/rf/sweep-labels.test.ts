@@ -1,6 +1,6 @@
 // Unit and temperature read from names and comments, and left open where they can be read two ways.
 import { expect, test } from "vitest";
-import { readSweepLabels } from "~/services/sweep-labels.server";
+import { readSweepLabels } from "~/rf/sweep-labels";
 
 const read = (name: string, ...comments: string[]) => {
   const { serial, temperature } = readSweepLabels(name, comments);
@@ -47,4 +47,45 @@ test("a temperature nothing is measured at is left open, and a serial has no cha
   expect(read("A1_+999C.s2p")).toEqual(["A1", null]);
   expect(read("A1.s2p", "temperature -300 degC")).toEqual(["A1", null]);
   expect(read("wide.s2p", "Serial:\tA\u200b1\u202e7")).toEqual(["A17", null]);
+  expect(read("A\u200b1_\u202e25C.s2p")).toEqual(["A1", 25]); // a file's name before the server takes them out
+});
+
+test("a minus that is written as a letter, a word or a dash apart is never read as plus", () => {
+  for (const name of [
+    "SN12_m40C",
+    "SN12_M40C",
+    "SN12_n40C",
+    "SN12_neg40C",
+    "SN12_minus40C",
+    "SN12_minus_40C",
+    "SN12 - 40C",
+  ])
+    expect(read(`${name}.s2p`), name).toEqual(["SN12", null]);
+  expect(read("SN12_–40C.s2p")).toEqual(["SN12", -40]); // an en dash, as word processors put it
+  expect(read("wide.s2p", "temp - 25 C")[1]).toBeNull();
+  expect(read("wide.s2p", "temperature: - 25 C")[1]).toBe(-25);
+});
+
+test("a letter before a figure makes it part of a name: the temperature is the one that stands by itself, if one does", () => {
+  expect(read("S21_C.s2p")).toEqual([null, null]);
+  expect(read("AB40C_unit7.s2p")[1]).toBeNull();
+  expect(read("X20C-001_70C.s2p")).toEqual(["X20C-001", 70]);
+});
+
+test("of two temperatures in a name or in comments none is taken", () => {
+  expect(read("SN12_25C_70C.s2p")).toEqual(["SN12", null]);
+  expect(read("SN12.s2p", "calibration temp 23.0 C", "DUT temperature -30 C")).toEqual(["SN12", null]);
+});
+
+test("comments about units of measure and ports are no serials", () => {
+  for (const comment of [
+    "Units: MHz",
+    "Units in Hz",
+    "unit under test: filter",
+    "Unit: dB",
+    "Serial port COM3",
+    "Serialized",
+  ])
+    expect(read("wide.s2p", comment), comment).toEqual([null, null]);
+  expect(read("wide.s2p", "Units: MHz", "Unit serial no. 17")[0]).toBe("17");
 });
