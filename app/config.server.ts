@@ -28,6 +28,7 @@ const Environment = z
     HOST: z.string().default("127.0.0.1"),
     BUILD_FOLDER: z.string().min(1).default("build"),
     UPLOAD_FOLDER: z.string().min(1).default(".tenderband/uploads"),
+    SCORING_LEASE_SECONDS: z.coerce.number().int().min(2).max(3_600).default(30),
     LOG_LEVEL: z.enum(["fatal", "error", "warn", "info", "debug", "silent"]).default("info"),
   })
   .transform((environment) => ({
@@ -47,6 +48,8 @@ const Environment = z
     /** Where `react-router build` left the pages. */
     buildFolder: environment.BUILD_FOLDER,
     uploadFolder: environment.UPLOAD_FOLDER,
+    /** Longer than a renewal takes to come round, short enough that a killed worker's job is soon done by another. */
+    scoringLeaseSeconds: environment.SCORING_LEASE_SECONDS,
     logLevel: environment.LOG_LEVEL,
   }));
 

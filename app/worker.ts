@@ -1,9 +1,9 @@
-// The worker process: sends mail, scores submitted quotes, closes RFQs that are due.
+// The worker process: sends mail, scores quotes, scores them again where core or revision changed, closes RFQs that are due.
 import { createSender } from "~/emails/sender";
 import { config } from "./config.server";
 import { runClosingLoop } from "./jobs/closing.server";
 import { runMailLoop } from "./jobs/mail.server";
-import { runScoringLoop } from "./jobs/scoring.server";
+import { runRescoringLoop, runScoringLoop } from "./jobs/scoring.server";
 import { log } from "./services/log.server";
 
 const { smtpUrl, mailFrom } = config();
@@ -20,6 +20,7 @@ log.info("worker started");
 await Promise.all([
   runMailLoop({ send: (mail) => sender.send(mail), signal: stop.signal, report: (message) => log.warn(message) }),
   runScoringLoop({ signal: stop.signal }),
+  runRescoringLoop({ signal: stop.signal }),
   runClosingLoop({ signal: stop.signal }),
 ]);
 process.exit(0);

@@ -14,6 +14,7 @@ import {
 } from "./comparison-words";
 import { Cell, GroupRow, HeadCell, Row, RowHead, Table, TwoLines, type SortDirection } from "./data-table";
 import { formatMoney } from "./format";
+import { rescoringWords } from "./quote-scoring-words";
 import { Verdict, verdictColour } from "./verdict-mark";
 
 export interface ComparisonGroups {
@@ -110,7 +111,7 @@ function QuoteRow({ quote, quantity, currency }: QuoteRowProps) {
         <TwoLines upper={<SupplierLink quote={quote} />} lower={underSupplier(quote)} />
       </RowHead>
       <Cell>
-        {quote.verdict ? <Verdict verdict={quote.verdict} /> : <span className="text-quiet">being scored</span>}
+        <Outcome quote={quote} />
       </Cell>
       <Cell figure>{quote.worst ? <WorstMargin worst={quote.worst} /> : "–"}</Cell>
       <Cell className="pl-6">{quote.verdict ? <Strip quote={quote} /> : null}</Cell>
@@ -121,6 +122,14 @@ function QuoteRow({ quote, quantity, currency }: QuoteRowProps) {
       <Cell figure>{exceptionWords(quote)}</Cell>
     </Row>
   );
+}
+
+/** A verdict that waits to be scored again says so beneath. */
+function Outcome({ quote: { verdict, rescoring, scoring } }: { quote: ComparedQuoteView }) {
+  if (verdict === null)
+    return <span className="text-quiet">{scoring === "failed" ? "could not be scored" : "being scored"}</span>;
+  if (rescoring === null) return <Verdict verdict={verdict} />;
+  return <TwoLines upper={<Verdict verdict={verdict} />} lower={rescoringWords(rescoring)} />;
 }
 
 const exceptionWords = ({ exceptions }: ComparedQuoteView) =>
@@ -222,8 +231,8 @@ function StackedQuote({ quote, quantity, currency }: QuoteRowProps) {
       <div className="min-w-0 font-semibold">
         <TwoLines upper={<SupplierLink quote={quote} />} lower={underSupplier(quote)} />
       </div>
-      <div className="justify-self-end">
-        {quote.verdict ? <Verdict verdict={quote.verdict} /> : <span className="text-quiet">being scored</span>}
+      <div className="justify-self-end text-right">
+        <Outcome quote={quote} />
       </div>
       {quote.worst ? (
         <div>

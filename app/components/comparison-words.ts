@@ -3,6 +3,7 @@ import type { ComparedCost } from "~/commerce/index";
 import type { Requirement } from "~/rf/index";
 import { marginWithInterval } from "./compliance-words";
 import { formatDate, formatFrequency, formatMoney, formatNumber } from "./format";
+import type { RescoringView } from "./quote-scoring-words";
 import { requirementUnit } from "./requirement-words";
 import type { ShownVerdict } from "./verdict-mark";
 
@@ -27,6 +28,9 @@ export interface ComparedQuoteView {
   readonly leadVolumeDays: number;
   readonly exceptions: number;
   readonly validUntil: string;
+  readonly rescoring: RescoringView | null;
+  /** Of the first scoring. */
+  readonly scoring: "done" | "pending" | "failed";
 }
 
 export interface WorstLineView {

@@ -109,7 +109,7 @@ export function DecisionSnapshotTable({ record }: { record: DecisionRecordView }
   return (
     <Section
       title="What was compared"
-      note={`At ${formatNumber(quantity, 0)} pieces, evaluation ${snapshot.coreVersions.join(", ")}. Kept as it stood.`}
+      note={`At ${formatNumber(quantity, 0)} pieces, core ${snapshot.coreVersions.join(", ")}. Kept as it stood.`}
     >
       <Table label="What was compared" rows="comparison">
         <thead>

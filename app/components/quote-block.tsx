@@ -5,6 +5,8 @@ import { LinkButton } from "./button";
 import { Instant } from "./figure";
 import { formatNumber } from "./format";
 import { Notice } from "./notice";
+import { RescoringNotice } from "./quote-scoring-progress";
+import type { RescoringView } from "./quote-scoring-words";
 import { DECISION_RULES } from "./rfq-block";
 import { Sheets } from "./sheets";
 import { TitleBlock } from "./title-block";
@@ -25,6 +27,8 @@ export interface QuoteBlockHead {
   readonly decisionRule: "simple" | "guarded";
   readonly transmission: { readonly uncertainty: number; readonly assumed: boolean } | null;
   readonly verdict: ShownVerdict | null;
+  readonly coreVersion: string | null;
+  readonly rescoring: RescoringView | null;
 }
 
 export const BASES = {
@@ -63,21 +67,27 @@ export function QuoteBlock({ head }: { head: QuoteBlockHead }) {
         ]}
       />
       <StateNotice head={head} />
+      {head.rescoring ? (
+        <RescoringNotice key={head.rescoring.coreVersion} quoteId={quoteId} rescoring={head.rescoring} />
+      ) : null}
     </>
   );
 }
 
 function facts(head: QuoteBlockHead): { label: string; value: ReactNode }[] {
-  const { specification, rfq, transmission } = head;
+  const { specification, rfq, transmission, coreVersion } = head;
   const revision = { specificationId: specification.publicId, letter: specification.letter };
   return [
     { label: "RFQ", value: <Link to={href("/rfqs/:rfqId", { rfqId: rfq.publicId })}>{rfq.number}</Link> },
     {
-      label: "Specification",
+      label: coreVersion === null ? "Specification" : "Scored against",
       value: (
-        <Link to={href("/specifications/:specificationId/revisions/:letter", revision)}>
-          {specification.number} {specification.letter}
-        </Link>
+        <>
+          <Link to={href("/specifications/:specificationId/revisions/:letter", revision)}>
+            {specification.number} {specification.letter}
+          </Link>
+          {coreVersion === null ? null : `, core ${coreVersion}`}
+        </>
       ),
     },
     { label: "Submitted", value: <Instant at={head.submittedAt} zone={head.dueZone} /> },

@@ -1,50 +1,70 @@
-// How far the scoring of a submitted quote is: asked of the server until it is done, then the page is read anew.
-import { useEffect } from "react";
-import { href, useFetcher, useRevalidator } from "react-router";
+// How far scoring is, live: of a version scored for the first time, and of one whose older figures stand until it is scored again.
+import { useLocation } from "react-router";
 import { Notice } from "./notice";
+import { rescoringWords, scoredByWords, type RescoringView } from "./quote-scoring-words";
+import { useScoringProgress } from "./use-scoring-progress";
 
-/** What the progress address answers. */
-export interface ScoringProgressAnswer {
-  readonly state: "none" | "pending" | "done" | "failed";
-  readonly done: number;
-  readonly total: number;
+/** Files done, of all. */
+export function ScoringBar({ done, total, className = "" }: { done: number; total: number; className?: string }) {
+  return (
+    <progress
+      value={done}
+      max={total > 0 ? total : 1}
+      aria-label="Files scored"
+      className={`block w-full appearance-none border-0 bg-rule [&::-moz-progress-bar]:bg-signal [&::-webkit-progress-bar]:bg-rule [&::-webkit-progress-value]:bg-signal ${className}`}
+    />
+  );
 }
 
-const POLL_MILLISECONDS = 600;
+/** Without script the page is read anew by hand. */
+function LoadAgain() {
+  const { pathname, search } = useLocation();
+  return (
+    <noscript>
+      <a href={`${pathname}${search}`}>Load this page again</a>
+    </noscript>
+  );
+}
 
+/** Where there are no results yet, for the supplier. */
 export function ScoringProgress({ quoteId }: { quoteId: string }) {
-  const { load, data } = useFetcher<ScoringProgressAnswer>();
-  const { revalidate } = useRevalidator();
-  const address = href("/api/v1/quotes/:quoteId/progress", { quoteId });
-  const state = data?.state ?? "pending";
-  useEffect(() => {
-    if (state !== "pending") return;
-    void load(address);
-    const timer = setInterval(() => void load(address), POLL_MILLISECONDS);
-    return () => clearInterval(timer);
-  }, [state, load, address]);
-  useEffect(() => {
-    if (state === "done") void revalidate();
-  }, [state, revalidate]);
+  const { state = "pending", done = 0, total = 0 } = useScoringProgress(quoteId) ?? {};
   if (state === "failed")
     return (
       <Notice tone="fail" role="status" className="mt-6">
         Scoring did not succeed. Your quote is submitted and safe; the fault has been recorded.
       </Notice>
     );
-  const { done = 0, total = 0 } = data ?? {};
   return (
     <Notice tone="signal" role="status" className="mt-6">
-      <p>{total === 0 ? "Scoring begins." : `Scoring: ${done} of ${total} files read.`}</p>
-      <progress
-        value={total === 0 ? 0 : done / total}
-        max={1}
-        aria-label="Files read"
-        className="mt-1.5 block h-1.5 w-60 appearance-none bg-rule [&::-moz-progress-bar]:bg-signal [&::-webkit-progress-bar]:bg-rule [&::-webkit-progress-value]:bg-signal"
-      />
-      <noscript>
-        <a href={href("/supplier/quotes/:quoteId/results", { quoteId })}>Load this page again</a>
-      </noscript>
+      <p>{total === 0 ? "Waiting to be scored." : `Scoring: ${done} of ${total} files.`}</p>
+      <ScoringBar done={done} total={total} className="mt-1.5 h-1.5 max-w-60" />
+      <LoadAgain />
+    </Notice>
+  );
+}
+
+interface RescoringNoticeProps {
+  quoteId: string;
+  rescoring: RescoringView;
+}
+
+/** Beside results that stand until the version is scored again. */
+export function RescoringNotice({ quoteId, rescoring }: RescoringNoticeProps) {
+  const answer = useScoringProgress(quoteId);
+  const { done, total } = answer ?? rescoring;
+  const state = answer === undefined ? rescoring.state : answer.state === "failed" ? "failed" : "pending";
+  return (
+    <Notice tone={state === "failed" ? "fail" : "signal"} role="status" className="mt-6">
+      <p className="tabular-nums">
+        Figures of {scoredByWords(rescoring)}; {rescoringWords({ state, done, total })}.
+      </p>
+      {state === "failed" ? null : (
+        <>
+          <ScoringBar done={done} total={total} className="mt-1.5 h-1.5 max-w-60" />
+          <LoadAgain />
+        </>
+      )}
     </Notice>
   );
 }

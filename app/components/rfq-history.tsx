@@ -74,6 +74,7 @@ const SENTENCES: Readonly<Record<string, (detail: HistoryEventView["detail"], zo
   "invitation declined": (detail) => `declined: ${text(detail, "reason")}`,
   "quote submitted": (detail) => `submitted a quote${versionOf(detail)}`,
   "quote withdrawn": () => "withdrew the quote",
+  "quote rescored": (detail) => `scored the quote${versionOf(detail)} again`,
   "quote scored": (detail) => `scored the quote${versionOf(detail)}`,
   "decision recommended": () => "recommended an award",
   "decision approved": () => "approved the award",

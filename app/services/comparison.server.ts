@@ -19,6 +19,7 @@ import type { Requirement, SpecificationLine, Verdict } from "~/rf/index";
 import type { Person } from "./person.server";
 import { lineVerdict, readScores, worstCell, type QuoteScore } from "./quote-scores.server";
 import { findRfq } from "./rfq-head.server";
+import { readFirstScoring, readRescoring, type Rescoring } from "./scoring-progress.server";
 import { readLines } from "./specification-lines.server";
 
 /** The line that decides a quote's rank, with the reported point. */
@@ -45,6 +46,8 @@ export interface ComparedQuote {
   readonly outcome: "awarded" | "regretted" | null;
   /** Null until the version is scored. */
   readonly verdict: LineVerdict | null;
+  /** Of the first scoring; "failed": the worker gave it up, and no figures come of waiting. */
+  readonly scoring: "done" | "pending" | "failed";
   readonly conforming: boolean;
   readonly units: number;
   readonly unitsOverRange: number;
@@ -62,6 +65,8 @@ export interface ComparedQuote {
   readonly exceptions: number;
   /** ISO 8601 date. */
   readonly validUntil: string;
+  /** While its figures wait for those of the RFQ's revision and the core that runs; else null. */
+  readonly rescoring: Rescoring | null;
 }
 
 /** A supplier that was asked and whose quote is not among those compared. */
@@ -131,12 +136,17 @@ export async function readComparedQuotes(
   const versionIds = quotes.flatMap(({ currentVersionId }) => currentVersionId ?? []);
   const where = { versionId: { [Op.in]: versionIds } };
   const versions = await QuoteVersion.findAll({ where: { id: { [Op.in]: versionIds } }, ...scope });
-  const [prices, exceptions, names, scores, lines] = await Promise.all([
+  const [prices, exceptions, names, scores] = await Promise.all([
     QuotePrice.findAll({ where, order: [["quantity", "ASC"]], ...scope }),
     QuoteDeclaration.findAll({ where: { ...where, answer: "exception" }, ...scope }),
     readInvitedNames(person, rfq, transaction),
     readScores(person, versions, transaction),
-    readLines(person, rfq.revisionId, transaction),
+  ]);
+  const unscored = versionIds.filter((id) => !scores.has(id));
+  const [lines, rescoring, firstScoring] = await Promise.all([
+    readScoredLines(person, scores.values(), transaction),
+    readRescoring(scores.values(), transaction),
+    readFirstScoring(unscored, rfq.revisionId, transaction),
   ]);
   const compared = quotes.flatMap((quote): ComparedQuote[] => {
     const version = versions.find(({ id }) => id === quote.currentVersionId);
@@ -151,7 +161,8 @@ export async function readComparedQuotes(
         version: version.number,
         submittedAt: version.submittedAt.toISOString(),
         outcome: quote.outcome,
-        ...scoreFigures(score, lines),
+        scoring: score ? "done" : firstScoring(version.id).state,
+        ...scoreFigures(score, lines.get(score?.summary.revisionId ?? 0) ?? []),
         currency: version.currency,
         cost: compareCost({ prices: breaks, asked: quantity, minimum, multiple, nre }),
         nre,
@@ -159,11 +170,23 @@ export async function readComparedQuotes(
         leadVolumeDays: version.leadVolumeDays,
         exceptions: exceptions.filter(({ versionId }) => versionId === version.id).length,
         validUntil: version.validUntil,
+        rescoring: rescoring.get(version.id) ?? null,
       },
     ];
   });
   const coreVersions = [...new Set([...scores.values()].map(({ summary }) => summary.coreVersion))];
   return { quotes: sortQuotes(compared, "supplier", "ascending"), coreVersions };
+}
+
+/** The lines of each revision there are scores of, by its id: two of them while quotes are scored again for another one. */
+async function readScoredLines(
+  person: Person,
+  scores: Iterable<QuoteScore>,
+  transaction?: Transaction,
+): Promise<Map<number, SpecificationLine[]>> {
+  const revisionIds = [...new Set([...scores].map(({ summary }) => summary.revisionId))];
+  const lines = await Promise.all(revisionIds.map((id) => readLines(person, id, transaction)));
+  return new Map(revisionIds.map((id, k) => [id, lines[k] ?? []]));
 }
 
 function scoreFigures(score: QuoteScore | undefined, lines: readonly SpecificationLine[]) {

@@ -128,8 +128,8 @@ export async function mailSuppliers(
 }
 
 async function ownResults(person: Person, version: QuoteVersion, transaction: Transaction): Promise<ResultLine[]> {
-  const lines = await readLines(person, version.revisionId, transaction);
   const score = (await readScores(person, [version], transaction)).get(version.id);
+  const lines = await readLines(person, score?.summary.revisionId ?? version.revisionId, transaction);
   return resultLines(lines, [...(score?.lines.values() ?? [])]);
 }
 

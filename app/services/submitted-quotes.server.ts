@@ -7,6 +7,7 @@ import type { QuoteState } from "~/workflow/quote";
 import { rfqState, type RfqState } from "~/workflow/rfq";
 import type { Person } from "./person.server";
 import { lineVerdict, readScores, type QuoteScore } from "./quote-scores.server";
+import { readRescoring, type Rescoring } from "./scoring-progress.server";
 
 export interface SubmittedQuote {
   readonly quote: Quote;
@@ -37,6 +38,7 @@ export interface SubmittedQuoteHead {
     readonly title: string;
     readonly state: RfqState;
   };
+  /** The revision the figures are scored against; until there are any, the one the version was submitted to. */
   readonly specification: { readonly publicId: string; readonly number: string; readonly letter: string };
   readonly version: number;
   readonly submitterName: string;
@@ -52,6 +54,8 @@ export interface SubmittedQuoteHead {
   readonly conforming: boolean | null;
   /** Of the evaluation; null until the version is scored. */
   readonly coreVersion: string | null;
+  /** While the figures shown wait for those of the RFQ's revision and the core that runs; else null. */
+  readonly rescoring: Rescoring | null;
 }
 
 /** The head of a quote's sheets, or null where the person does not see it. */
@@ -66,10 +70,14 @@ export async function headOf(
   { quote, version, rfq }: SubmittedQuote,
   score: QuoteScore | undefined,
 ): Promise<SubmittedQuoteHead> {
-  const [invitation, specification, revision, now] = await Promise.all([
+  const [invitation, specification, revision, rescoring, now] = await Promise.all([
     Invitation.findByPk(quote.invitationId, { actor: person, rejectOnEmpty: true }),
     Specification.findByPk(rfq.specificationId, { actor: person, rejectOnEmpty: true }),
-    SpecificationRevision.findByPk(version.revisionId, { actor: person, rejectOnEmpty: true }),
+    SpecificationRevision.findByPk(score?.summary.revisionId ?? version.revisionId, {
+      actor: person,
+      rejectOnEmpty: true,
+    }),
+    readRescoring(score ? [score] : []),
     databaseNow(),
   ]);
   const supplier = await Supplier.findByPk(invitation.supplierId, { actor: person, rejectOnEmpty: true });
@@ -99,6 +107,7 @@ export async function headOf(
     verdict: score ? lineVerdict(score.summary.verdict) : null,
     conforming: score ? score.summary.conforming : null,
     coreVersion: score?.summary.coreVersion ?? null,
+    rescoring: rescoring.get(version.id) ?? null,
   };
 }
 

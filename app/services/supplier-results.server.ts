@@ -1,10 +1,13 @@
 // The results of a supplier's own submitted quote, line by line.
-import { QuoteLineResult, QuoteSummary, QuoteVersion } from "~/db/models";
+import { QuoteVersion, type QuoteLineResult } from "~/db/models";
+import { SYSTEM } from "~/db/scoping";
 import { readNumber, type SpecificationLine, type StoredNumber } from "~/rf/index";
 import type { Person } from "./person.server";
+import { readScores, type QuoteScore } from "./quote-scores.server";
 import { receiptOf } from "./quote-submission.server";
 import { findQuote } from "./quotes.server";
 import { worstResult } from "./result-lines.server";
+import { readRescoring, type Rescoring } from "./scoring-progress.server";
 import { readLines } from "./specification-lines.server";
 
 export interface SupplierResultLine {
@@ -41,6 +44,8 @@ export interface SupplierResults {
     readonly temperatures: number;
     readonly coreVersion: string;
   } | null;
+  /** While these results wait for those of the RFQ's revision and the core that runs; else null. */
+  readonly rescoring: Rescoring | null;
   readonly lines: readonly SupplierResultLine[];
 }
 
@@ -54,8 +59,10 @@ export async function readSupplierResults(
   const versionId = found.quote.currentVersionId;
   if (versionId === null) return "none";
   const version = await QuoteVersion.findByPk(versionId, { actor: person, rejectOnEmpty: true });
-  const summary = await QuoteSummary.findOne({ where: { versionId }, order: [["createdAt", "DESC"]], actor: person });
-  const lines = summary ? await readScoredLines(person, summary) : [];
+  const score = (await readScores(person, [version])).get(versionId);
+  const summary = score?.summary ?? null;
+  const rescoring = score ? (await readRescoring([score])).get(versionId) : undefined;
+  const lines = score ? await readScoredLines(score) : [];
   return {
     version: version.number,
     submittedAt: version.submittedAt.toISOString(),
@@ -71,19 +78,16 @@ export async function readSupplierResults(
       temperatures: summary.temperatures,
       coreVersion: summary.coreVersion,
     },
+    rescoring: rescoring ?? null,
     lines,
   };
 }
 
-async function readScoredLines(person: Person, summary: QuoteSummary): Promise<SupplierResultLine[]> {
-  const { versionId, revisionId, coreVersion } = summary;
-  const [lines, rows] = await Promise.all([
-    readLines(person, revisionId),
-    QuoteLineResult.findAll({ where: { versionId, revisionId, coreVersion }, actor: person }),
-  ]);
-  const byKey = new Map(rows.map((row) => [row.lineKey, row]));
+/** The lines of the revision its own results are of, which need not be the RFQ's any more: the one a supplier sees by itself. */
+async function readScoredLines({ summary, lines: rows }: QuoteScore): Promise<SupplierResultLine[]> {
+  const lines = await readLines(SYSTEM, summary.revisionId);
   return lines.flatMap((line) => {
-    const row = byKey.get(line.lineKey);
+    const row = rows.get(line.lineKey);
     return row ? [resultOf(line, row)] : [];
   });
 }

@@ -1,13 +1,28 @@
 // Decisions: who may recommend and approve what and when, that one approval wins, and that each supplier hears its own outcome alone.
 import { expect, test } from "vitest";
-import { AuditEvent, Award, Decision, OutboxEmail, Quote, Rfq } from "~/db/models";
+import {
+  AuditEvent,
+  Award,
+  Decision,
+  Job,
+  OutboxEmail,
+  Quote,
+  QuoteLineResult,
+  QuoteSummary,
+  Rfq,
+  type QuoteVersion,
+} from "~/db/models";
 import { SYSTEM } from "~/db/scoping";
+import { CORE_VERSION } from "~/rf/index";
 import { snapshotHash, type DecisionSnapshot } from "~/services/decision-snapshot.server";
 import { readDecisionView } from "~/services/decision-view.server";
 import { approveAward, recommendAward, returnRecommendation } from "~/services/decisions.server";
 import { newIdempotencyKey } from "~/services/identifiers.server";
+import { rescoreKey } from "~/services/jobs.server";
 import type { Person } from "~/services/person.server";
+import { queueStaleScoring } from "~/services/rescoring.server";
 import { buildOrganisation, buildPerson, buildRfq, SHORT_LINES } from "../support/factories";
+import { moveToRevision, OLD_CORE } from "../support/rescoring";
 import { buildSubmittedQuote, storeScore } from "../support/scored-quote";
 import { useDatabase } from "../support/database";
 
@@ -130,6 +145,53 @@ test("a nonconforming, an unscored, an unpriced, an expired, a withdrawn and a f
   expect(await refusal(winner.quote)).toMatch(/Choose one of the quotes/);
   expect(await Decision.count({ actor: SYSTEM })).toBe(0);
   expect(await OutboxEmail.count()).toBe(0);
+});
+
+test("figures of another revision than the RFQ asks recommend no quote, even where it could not be scored again; those of an older core do", async () => {
+  const { engineer, rfq, winner } = await closedRfq();
+  const { version } = winner;
+  const refusal = async () => sentences(await recommend(engineer, rfq, winner.quote));
+  const asked = await moveToRevision(rfq, "B", SHORT_LINES);
+  await queueStaleScoring();
+  expect(await refusal()).toMatch(/being scored again/);
+  await Job.update({ state: "failed" }, { where: { key: rescoreKey({ ...againOf(version), revisionId: asked }) } });
+  expect(await refusal()).toMatch(/figures are of revision A/);
+  await rfq.update({ revisionId: version.revisionId });
+  const old = { where: { versionId: version.id }, actor: SYSTEM } as const;
+  await QuoteLineResult.update({ coreVersion: OLD_CORE }, old);
+  await QuoteSummary.update({ coreVersion: OLD_CORE }, old);
+  await queueStaleScoring();
+  await Job.update({ state: "failed" }, { where: { key: rescoreKey(againOf(version)) } });
+  expect(await recommend(engineer, rfq, winner.quote)).toMatchObject({ ok: true });
+});
+
+test("after an amendment the award mail tells the limits of the revision that was scored", async () => {
+  const { engineer, purchasing, rfq, winner } = await closedRfq();
+  const lines = SHORT_LINES.map((line) =>
+    line.definition.kind === "insertion-loss" ? { ...line, definition: { ...line.definition, max: 7.77 } } : line,
+  );
+  const revisionId = await moveToRevision(rfq, "B", lines);
+  const stored = { where: { versionId: winner.version.id }, actor: SYSTEM } as const;
+  await QuoteLineResult.update({ revisionId }, stored);
+  await QuoteSummary.update({ revisionId }, stored);
+  await approve(purchasing, rfq, await recommended(engineer, rfq, winner.quote));
+  const [award] = await mails("award");
+  expect(JSON.stringify(award?.props)).toContain("max 7.77 dB");
+});
+
+const againOf = ({ id: versionId, revisionId }: QuoteVersion) => ({
+  versionId,
+  revisionId,
+  coreVersion: CORE_VERSION,
+});
+
+test("a quote whose scoring was given up is refused for that, not told to wait", async () => {
+  const { engineer, rfq } = await closedRfq();
+  const { version, quote } = await buildSubmittedQuote(rfq, SHORT_LINES, { name: "Given up" });
+  const at = new Date();
+  const job = { kind: "score", key: String(version.id), payload: { versionId: version.id }, runAt: at, createdAt: at };
+  await Job.create({ ...job, state: "failed" });
+  expect(sentences(await recommend(engineer, rfq, quote))).toMatch(/did not succeed/);
 });
 
 test("approval decides the RFQ and mails the award to the winner's submitter and a regret to each other one that quoted", async () => {

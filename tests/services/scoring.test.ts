@@ -14,8 +14,10 @@ import { leaseJob, lockDueJob } from "~/db/queries/jobs";
 import { SYSTEM } from "~/db/scoping";
 import { renderMail, type MailEvent } from "~/emails/index";
 import { newIdempotencyKey } from "~/services/identifiers.server";
-import { readScoringProgress, runNextScoring } from "~/services/jobs.server";
+import { runNextScoring } from "~/services/jobs.server";
 import { submitQuote } from "~/services/quote-submission.server";
+import { parseTouchstone, readCell, type TwoPort } from "~/rf/index";
+import { readScoringProgress } from "~/services/scoring-progress.server";
 import { scoreVersion } from "~/services/scoring.server";
 import { inTransaction } from "~/services/transaction.server";
 import { buildOrganisation, buildPerson } from "../support/factories";
@@ -168,6 +170,9 @@ test("data of a similar part never passes, and does not count over temperature",
 });
 
 test("progress is nobody's but the supplier's and, once submitted, the buyer's", async () => {
+  const unsent = await buildJourneyQuote("Kestrel Cavity Filters");
+  expect(await readScoringProgress(unsent.person, unsent.quote.publicId)).toMatchObject({ state: "none" });
+  expect(await readScoringProgress(unsent.engineer, unsent.quote.publicId)).toBeNull();
   const { engineer, quote } = await submitted("Orme Microwave", "orme-microwave");
   expect(await readScoringProgress(engineer, quote.publicId)).toMatchObject({ state: "pending" });
   for (const kind of ["buyer", "supplier"] as const) {
@@ -208,5 +213,63 @@ test("the same data under two serials counts as one unit, whatever the comments"
     await row.update({ serial: `A-${row.id}`, temperature: "25.0" });
   await submitQuote(found.person, found.quote.publicId, newIdempotencyKey());
   await runNextScoring(scoreVersion);
-  expect(await QuoteSummary.findOne({ actor: found.person })).toMatchObject({ units: 1 });
+  const summary = await QuoteSummary.findOne({ actor: found.person });
+  expect(summary).toMatchObject({ units: 1 });
+  expect(summary?.notes.map(({ code }) => code)).toContain("identical-data");
 });
+
+test("with a stated drift each range line has a predicted cell at an end that was not measured, either sign counting", async () => {
+  const found = await buildJourneyQuote("Halden Resonator Works");
+  const files = journeyFiles("halden-resonator-works").filter(({ name }) => name.includes("25C"));
+  await uploadFiles(found.person, found.quote, files);
+  await submitQuote(found.person, found.quote.publicId, newIdempotencyKey());
+  const version = await QuoteVersion.findOne({ actor: SYSTEM, rejectOnEmpty: true });
+  const drift = { ppmPerKelvin: 40, either: true, lossPerKelvin: 0.0039 };
+  await QuoteVersion.update({ drift }, { where: { id: version.id }, actor: SYSTEM });
+  await runNextScoring(scoreVersion);
+  const row = await QuoteLineResult.findOne({ where: { lineKey: journeyKey("2.1") }, actor: found.person });
+  const cells = (row?.cells ?? []).map(readCell);
+  const places = cells.map(
+    ({ unit, temperature, predicted }) => `${unit} ${temperature} ${predicted ? "predicted" : "measured"}`,
+  );
+  expect(places).toEqual([
+    ...["HR2-0411", "HR2-0412", "HR2-0415"].map((unit) => `${unit} 25 measured`),
+    ...["HR2-0411", "HR2-0412", "HR2-0415"].flatMap((unit) => [`${unit} -30 predicted`, `${unit} 70 predicted`]),
+  ]);
+  // The trace moved by 1 ± 40e-6 · 45 K, its loss times √(1 + 0.0039 · 45 K): the formulas of the temperature outlook by hand.
+  const hot = cells.find(({ unit, temperature }) => unit === "HR2-0411" && temperature === 70)?.result.value ?? NaN;
+  const network = parseTouchstone(files[0]?.bytes ?? "");
+  const losses = [1, -1].flatMap((sign) => {
+    const loss = (hz: number) => lossAt(network, hz / (1 + sign * 40e-6 * 45));
+    return [1.92e9, 1.98e9].map(loss);
+  });
+  const worst = Math.max(...losses) * Math.sqrt(1 + 0.0039 * 45);
+  expect(Math.abs(hot - worst)).toBeLessThan(1e-9);
+  expect(row?.verdict).toBe("not-covered");
+});
+
+test("an older version that is scored late keeps its notes to itself: those of the current one stand", async () => {
+  const found = await buildJourneyQuote("Orme Microwave");
+  await uploadFiles(found.person, found.quote, journeyFiles("orme-microwave"));
+  const submitWith = async (noiseFloor: string) => {
+    await found.quote.reload({ actor: SYSTEM });
+    await found.quote.update({ draft: { values: { ...found.quote.draft.values, "setup.noiseFloor": noiseFloor } } });
+    expect(await submitQuote(found.person, found.quote.publicId, newIdempotencyKey())).toMatchObject({ ok: true });
+  };
+  await submitWith("20 dB");
+  await submitWith("60 dB");
+  const [older, current] = await QuoteVersion.findAll({ order: [["number", "ASC"]], actor: SYSTEM });
+  await scoreVersion(current?.id ?? 0);
+  await scoreVersion(older?.id ?? 0);
+  const words = JSON.stringify((await MeasurementRow.findAll({ actor: SYSTEM })).map(({ notes }) => notes));
+  expect(words).toContain("60.00 dB");
+  expect(words).not.toContain("20.00 dB");
+});
+
+/** dB, linear between samples. */
+function lossAt({ frequency, s21 }: TwoPort, hz: number): number {
+  const next = frequency.findIndex((sample) => sample >= hz);
+  const loss = (k: number) => -20 * Math.log10(Math.hypot(s21.re[k] ?? NaN, s21.im[k] ?? NaN));
+  const [from = NaN, to = NaN] = [frequency[next - 1], frequency[next]];
+  return loss(next - 1) + ((hz - from) / (to - from)) * (loss(next) - loss(next - 1));
+}

@@ -1,6 +1,6 @@
 // How far the scoring of a quote is, for its supplier and, once submitted, its buyer.
-import { readScoringProgress } from "~/services/jobs.server";
 import { orNotFound, requirePerson } from "~/services/request.server";
+import { readScoringProgress } from "~/services/scoring-progress.server";
 import type { Route } from "./+types/quote-progress";
 
 export async function loader({ context, request, params }: Route.LoaderArgs) {

@@ -7,7 +7,9 @@ import { formatMoney, formatNumber } from "~/components/format";
 import { Instant } from "~/components/figure";
 import { Notice } from "~/components/notice";
 import { Page, Section } from "~/components/page";
+import { allScoredByWords } from "~/components/quote-scoring-words";
 import { RfqBlock } from "~/components/rfq-block";
+import { useReloadWhile } from "~/components/use-scoring-progress";
 import { comparisonSearch, readComparisonQuery, type ComparisonSort } from "~/forms/comparison";
 import { readComparison } from "~/services/comparison.server";
 import { orNotFound, requireRight } from "~/services/request.server";
@@ -33,6 +35,7 @@ export default function RfqComparison({ loaderData }: Route.ComponentProps) {
   const { head, comparison, query } = loaderData;
   const { quantity, conforming, nonconforming, unscored, silent } = comparison;
   const quoted = [...conforming, ...nonconforming, ...unscored];
+  useReloadWhile(quoted.some(({ scoring, rescoring }) => scoring === "pending" || rescoring?.state === "pending"));
   const address = (next: typeof query) =>
     href("/rfqs/:rfqId/comparison", { rfqId: head.publicId }) + comparisonSearch(next);
   const sortBy = (sort: ComparisonSort) => {
@@ -65,6 +68,7 @@ export default function RfqComparison({ loaderData }: Route.ComponentProps) {
           </>
         ) : (
           <>
+            <StaleFigures loaded={loaderData} />
             <ComparisonTable groups={comparison} quantity={quantity} currency={head.currency} sortBy={sortBy} />
             <ComparisonStack groups={comparison} quantity={quantity} currency={head.currency} />
           </>
@@ -88,7 +92,7 @@ function decisionLink({ head, mayRecommend, comparison }: Loaded) {
 }
 
 function Standing({ loaded: { head, comparison } }: { loaded: Loaded }) {
-  const core = comparison.coreVersions.length === 0 ? "" : `, evaluation ${comparison.coreVersions.join(", ")}`;
+  const core = comparison.coreVersions.length === 0 ? "" : `, core ${comparison.coreVersions.join(" and ")}`;
   return (
     <>
       {head.state === "open" ? (
@@ -99,6 +103,19 @@ function Standing({ loaded: { head, comparison } }: { loaded: Loaded }) {
       Scored against {head.specification.number} {head.specification.letter}
       {core}. Full credit is a loss margin of 0.2 dB, ripple 0.1 dB, rejection 3 dB, return loss 2 dB.
     </>
+  );
+}
+
+/** Figures of another core or another revision stand beside the others until they are scored again: that is said. */
+function StaleFigures({ loaded: { comparison } }: { loaded: Loaded }) {
+  const scored = [...comparison.conforming, ...comparison.nonconforming];
+  const stale = scored.flatMap(({ rescoring }) => rescoring ?? []);
+  if (stale.length === 0) return null;
+  return (
+    <Notice tone="near" role="status" className="mb-4">
+      {stale.length === 1 ? "One quote is" : `${stale.length} quotes are`} to be scored again. Until then{" "}
+      {stale.length === 1 ? "its" : "their"} figures are of {allScoredByWords(stale)}.
+    </Notice>
   );
 }
 

@@ -6,7 +6,7 @@ import { Notice } from "~/components/notice";
 import { Page, Section } from "~/components/page";
 import { QuoteFacts, type QuoteFact } from "~/components/quote-facts";
 import { allAssumed, QuoteResultTable } from "~/components/quote-result-table";
-import { ScoringProgress } from "~/components/quote-scoring-progress";
+import { RescoringNotice, ScoringProgress } from "~/components/quote-scoring-progress";
 import { BASIS_WORDS } from "~/components/quote-terms-view";
 import { DECISION_RULES } from "~/components/rfq-block";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
@@ -44,6 +44,9 @@ export default function QuoteResults({ loaderData }: Route.ComponentProps) {
       />
       <Outcome outcome={head.outcome} buyerName={head.buyerName} />
       {results.summary === null ? <ScoringProgress key={results.version} quoteId={head.publicId} /> : null}
+      {results.rescoring ? (
+        <RescoringNotice key={results.version} quoteId={head.publicId} rescoring={results.rescoring} />
+      ) : null}
       {results.summary === null ? null : (
         <Section title="Results by line" note={resultsNote(results)}>
           <QuoteResultTable lines={results.lines} decisionRule={head.decisionRule} />
