@@ -20,13 +20,15 @@ interface QuoteDraftFormProps {
   answer: DraftAnswer | undefined;
   wasSaved: boolean;
   canEdit: boolean;
+  /** @default "mt-6" */
+  className?: string;
   children: ReactNode;
 }
 
 export function QuoteDraftForm(props: QuoteDraftFormProps) {
-  const { answer, canEdit, values, errors } = props;
+  const { answer, canEdit, values, errors, className = "mt-6" } = props;
   return (
-    <PostForm state={answer ?? { values, errors }} guardsUnsaved className="mt-6">
+    <PostForm state={answer ?? { values, errors }} guardsUnsaved className={className}>
       <DraftNotice {...props} />
       <input type="hidden" name="lockVersion" value={answer?.lockVersion ?? props.lockVersion} />
       <fieldset disabled={!canEdit} className="min-w-0 [&>section:first-child]:mt-0">

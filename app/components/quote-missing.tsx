@@ -1,6 +1,7 @@
 // What keeps a quote from being submitted, each with the sheet it is put right on.
 import { Link } from "react-router";
 import type { FieldErrors } from "~/forms/form";
+import { isDataField, SETUP_FIELDS } from "~/forms/setup";
 import { Notice } from "./notice";
 import type { DeclaredLineFacts } from "./quote-declaration-fields";
 import { quoteSheetAddress, type SupplierQuoteSheet } from "./supplier-quote-block";
@@ -25,7 +26,7 @@ export function QuoteMissing({ quoteId, errors, declared }: QuoteMissingProps) {
       <p className="font-semibold">Before you can submit</p>
       {groups.map(({ sheet, sentences }) => (
         <div key={sheet} className="mt-1">
-          <Link to={`${quoteSheetAddress(sheet, quoteId)}${sheet === "Data" ? "" : "?check=1"}`}>{sheet}</Link>
+          <Link to={`${quoteSheetAddress(sheet, quoteId)}?check=1`}>{sheet}</Link>
           <ul>
             {sentences.map((sentence) => (
               <li key={sentence}>{sentence}</li>
@@ -46,6 +47,7 @@ function missingGroups(errors: FieldErrors, declared: readonly DeclaredLineFacts
     const text = sentences.join(" ");
     if (lineKey !== undefined) groups.Declarations.push(`${numbers.get(lineKey) ?? lineKey}: ${text}`);
     else if (name === "data") groups.Data.push(...sentences);
+    else if (isDataField(name)) groups.Data.push(`${fieldWords(name)}${text}`);
     else groups.Terms.push(`${fieldWords(name)}${text}`);
   }
   return (["Data", "Terms", "Declarations"] as const).flatMap((sheet) =>
@@ -65,11 +67,19 @@ const FIELDS: Readonly<Record<string, string>> = {
   paymentTerms: "Payment terms",
   remarks: "Remarks",
   basis: "Basis of the data",
+  "instrument.analyser": "Analyser",
+  "instrument.calibration": "Calibration method",
+  "instrument.calibratedOn": "Calibrated on",
+  "drift.ppmPerKelvin": "Temperature drift",
+  "drift.lossPerKelvin": "Rise of the resistance",
 };
+
+const setupLabel = (name: string): string =>
+  SETUP_FIELDS.find(({ field }) => name === `setup.${field}`)?.label ?? "Setup";
 
 function fieldWords(name: string): string {
   const price = /^prices\.(\d+)$/.exec(name)?.[1];
   if (price !== undefined) return `Unit price at ${price}: `;
-  const words = FIELDS[name] ?? (name.startsWith("setup.") ? "Setup" : undefined);
+  const words = FIELDS[name] ?? (name.startsWith("setup.") ? setupLabel(name) : undefined);
   return words === undefined ? "" : `${words}: `;
 }

@@ -1,9 +1,6 @@
-// Fields of a quote's terms: prices at the asked quantities, delivery, validity, conditions, and the setup of the data.
+// Fields of a quote's terms: prices at the asked quantities, delivery, validity and conditions.
 import { INCOTERMS } from "~/commerce/incoterms";
-import { SETUP_FIELDS } from "~/forms/setup";
-import type { Setup } from "~/rf/index";
-import { formatQuantity } from "~/rf/quantity";
-import { Field, SelectField, TextAreaField, useField } from "./form";
+import { Field, SelectField, TextAreaField } from "./form";
 import { formatNumber } from "./format";
 import { Section } from "./page";
 
@@ -76,49 +73,4 @@ export function ConditionFields() {
       </div>
     </Section>
   );
-}
-
-const BASES = [
-  { value: "measured", label: "measured on the quoted part" },
-  { value: "similar", label: "measured on a similar part" },
-  { value: "simulated", label: "simulated" },
-];
-
-export function BasisFields({ assumedSetup }: { assumedSetup: Setup }) {
-  const { value: basis = "" } = useField("basis");
-  const bases = basis === "" ? [{ value: "", label: "" }, ...BASES] : BASES;
-  return (
-    <Section
-      title="Measured data and setup"
-      note="A field left blank takes what the RFQ assumes, and results that rest on it are marked."
-    >
-      <div className="grid grid-cols-1 gap-4 tablet:grid-cols-2 desktop:grid-cols-4">
-        <SelectField name="basis" label="Basis of the data" options={bases} />
-        {SETUP_FIELDS.map(({ field, label, unit, kind }) => (
-          <Field
-            key={field}
-            name={`setup.${field}`}
-            label={label}
-            unit={unit}
-            inputMode="decimal"
-            autoComplete="off"
-            hint={assumedWords(assumedSetup[field], kind, unit)}
-          />
-        ))}
-        <SelectField
-          name="setup.noiseFloorKind"
-          label="Noise floor figure is"
-          options={[
-            { value: "peak", label: "highest indication (peak)" },
-            { value: "rms", label: "rms" },
-          ]}
-        />
-      </div>
-    </Section>
-  );
-}
-
-function assumedWords(assumed: number | undefined, kind: (typeof SETUP_FIELDS)[number]["kind"], unit: string): string {
-  if (assumed === undefined) return "Nothing is assumed";
-  return `Assumed: ${formatQuantity(assumed, kind, kind === "plain" ? { unit } : {})}`;
 }

@@ -1,11 +1,11 @@
 // A quote's terms, setup and declarations as they would be submitted.
 import type { ReactNode } from "react";
-import { SETUP_FIELDS } from "~/forms/setup";
 import type { QuoteTerms } from "~/forms/quote-terms";
-import { formatQuantity } from "~/rf/quantity";
+import type { Setup } from "~/rf/contract";
 import { formatMoney, formatNumber } from "./format";
 import type { DeclaredLineFacts } from "./quote-declaration-fields";
 import { QuoteFacts, type QuoteFact } from "./quote-facts";
+import { setupInUseFacts, statedFacts } from "./setup-words";
 import { Verdict } from "./verdict-mark";
 
 export const BASIS_WORDS = {
@@ -42,15 +42,19 @@ export function TermsView({ terms }: { terms: QuoteTerms }) {
   return <QuoteFacts label="Terms" rows={rows} />;
 }
 
-export function SetupView({ terms }: { terms: QuoteTerms }) {
-  const stated = SETUP_FIELDS.flatMap(({ field, label, kind, unit }): QuoteFact[] => {
-    const value = terms.setup[field];
-    if (value === undefined) return [];
-    const floor = field === "noiseFloor" ? `, ${terms.setup.noiseFloorKind ?? "peak"}` : "";
-    return [[label, `${formatQuantity(value, kind, kind === "plain" ? { unit } : {})}${floor}`]];
-  });
-  const rest: QuoteFact = ["Not stated", "as the RFQ assumes"];
-  return <QuoteFacts label="Setup" rows={[["Basis", BASIS_WORDS[terms.basis]], ...stated, rest]} />;
+interface SetupViewProps {
+  stated: Pick<QuoteTerms, "basis" | "setup" | "instrument" | "drift">;
+  /** What the RFQ assumes of what is not stated. */
+  assumed: Setup;
+}
+
+export function SetupView({ stated: { basis, setup, instrument, drift }, assumed }: SetupViewProps) {
+  const rows: QuoteFact[] = [
+    ["Basis", BASIS_WORDS[basis]],
+    ...statedFacts(instrument, drift),
+    ...setupInUseFacts(setup, assumed),
+  ];
+  return <QuoteFacts label="Measurement setup" rows={rows} longNames />;
 }
 
 export function DeclarationsView({ terms, declared }: { terms: QuoteTerms; declared: readonly DeclaredLineFacts[] }) {

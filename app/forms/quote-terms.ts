@@ -18,10 +18,13 @@ import {
   type FormResult,
   type FormValues,
 } from "~/forms/fields";
+import { instrumentToValues, readInstrument } from "~/forms/quote-setup";
 import { QUANTITY_BOUNDS } from "~/forms/rfq";
 import { readSetup, setupToValues } from "~/forms/setup";
+import { driftToValues, readDrift } from "~/forms/stated-drift";
 import { isDate } from "~/forms/zoned-time";
 import type { Setup } from "~/rf/contract";
+import type { Instrument, StatedDrift } from "~/rf/stated-measurement";
 
 /** What the RFQ sets for the form. */
 export interface QuoteTermsContext {
@@ -60,6 +63,9 @@ export interface QuoteTerms {
   readonly remarks: string | null;
   readonly basis: "measured" | "similar" | "simulated";
   readonly setup: Setup;
+  readonly instrument: Instrument;
+  /** Null where none is stated. */
+  readonly drift: StatedDrift | null;
   /** One for each declared line, in the context's order. */
   readonly declarations: readonly Declaration[];
 }
@@ -93,8 +99,8 @@ const Terms = z.object({
 });
 
 /**
- * Reads terms, setup and declarations: `prices.100` …, the fields of `QuoteTerms` by name, `setup.*`, `declarations.<lineKey>.answer` and
- * `.text`. Takes a post or the values a draft kept.
+ * Reads terms, setup and declarations: `prices.100` …, the fields of `QuoteTerms` by name, `setup.*`, `instrument.*`, `drift.*`,
+ * `declarations.<lineKey>.answer` and `.text`. Takes a post or the values a draft kept.
  */
 export function parseQuoteTerms(source: FormData | FormValues, context: QuoteTermsContext): FormResult<QuoteTerms> {
   const values = formValues(source);
@@ -102,10 +108,12 @@ export function parseQuoteTerms(source: FormData | FormValues, context: QuoteTer
   const terms = collect(Terms, values, errors);
   const prices = readPrices(values, context.breaks, errors);
   const setup = readSetup(values, errors, false);
+  const instrument = readInstrument(values, context.today, errors);
+  const drift = readDrift(values, errors);
   const declarations = context.declaredLineKeys.flatMap((key) => readDeclaration(values, key, errors) ?? []);
   if (terms) refuseTerms(terms, context.today, errors);
   if (!terms || hasErrors(errors)) return { ok: false, errors, values };
-  return { ok: true, value: { ...terms, currency: context.currency, prices, setup, declarations } };
+  return { ok: true, value: { ...terms, currency: context.currency, prices, setup, instrument, drift, declarations } };
 }
 
 function readPrices(values: FormValues, breaks: readonly number[], errors: FieldErrors) {
@@ -160,6 +168,8 @@ export function quoteTermsToValues(terms: QuoteTerms): FormValues {
     remarks: terms.remarks ?? "",
     basis: terms.basis,
     ...setupToValues(terms.setup),
+    ...instrumentToValues(terms.instrument),
+    ...driftToValues(terms.drift),
   };
   for (const { quantity, unitPrice } of terms.prices) values[`prices.${quantity}`] = unitPrice;
   for (const { lineKey, answer, text } of terms.declarations) {

@@ -33,6 +33,13 @@ export const SETUP_FIELDS: readonly SetupField[] = [
   { field: "phase", label: "Phase, expanded uncertainty", kind: "plain", unit: "deg", most: 180 },
 ];
 
+/** Whether a field of a quote's draft is typed on its Data sheet. */
+export const isDataField = (name: string): boolean => name === "basis" || /^(?:setup|instrument|drift)\./.test(name);
+
+/** A figure of a setup with its unit: "0.1 dB". @param value in the kind's own unit */
+export const setupText = ({ kind, unit }: SetupField, value: number): string =>
+  formatQuantity(value, kind, kind === "plain" ? { unit } : {});
+
 /** What an RFQ proposes to assume where a supplier states nothing: common practice, without a source. */
 export const PROPOSED_SETUP = {
   transmission: 0.1,
@@ -81,20 +88,15 @@ function readFigure(
   if (!parsed.ok) addError(errors, name, parsed.reason);
   else if (parsed.value <= 0) addError(errors, name, "Enter a figure above 0, or leave the field blank.");
   else if (parsed.value > field.most) {
-    addError(
-      errors,
-      name,
-      `At most ${formatQuantity(field.most, field.kind, field.kind === "plain" ? { unit: field.unit } : {})}.`,
-    );
+    addError(errors, name, `At most ${setupText(field, field.most)}.`);
   } else figures[field.field] = parsed.value;
 }
 
 /** A setup as the form's fields; parsed again they give the same setup. */
 export function setupToValues(setup: Setup): FormValues {
-  const texts = SETUP_FIELDS.map(({ field, kind, unit }) => {
-    const value = setup[field];
-    const text = value === undefined ? "" : formatQuantity(value, kind, kind === "plain" ? { unit } : {});
-    return [`setup.${field}`, text] as const;
+  const texts = SETUP_FIELDS.map((field) => {
+    const value = setup[field.field];
+    return [`setup.${field.field}`, value === undefined ? "" : setupText(field, value)] as const;
   });
   return { ...Object.fromEntries<string>(texts), "setup.noiseFloorKind": setup.noiseFloorKind ?? "peak" };
 }

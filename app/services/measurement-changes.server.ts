@@ -1,16 +1,19 @@
-// Changes to the measured sweeps of a quote: unit and temperature named, a file taken out. What was submitted stays as it was.
+// Changes to the measured sweeps of a quote: unit and temperature named, a setup of its own, a file taken out. What was submitted stays.
 import type { Transaction } from "sequelize";
 import { FileChunk, MeasurementResult, MeasurementRow, Quote, StoredFile } from "~/db/models";
 import { copyFileChunks } from "~/db/queries/file-chunks";
 import { SYSTEM } from "~/db/scoping";
 import type { FormValues } from "~/forms/fields";
 import { invalid, ok, type FieldErrors, type Result } from "~/forms/form";
-import { parseSweepLabels, type SweepLabelInput } from "~/forms/measurement";
+import { parseSweepLabels, type Placement, type SweepLabelInput, type SweepSetupInput } from "~/forms/measurement";
 import { newPublicId } from "./identifiers.server";
+import { queueDraftScoring } from "./jobs.server";
 import type { Person } from "./person.server";
 import { changeQuote, findQuote, recordQuoteEvent, type LockedQuote } from "./quotes.server";
+import { canonicalJson } from "./specification-release.server";
 
 const REMOVED = "This file was removed meanwhile.";
+const SOME_REMOVED = "Some of these files were removed meanwhile. Load the page again.";
 
 /**
  * Names unit and temperature of a sweep. One that a submitted version rests on is replaced by a copy with the new names, so
@@ -21,19 +24,101 @@ export function labelMeasurement(
   publicId: string,
   labels: SweepLabelInput,
 ): Promise<Result<{ publicId: string }> | null> {
-  return changeMeasurement(person, publicId, async (row, { quote, now }, transaction) => {
-    if (row.serial === labels.serial && row.temperature === labels.temperature) return ok({ publicId: row.publicId });
-    const named = row.sharedAt === null ? row : await replaceShared(row, now, transaction);
-    await named.update({ ...labels }, { transaction });
-    await quote.update({ savedAt: now }, { transaction });
-    const detail = {
-      measurement: named.publicId,
-      from: { serial: row.serial, temperature: row.temperature },
-      ...labels,
-    };
-    await recordQuoteEvent(person, now, quote, "file labelled", detail, transaction);
+  return changeMeasurement(person, publicId, async (row, locked, transaction) => {
+    const named = await nameSweep(person, row, labels, locked, transaction);
+    await locked.quote.update({ savedAt: locked.now }, { transaction });
     return ok({ publicId: named.publicId });
   });
+}
+
+async function nameSweep(
+  person: Person,
+  row: MeasurementRow,
+  labels: SweepLabelInput,
+  { quote, now }: LockedQuote,
+  transaction: Transaction,
+): Promise<MeasurementRow> {
+  const from = { serial: row.serial, temperature: row.temperature };
+  if (from.serial === labels.serial && from.temperature === labels.temperature) return row;
+  const named = row.sharedAt === null ? row : await replaceShared(row, now, transaction);
+  await named.update({ ...labels }, { transaction });
+  const detail = { measurement: named.publicId, from, ...labels };
+  await recordQuoteEvent(person, now, quote, "file labelled", detail, transaction);
+  return named;
+}
+
+/** A sweep as it was before it was placed, under the id it has from now on. */
+export interface PlacedSweep {
+  readonly publicId: string;
+  readonly from: SweepLabelInput;
+}
+
+/**
+ * Puts sweeps of a quote under one unit, one temperature, or both, all of them or none; the answer says where each was, so that it
+ * can be put back. Null where the person does not see the quote.
+ */
+export function placeMeasurements(
+  person: Person,
+  quotePublicId: string,
+  { measurements, ...place }: Placement,
+): Promise<Result<readonly PlacedSweep[]> | null> {
+  return changeQuote(person, quotePublicId, async (locked, transaction) => {
+    const rows = await MeasurementRow.findAll({
+      where: { publicId: [...measurements], quoteId: locked.quote.id, removedAt: null },
+      order: [["id", "ASC"]],
+      actor: SYSTEM,
+      transaction,
+    });
+    if (rows.length !== measurements.length) return invalid({ form: [SOME_REMOVED] });
+    const placed: PlacedSweep[] = [];
+    for (const row of rows) {
+      const from = { serial: row.serial, temperature: row.temperature };
+      const { publicId } = await nameSweep(person, row, { ...from, ...place }, locked, transaction);
+      placed.push({ publicId, from });
+    }
+    await locked.quote.update({ savedAt: locked.now }, { transaction });
+    return ok(placed);
+  });
+}
+
+/**
+ * Stores a setup of its own with a sweep, and with the others of its unit or range where `scope` says so; null takes it away. A sweep
+ * that a submitted version rests on is replaced by a copy. The draft's sweeps are scored with it from now on. The answer counts the
+ * sweeps it changed. Null where the person does not see the sweep.
+ */
+export function setMeasurementSetup(
+  person: Person,
+  publicId: string,
+  { setup, scope }: SweepSetupInput,
+): Promise<Result<{ changed: number }> | null> {
+  return changeMeasurement(person, publicId, async (row, { quote, now }, transaction) => {
+    const rows = await sweepsInScope(row, scope, transaction);
+    const differing = rows.filter((each) => canonicalJson(each.setup) !== canonicalJson(setup));
+    if (differing.length === 0) return ok({ changed: 0 });
+    for (const each of differing) {
+      const { setup: from } = each;
+      const kept = each.sharedAt === null ? each : await replaceShared(each, now, transaction);
+      await kept.update({ setup }, { transaction });
+      const detail = { measurement: kept.publicId, from, to: setup };
+      await recordQuoteEvent(person, now, quote, "file setup changed", detail, transaction);
+    }
+    await quote.update({ savedAt: now }, { transaction });
+    await queueDraftScoring(quote.id, now, transaction);
+    return ok({ changed: differing.length });
+  });
+}
+
+/** The sweeps of the quote that a setup counts for: of a unit that is not named, and so of none, only the one. */
+async function sweepsInScope(
+  row: MeasurementRow,
+  scope: SweepSetupInput["scope"],
+  transaction: Transaction,
+): Promise<MeasurementRow[]> {
+  const { serial, frequencyFrom, frequencyTo } = row;
+  if (scope === "sweep" || (scope === "unit" && serial === null)) return [row];
+  const alike = scope === "unit" ? { serial } : { frequencyFrom, frequencyTo };
+  const where = { quoteId: row.quoteId, removedAt: null, ...alike };
+  return MeasurementRow.findAll({ where, order: [["id", "ASC"]], actor: SYSTEM, transaction });
 }
 
 /** Takes a file out of the quote. Bytes that no submitted version rests on are gone for good. Null where the person does not see it. */

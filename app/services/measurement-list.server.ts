@@ -1,11 +1,24 @@
 // The files of a quote as its supplier sees them while it is prepared: what each is of, and how it scores by itself.
 import { Op } from "sequelize";
-import { MeasurementResult, MeasurementRow, StoredFile, type Rfq } from "~/db/models";
-import { readNumber, type SpecificationLine, type StoredResult, type Verdict } from "~/rf/index";
+import { Job, MeasurementResult, MeasurementRow, StoredFile, type Rfq } from "~/db/models";
+import { databaseNow } from "~/db/queries/clock";
+import { statedSetup } from "~/forms/quote-setup";
+import { evidenceOf, type Evidence } from "~/rf/evidence";
+import {
+  CORE_VERSION,
+  readNumber,
+  type Setup,
+  type SpecificationLine,
+  type StoredResult,
+  type Verdict,
+} from "~/rf/index";
 import { coversRange } from "~/rf/lot-temperature";
+import { setupInUse, standingOfSweep, statedOf } from "~/rf/score-sweep";
+import { quoteRefusal } from "~/workflow/quote";
+import { rfqState } from "~/workflow/rfq";
 import type { Person } from "./person.server";
-import { findQuote } from "./quotes.server";
-import { readScoringFrame, type ScoringFrame } from "./scoring-sweeps.server";
+import { findQuote, type FoundQuote } from "./quotes.server";
+import { readScoringFrame, setupHash, type ScoringFrame } from "./scoring-sweeps.server";
 import { standingOf, worstStanding } from "./worst-line.server";
 
 export interface MeasurementEntry {
@@ -20,9 +33,15 @@ export interface MeasurementEntry {
   readonly points: number;
   /** Hz. */
   readonly sweep: readonly [number, number];
+  /** Hz, finest and widest step; null for a file whose steps were not kept, and for a single sample. */
+  readonly step: readonly [number, number] | null;
+  /** What is stated of this sweep alone; null where the quote's setup counts. */
+  readonly setup: Setup | null;
   readonly notes: readonly { readonly severity: "repaired" | "doubtful"; readonly message: string }[];
-  /** Worst over the lines; null where it was not scored against this revision. */
+  /** Worst over the lines it covers; null while it is not scored against this revision with the setup in use. */
   readonly verdict: Verdict | null;
+  /** Measured lines it covers by itself, of how many. */
+  readonly coverage: { readonly lines: number; readonly of: number } | null;
   readonly worst: WorstEntry | null;
 }
 
@@ -49,6 +68,9 @@ export interface DataAsked {
 export interface MeasurementList {
   readonly entries: readonly MeasurementEntry[];
   readonly asked: DataAsked;
+  readonly evidence: Evidence;
+  /** "pending": sweeps without a verdict get one soon; "failed": the worker gave them up. */
+  readonly scoring: "done" | "pending" | "failed";
 }
 
 /** Files by unit, temperature and name, or null where the person does not see the quote. */
@@ -64,18 +86,62 @@ export async function listMeasurements(person: Person, quotePublicId: string): P
   const [files, results] = await Promise.all([
     StoredFile.findAll({ where: { id: { [Op.in]: measurements.map(({ fileId }) => fileId) } }, actor: person }),
     MeasurementResult.findAll({
-      where: { revisionId: frame.revisionId, measurementId: { [Op.in]: measurements.map(({ id }) => id) } },
-      order: [["createdAt", "ASC"]],
+      where: {
+        measurementId: { [Op.in]: measurements.map(({ id }) => id) },
+        revisionId: frame.revisionId,
+        coreVersion: CORE_VERSION,
+      },
       actor: person,
     }),
   ]);
   const fileById = new Map(files.map((file) => [file.id, file]));
-  const latest = new Map(results.map((result) => [result.measurementId, result]));
+  const scores = new Map(results.map((result) => [`${result.measurementId} ${result.setupHash}`, result]));
+  const stated = statedSetup({ ...quote.draft.values });
   const entries = measurements.flatMap((row) => {
     const file = fileById.get(row.fileId);
-    return file ? [entryOf(row, file, latest.get(row.id), frame)] : [];
+    const setup = setupInUse(statedOf(stated, row.setup), rfq.assumedSetup);
+    return file ? [entryOf(row, file, scores.get(`${row.id} ${setupHash(setup)}`), frame)] : [];
   });
-  return { entries: entries.sort(byUnit), asked: dataAsked(entries, rfq, frame) };
+  return {
+    entries: entries.sort(byUnit),
+    asked: dataAsked(entries, rfq, frame),
+    evidence: deliveredEvidence(measurements, rfq, frame),
+    scoring: await scoringOf(found, entries),
+  };
+}
+
+async function scoringOf({ quote, rfq }: FoundQuote, entries: readonly MeasurementEntry[]) {
+  if (entries.every(({ verdict }) => verdict !== null)) return "done";
+  const [job, now] = await Promise.all([
+    Job.findOne({ where: { kind: "draft-score", key: String(quote.id) } }),
+    databaseNow(),
+  ]);
+  const isOver = quoteRefusal("edit", quote.state, rfqState(rfq, now)) !== null;
+  return isOver || job?.state === "failed" ? "failed" : "pending";
+}
+
+/** What the RFQ asks for against the sweeps there are. */
+function deliveredEvidence(measurements: readonly MeasurementRow[], rfq: Rfq, frame: ScoringFrame): Evidence {
+  const { ambient, range, lowestTestFrequency } = frame;
+  const asked = {
+    units: rfq.unitsAsked,
+    unitsOverRange: rfq.unitsOverRange,
+    ambient,
+    plan: rfq.measurementPlan,
+    ...(range === undefined ? {} : { range }),
+    ...(lowestTestFrequency === undefined ? {} : { lowestTestFrequency }),
+  };
+  return evidenceOf(
+    asked,
+    measurements.map(({ serial, temperature, frequencyFrom, frequencyTo, points, steps }) => ({
+      unit: serial,
+      temperature: temperature === null ? null : Number(temperature),
+      from: frequencyFrom,
+      to: frequencyTo,
+      points,
+      steps,
+    })),
+  );
 }
 
 function byUnit(a: MeasurementEntry, b: MeasurementEntry): number {
@@ -90,6 +156,7 @@ function entryOf(
   scored: MeasurementResult | undefined,
   frame: ScoringFrame,
 ): MeasurementEntry {
+  const standing = scored && standingOfSweep(scored.results);
   return {
     publicId: row.publicId,
     fileId: file.publicId,
@@ -99,10 +166,19 @@ function entryOf(
     temperature: row.temperature,
     points: row.points,
     sweep: [row.frequencyFrom, row.frequencyTo],
+    step: stepsOf(row),
+    setup: row.setup,
     notes: row.notes.map(({ severity, message }) => ({ severity, message })),
-    verdict: scored ? (scored.verdict as Verdict) : null,
-    worst: scored ? worstEntry(scored.results, frame.lines) : null,
+    verdict: standing?.verdict ?? null,
+    coverage: standing ? { lines: standing.linesCovered, of: standing.lines } : null,
+    worst: standing ? worstEntry(standing.results, frame.lines) : null,
   };
+}
+
+function stepsOf({ steps }: MeasurementRow): readonly [number, number] | null {
+  if (steps === null || steps.length === 0) return null;
+  const widths = steps.map(([, , step]) => step);
+  return [Math.min(...widths), Math.max(...widths)];
 }
 
 function worstEntry(results: readonly StoredResult[], lines: readonly SpecificationLine[]): WorstEntry | null {

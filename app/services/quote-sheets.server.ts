@@ -3,9 +3,7 @@ import { formValues, hasErrors, type FormValues } from "~/forms/fields";
 import type { FieldErrors } from "~/forms/form";
 import type { Person } from "./person.server";
 import { readQuoteHead, saveDraft } from "./quotes.server";
-import { checkSheet, readQuoteTerms, typedErrors } from "./quote-terms.server";
-
-export type DraftSheet = "terms" | "declarations";
+import { checkSheet, readQuoteTerms, typedErrors, type DraftSheet } from "./quote-terms.server";
 
 export interface DraftRefusal {
   readonly values: FormValues;

@@ -1,7 +1,9 @@
-// The terms and the files of a submitted quote, as its buyer reads them.
+// The terms, the measurement setup and the files of a submitted quote, as its buyer reads them.
 import { Op } from "sequelize";
 import { QuoteDeclaration, QuotePrice, StoredFile } from "~/db/models";
 import { compareCost, type ComparedCost } from "~/commerce/index";
+import type { Setup } from "~/rf/contract";
+import type { Instrument, StatedDrift } from "~/rf/stated-measurement";
 import type { Person } from "./person.server";
 import { readVersionSweeps } from "./quote-results.server";
 import { readLines } from "./specification-lines.server";
@@ -28,6 +30,14 @@ export interface QuoteTerms {
   /** SHA-256 of the submission, hexadecimal. */
   readonly contentHash: string;
   readonly declarations: readonly DeclaredLine[];
+  readonly basis: "measured" | "similar" | "simulated";
+  /** What the supplier states of all sweeps; the rest is assumed. */
+  readonly setup: Setup;
+  readonly assumedSetup: Setup;
+  readonly instrument: Instrument;
+  readonly drift: StatedDrift | null;
+  /** Sweeps with figures of their own, in the order of the files. */
+  readonly sweepSetups: readonly { readonly fileName: string; readonly setup: Setup }[];
 }
 
 export interface DeclaredLine {
@@ -45,10 +55,11 @@ export async function readQuoteTerms(person: Person, quotePublicId: string): Pro
   if (!found) return null;
   const { version, rfq } = found;
   const where = { versionId: version.id };
-  const [priceRows, declarationRows, lines] = await Promise.all([
+  const [priceRows, declarationRows, lines, sweepSetups] = await Promise.all([
     QuotePrice.findAll({ where, order: [["quantity", "ASC"]], actor: person }),
     QuoteDeclaration.findAll({ where, actor: person }),
     readLines(person, version.revisionId),
+    readSweepSetups(person, version.id),
   ]);
   const prices = priceRows.map(({ quantity, unitPrice }) => ({ quantity, unitPrice }));
   const { nre, minimumQuantity: minimum, orderMultiple: multiple } = version;
@@ -68,6 +79,12 @@ export async function readQuoteTerms(person: Person, quotePublicId: string): Pro
     paymentTerms: version.paymentTerms,
     remarks: version.remarks,
     contentHash: version.contentHash.toString("hex"),
+    basis: version.basis,
+    setup: version.setup,
+    assumedSetup: rfq.assumedSetup,
+    instrument: version.instrument,
+    drift: version.drift,
+    sweepSetups,
     declarations: lines.flatMap(({ lineKey, lineNumber, definition }) => {
       if (definition.kind !== "declared") return [];
       const row = declarationRows.find((candidate) => candidate.lineKey === lineKey);
@@ -75,6 +92,20 @@ export async function readQuoteTerms(person: Person, quotePublicId: string): Pro
       return [{ lineNumber, requirement, limit, answer: row?.answer ?? null, text: row?.text ?? null }];
     }),
   };
+}
+
+async function readSweepSetups(person: Person, versionId: number): Promise<QuoteTerms["sweepSetups"]> {
+  const sweeps = (await readVersionSweeps(person, versionId)).filter(({ setup }) => setup !== null);
+  const files = await readFiles(person, sweeps);
+  return sweeps.map(({ fileId, setup }) => ({ fileName: files.get(fileId)?.name ?? "", setup: setup ?? {} }));
+}
+
+async function readFiles(
+  person: Person,
+  sweeps: readonly { readonly fileId: number }[],
+): Promise<ReadonlyMap<number, StoredFile>> {
+  const where = { id: { [Op.in]: sweeps.map(({ fileId }) => fileId) } };
+  return new Map((await StoredFile.findAll({ where, actor: person })).map((file) => [file.id, file]));
 }
 
 export interface QuoteFile {
@@ -99,12 +130,9 @@ export async function readQuoteFiles(person: Person, quotePublicId: string): Pro
   const found = await findSubmittedQuote(person, quotePublicId);
   if (!found) return null;
   const sweeps = await readVersionSweeps(person, found.version.id);
-  const files = await StoredFile.findAll({
-    where: { id: { [Op.in]: sweeps.map(({ fileId }) => fileId) } },
-    actor: person,
-  });
+  const files = await readFiles(person, sweeps);
   return sweeps.flatMap((sweep): QuoteFile[] => {
-    const file = files.find(({ id }) => id === sweep.fileId);
+    const file = files.get(sweep.fileId);
     if (!file) return [];
     const { points, frequencyFrom, frequencyTo } = sweep;
     return [

@@ -4,6 +4,8 @@ import { databaseNow } from "~/db/queries/clock";
 import type { QueryActor } from "~/db/scoping";
 import type { FormValues } from "~/forms/fields";
 import type { FieldErrors } from "~/forms/form";
+import { isDataField } from "~/forms/setup";
+import { statedSetup } from "~/forms/quote-setup";
 import { parseQuoteTerms, type QuoteTermsContext } from "~/forms/quote-terms";
 import { zonedTimeToText } from "~/forms/zoned-time";
 import { isMeasured, type SpecificationLine } from "~/rf/line-definition";
@@ -21,6 +23,8 @@ export interface QuoteTermsForm {
   readonly quantity: number;
   readonly currency: string;
   readonly assumedSetup: Setup;
+  /** What the draft states of the setup now, as far as it is in order. */
+  readonly statedSetup: Setup;
   /** The declared lines in their order. */
   readonly declared: readonly DeclaredLine[];
   readonly buyerName: string;
@@ -50,6 +54,7 @@ export async function readQuoteTerms(person: Person, quotePublicId: string): Pro
     quantity: rfq.quantity,
     currency: rfq.currency,
     assumedSetup: rfq.assumedSetup,
+    statedSetup: statedSetup({ ...quote.draft.values }),
     declared: declaredLines(lines),
     buyerName: buyer.name,
   };
@@ -82,26 +87,34 @@ export async function termsContext(
   };
 }
 
-const isDeclaration = (name: string): boolean => name.startsWith("declarations.");
+/** The sheets of a quote whose fields its draft keeps. */
+export type DraftSheet = "data" | "terms" | "declarations";
 
-/** What keeps the terms, or the declarations, from being submitted as they stand; null where the person does not see the quote. */
+/** The sheet a field of the draft is typed on. */
+function sheetOf(field: string): DraftSheet {
+  if (isDataField(field)) return "data";
+  return field.startsWith("declarations.") ? "declarations" : "terms";
+}
+
+/** What keeps a sheet from being submitted as it stands; null where the person does not see the quote. */
 export async function checkSheet(
   person: Person,
   quotePublicId: string,
-  sheet: "terms" | "declarations",
+  sheet: DraftSheet,
 ): Promise<FieldErrors | null> {
   const found = await findQuote(person, quotePublicId);
   if (!found) return null;
   const context = await termsContext(person, found.rfq, await databaseNow());
   const parsed = parseQuoteTerms({ ...found.quote.draft.values }, context);
   if (parsed.ok) return {};
-  const wanted = Object.entries(parsed.errors).filter(([name]) => isDeclaration(name) === (sheet === "declarations"));
+  const wanted = Object.entries(parsed.errors).filter(([name]) => sheetOf(name) === sheet);
   return Object.fromEntries(wanted);
 }
 
 /** Errors of what was typed, without those of fields still blank: those are told on the review. */
 export function typedErrors(errors: FieldErrors, values: FormValues): FieldErrors {
-  const paired = (name: string) => name === "place" || name === "incoterms" || name.endsWith(".text");
+  const paired = (name: string) =>
+    name === "place" || name === "incoterms" || name === "drift.ppmPerKelvin" || name.endsWith(".text");
   const typed = Object.entries(errors).filter(([name]) => paired(name) || (values[name] ?? "").trim() !== "");
   return Object.fromEntries(typed);
 }

@@ -3,7 +3,7 @@ import { decimate, prepare, type Band, type Series } from "~/rf/index";
 import { curvesOf } from "~/rf/curves";
 import { eachNetwork, type MeasuredNetwork } from "./measured-networks.server";
 import type { Person } from "./person.server";
-import { readScores } from "./quote-scores.server";
+import { readScores, scoredRevision } from "./quote-scores.server";
 import { readVersionSweeps } from "./quote-results.server";
 import { readScoringFrame } from "./scoring-sweeps.server";
 import { findSubmittedQuote, type SubmittedQuote } from "./submitted-quotes.server";
@@ -43,11 +43,9 @@ export async function readQuoteTraces(
 ): Promise<QuoteTrace[] | null> {
   const found = await findSubmittedQuote(person, quotePublicId);
   if (!found) return null;
+  const revisionId = await scoredRevision(person, found.version);
   const [frame, sweeps, reported] = await Promise.all([
-    readScoringFrame(person, {
-      revisionId: found.version.revisionId,
-      measurementPlan: found.rfq.measurementPlan,
-    }),
+    readScoringFrame(person, { revisionId, measurementPlan: found.rfq.measurementPlan }),
     readVersionSweeps(person, found.version.id),
     reportedPlace(person, found, query),
   ]);

@@ -5,13 +5,16 @@ import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
 import type { FormValues } from "~/forms/fields";
 import { invalid, ok, type Result } from "~/forms/form";
+import { statedSetup } from "~/forms/quote-setup";
 import { rfqNumber, specificationNumber } from "~/workflow/numbers";
 import { quoteRefusal, type QuoteState } from "~/workflow/quote";
 import { EMPTY_QUOTE_DRAFT } from "~/workflow/quote-draft";
 import { rfqState, type RfqState } from "~/workflow/rfq";
 import { recordEvent } from "./audit.server";
 import { newPublicId } from "./identifiers.server";
+import { queueDraftScoring } from "./jobs.server";
 import type { Person } from "./person.server";
+import { setupHash } from "./scoring-sweeps.server";
 import { inTransaction } from "./transaction.server";
 
 /** What the title block of a quote's sheets says to its supplier. */
@@ -203,7 +206,7 @@ export function changeFoundQuote<T>(
 }
 
 const DRAFT_FIELDS =
-  /^(?:nre|leadFirstDays|leadVolumeDays|validUntil|minimumQuantity|orderMultiple|incoterms|place|paymentTerms|remarks|basis|prices\.\d{1,9}|setup\.[A-Za-z]{1,30}|declarations\.[0-9a-z-]{1,16}\.(?:answer|text))$/;
+  /^(?:nre|leadFirstDays|leadVolumeDays|validUntil|minimumQuantity|orderMultiple|incoterms|place|paymentTerms|remarks|basis|prices\.\d{1,9}|setup\.[A-Za-z]{1,30}|instrument\.[A-Za-z]{1,30}|drift\.[A-Za-z]{1,30}|declarations\.[0-9a-z-]{1,16}\.(?:answer|text))$/;
 /** Longer than any field may be at submission, so that what is typed too long is kept and can be shortened. */
 const LONGEST_KEPT = 10_000;
 
@@ -211,7 +214,8 @@ export const SAVED_ELSEWHERE =
   "This quote was saved by somebody else since you opened this page. Your entries are kept below; save again to let them count.";
 
 /**
- * Keeps the posted fields as they were typed, whether they are in order or not; fields of other sheets stay as they are.
+ * Keeps the posted fields as they were typed, whether they are in order or not; fields of other sheets stay as they are. Where the
+ * measurement setup says something else from now on, the draft's sweeps are scored with it.
  *
  * @param lockVersion of the quote when the form was shown: an older one is refused
  */
@@ -226,8 +230,10 @@ export function saveDraft(
     if (quote.lockVersion !== lockVersion) return invalid({ form: [SAVED_ELSEWHERE] });
     const posted = Object.fromEntries(kept.map(([name, value]) => [name, value.slice(0, LONGEST_KEPT)]));
     const draft = { values: { ...quote.draft.values, ...posted } };
+    const isSetupChanged = setupHash(statedSetup(draft.values)) !== setupHash(statedSetup({ ...quote.draft.values }));
     const next = lockVersion + 1;
     await quote.update({ draft, ...basisOf(posted), lockVersion: next, savedAt: now }, { transaction });
+    if (isSetupChanged) await queueDraftScoring(quote.id, now, transaction);
     await recordQuoteEvent(person, now, quote, "draft saved", { fields: Object.keys(posted).length }, transaction);
     return ok({ lockVersion: next });
   });

@@ -18,6 +18,8 @@ const filled = {
   remarks: "",
   basis: "measured",
   "setup.transmission": "0.08 dB",
+  "instrument.analyser": "Two-port analyser",
+  "drift.ppmPerKelvin": "±2 ppm/K",
   "declarations.power.answer": "comply",
   "declarations.size.answer": "exception",
   "declarations.size.text": "62 mm",
@@ -50,6 +52,8 @@ test("filled fields become terms with exact decimal amounts in the RFQ's currenc
       remarks: null,
       basis: "measured",
       setup: { transmission: 0.08 },
+      instrument: { analyser: "Two-port analyser" },
+      drift: { ppmPerKelvin: 2, either: true },
       declarations: [
         { lineKey: "power", answer: "comply", text: null },
         { lineKey: "size", answer: "exception", text: "62 mm" },
@@ -114,5 +118,12 @@ test("counts and choices are checked, setup fields may stay blank", () => {
   expect(errorsOf({ "setup.tracking": "0" })).toEqual({
     "setup.tracking": ["Enter a figure above 0, or leave the field blank."],
   });
-  expect(parse({ "setup.transmission": "" })).toMatchObject({ ok: true, value: { setup: {} } });
+  expect(parse({ "setup.transmission": "", "instrument.analyser": "", "drift.ppmPerKelvin": "" })).toMatchObject({
+    ok: true,
+    value: { setup: {}, instrument: {}, drift: null },
+  });
+  expect(errorsOf({ "drift.ppmPerKelvin": "warm", "instrument.calibratedOn": "2031-01-01" })).toEqual({
+    "drift.ppmPerKelvin": [expect.any(String)],
+    "instrument.calibratedOn": [expect.any(String)],
+  });
 });

@@ -15,7 +15,12 @@ import { SYSTEM } from "~/db/scoping";
 import { readFileBytes } from "~/services/file-bytes.server";
 import { downloadHeaders, openFile } from "~/services/file-download.server";
 import { newIdempotencyKey, sha256 } from "~/services/identifiers.server";
-import { labelMeasurement, labelMeasurements, removeMeasurement } from "~/services/measurement-changes.server";
+import {
+  labelMeasurement,
+  labelMeasurements,
+  placeMeasurements,
+  removeMeasurement,
+} from "~/services/measurement-changes.server";
 import { listMeasurements } from "~/services/measurement-list.server";
 import { addMeasurement } from "~/services/measurements.server";
 import { submitQuote } from "~/services/quote-submission.server";
@@ -166,6 +171,51 @@ test("unit and temperature are changed in place, kept to a tenth, and left open 
   const stranger = await buildPerson(await buildOrganisation("supplier"));
   expect(await labelMeasurement(stranger, publicId, { serial: "X3", temperature: null })).toBeNull();
   expect(await removeMeasurement(stranger, publicId)).toBeNull();
+});
+
+test("several files are placed at once, each keeping what is left open, and the answer says where they were", async () => {
+  const { person, quote } = await buildJourneyQuote("Kestrel Cavity Filters");
+  await uploadFiles(person, quote, kestrel.slice(0, 3));
+  const rows = await MeasurementRow.findAll({ order: [["id", "ASC"]], actor: person });
+  const measurements = rows.map(({ publicId }) => publicId);
+  expect(await placeMeasurements(person, quote.publicId, { measurements, serial: "KCF-0300" })).toEqual({
+    ok: true,
+    value: rows.map(({ publicId, serial, temperature }) => ({ publicId, from: { serial, temperature } })),
+  });
+  const list = await listMeasurements(person, quote.publicId);
+  expect(list?.entries.map(({ serial, temperature }) => [serial, temperature])).toEqual([
+    ["KCF-0300", "-30.0"],
+    ["KCF-0300", "25.0"],
+    ["KCF-0300", "70.0"],
+  ]);
+  expect(list?.evidence.rows[0]).toMatchObject({ unit: "KCF-0300", overRange: true });
+  expect(await AuditEvent.count({ where: { action: "file labelled" }, actor: person })).toBe(3);
+});
+
+test("a placing that names a file of another quote, or one removed meanwhile, moves none", async () => {
+  const { person, quote, rfq } = await buildJourneyQuote("Kestrel Cavity Filters");
+  await uploadFiles(person, quote, kestrel.slice(0, 2));
+  const other = await addSupplier(rfq, "Halden Resonator Works");
+  await uploadFiles(other.person, other.quote, [orme]);
+  const own = (await MeasurementRow.findAll({ actor: person })).map(({ publicId }) => publicId);
+  const foreign = (await MeasurementRow.findAll({ actor: other.person })).map(({ publicId }) => publicId);
+  const placing = { measurements: [...own, ...foreign], serial: "X1", temperature: "25.0" };
+  expect(await placeMeasurements(person, quote.publicId, placing)).toMatchObject({
+    ok: false,
+    errors: { form: [expect.any(String)] },
+  });
+  expect(await placeMeasurements(other.person, quote.publicId, placing)).toBeNull();
+  expect(await MeasurementRow.count({ where: { serial: "X1" }, actor: SYSTEM })).toBe(0);
+});
+
+test("the list tells points and steps of a sweep", async () => {
+  const { person, quote } = await buildJourneyQuote("Orme Microwave");
+  await uploadFiles(person, quote, [orme]);
+  const [entry] = (await listMeasurements(person, quote.publicId))?.entries ?? [];
+  // 1.7 to 2.2 GHz in 2,001 points: 500 MHz / 2,000.
+  expect(entry?.step?.map((step) => Math.round(step))).toEqual([250_000, 250_000]);
+  await MeasurementRow.update({ steps: null }, { where: {}, actor: SYSTEM });
+  expect((await listMeasurements(person, quote.publicId))?.entries[0]?.step).toBeNull();
 });
 
 test("a removed file that was never submitted is gone with its bytes, and may be sent again", async () => {

@@ -1,10 +1,13 @@
-// One quote's terms: prices and what they come to, lead times, validity, delivery, declarations.
+// One quote's terms: prices and what they come to, lead times, validity, delivery, declarations, and the measurement setup.
 import type { ReactNode } from "react";
 import { Cell, HeadCell, Row, RowHead, Table } from "~/components/data-table";
 import { formatMoney, formatNumber } from "~/components/format";
 import { dateWords, leadWords } from "~/components/comparison-words";
 import { Page, Section, Split } from "~/components/page";
 import { QuoteBlock } from "~/components/quote-block";
+import { QuoteFacts } from "~/components/quote-facts";
+import { SetupView } from "~/components/quote-terms-view";
+import { setupWords } from "~/components/setup-words";
 import { Verdict } from "~/components/verdict-mark";
 import { orNotFound, requireRight } from "~/services/request.server";
 import { readQuoteTerms } from "~/services/quote-terms-view.server";
@@ -36,6 +39,13 @@ export default function QuoteTerms({ loaderData }: Route.ComponentProps) {
           </Section>
           <Section title="Declarations">
             <Declarations terms={terms} />
+          </Section>
+          <Section
+            title="Measurement setup"
+            note="As the supplier states it of all sweeps; results that rest on an assumed figure are marked."
+          >
+            <SetupView stated={terms} assumed={terms.assumedSetup} />
+            <SweepSetups terms={terms} />
           </Section>
         </div>
         <Section title="Terms">
@@ -89,6 +99,21 @@ function CostSentence({ terms: { cost, askedQuantity, currency } }: { terms: Ter
       {asked} pieces: {formatNumber(cost.boughtQuantity, 0)} × {formatMoney(cost.unitPrice)} + NRE{" "}
       {formatMoney(cost.nre)} = <b>{formatMoney(cost.total, currency)}</b>
     </p>
+  );
+}
+
+/** Files whose sweeps were measured otherwise than the rest. */
+function SweepSetups({ terms: { sweepSetups } }: { terms: Terms }) {
+  if (sweepSetups.length === 0) return null;
+  return (
+    <div className="mt-6">
+      <h3 className="pb-2">Sweeps with a setup of their own</h3>
+      <QuoteFacts
+        label="Sweeps with a setup of their own"
+        rows={sweepSetups.map(({ fileName, setup }) => [fileName, setupWords(setup)])}
+        longNames
+      />
+    </div>
   );
 }
 

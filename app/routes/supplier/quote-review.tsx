@@ -3,12 +3,12 @@ import { data, redirect } from "react-router";
 import { Button, LinkButton } from "~/components/button";
 import { PostForm } from "~/components/form";
 import { Page, Section, Split } from "~/components/page";
+import { MeasurementList } from "~/components/measurement-list";
 import { DataAsked } from "~/components/quote-data-asked";
 import { QuoteMissing } from "~/components/quote-missing";
 import { QuoteStateNotice } from "~/components/quote-state-notice";
 import { DeclarationsView, SetupView, TermsView } from "~/components/quote-terms-view";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
-import { UploadList } from "~/components/upload-list";
 import { formValues } from "~/forms/fields";
 import { newIdempotencyKey } from "~/services/identifiers.server";
 import { listMeasurements } from "~/services/measurement-list.server";
@@ -25,11 +25,13 @@ export const meta: Route.MetaFunction = ({ loaderData }) => [
 export async function loader({ request, context, params }: Route.LoaderArgs) {
   const person = requireRight(context, request, "read-own-quote");
   const head = orNotFound(await readQuoteHead(person, params.quoteId));
+  const { declared, assumedSetup } = orNotFound(await readQuoteTerms(person, params.quoteId));
   return {
     head,
+    declared,
+    assumedSetup,
     list: orNotFound(await listMeasurements(person, params.quoteId)),
     review: orNotFound(await reviewQuote(person, params.quoteId)),
-    declared: orNotFound(await readQuoteTerms(person, params.quoteId)).declared,
     idempotencyKey: newIdempotencyKey(),
   };
 }
@@ -45,7 +47,7 @@ export async function action({ request, context, params }: Route.ActionArgs) {
 const STILL_MISSING = "Something is still missing: it is listed on this page.";
 
 export default function QuoteReview({ loaderData, actionData }: Route.ComponentProps) {
-  const { head, list, review, declared } = loaderData;
+  const { head, list, review, declared, assumedSetup } = loaderData;
   const edit = (sheet: "Data" | "Terms" | "Declarations") =>
     head.refusal === null ? (
       <LinkButton kind="plain" to={quoteSheetAddress(sheet, head.publicId)}>
@@ -64,7 +66,7 @@ export default function QuoteReview({ loaderData, actionData }: Route.ComponentP
         <DataAsked asked={list.asked} />
         {list.entries.length === 0 ? null : (
           <div className="mt-4">
-            <UploadList entries={list.entries} canEdit={false} />
+            <MeasurementList entries={list.entries} scoring={list.scoring} canEdit={false} />
           </div>
         )}
       </Section>
@@ -74,8 +76,8 @@ export default function QuoteReview({ loaderData, actionData }: Route.ComponentP
             <Section title="Terms" tools={edit("Terms")}>
               <TermsView terms={review.terms} />
             </Section>
-            <Section title="Data and setup" tools={edit("Terms")}>
-              <SetupView terms={review.terms} />
+            <Section title="Measurement setup" tools={edit("Data")}>
+              <SetupView stated={review.terms} assumed={assumedSetup} />
             </Section>
           </Split>
           {declared.length === 0 ? null : (

@@ -1,9 +1,9 @@
-// Terms of a quote: prices, delivery, conditions, and the setup its data was measured with.
+// Terms of a quote: prices, delivery and conditions.
 import { data, redirect } from "react-router";
 import { Page } from "~/components/page";
 import { QuoteDraftForm } from "~/components/quote-draft-form";
 import { QuoteStateNotice } from "~/components/quote-state-notice";
-import { BasisFields, ConditionFields, DeliveryFields, PriceFields } from "~/components/quote-terms-fields";
+import { ConditionFields, DeliveryFields, PriceFields } from "~/components/quote-terms-fields";
 import { quoteSheetAddress, SupplierQuoteBlock } from "~/components/supplier-quote-block";
 import { readSheet, saveSheet } from "~/services/quote-sheets.server";
 import { orNotFound, requireRight } from "~/services/request.server";
@@ -44,7 +44,6 @@ export default function QuoteTerms({ loaderData, actionData }: Route.ComponentPr
         <PriceFields breaks={terms.breaks} quantity={terms.quantity} currency={terms.currency} />
         <DeliveryFields />
         <ConditionFields />
-        <BasisFields assumedSetup={terms.assumedSetup} />
       </QuoteDraftForm>
     </Page>
   );
