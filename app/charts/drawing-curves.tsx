@@ -56,3 +56,19 @@ export function CurveNames({ scene }: { scene: PanelScene }) {
     </g>
   );
 }
+
+/** Uncertainty bands: between the ends of each reading, cut off at the frame. */
+export function UncertaintyAreas({ scene, clipId }: { scene: PanelScene; clipId: string }) {
+  if (!scene.areas || scene.areas.length === 0) return null;
+  return (
+    <path
+      clipPath={`url(#${clipId})`}
+      d={scene.areas.map((points) => pathOf(points, true)).join("")}
+      fill="var(--color-ink)"
+      fillOpacity={0.14}
+      stroke="var(--color-quiet)"
+      strokeWidth={1}
+      strokeLinejoin="round"
+    />
+  );
+}

@@ -4,8 +4,8 @@ import { scaleLinear } from "@visx/scale";
 import type { Band } from "~/rf/index";
 import { estimateTextWidth } from "./boxes";
 import type { DrawingLayout, PanelLayout } from "./layout";
+import type { PanelScene } from "./scene";
 import { formatWidth } from "./words";
-import { passbands } from "./walls";
 
 const TICK_LENGTH = 5;
 const ARROWHEAD_LENGTH = 9;
@@ -61,12 +61,12 @@ export function LevelAxis({ layout, panel }: { layout: DrawingLayout; panel: Pan
         tickComponent={LevelLabel}
       />
       {layout.phone ? (
-        <text x={8} y={panel.top - (panel.panel === "transmission" ? 19 : 8)} fill="var(--color-quiet)">
-          {axisTitle(panel, layout)}
+        <text x={8} y={panel.top - (panel === layout.panels[0] ? 19 : 8)} fill="var(--color-quiet)">
+          {panel.title}
         </text>
       ) : (
         <text transform={`translate(16 ${middle}) rotate(-90)`} textAnchor="middle" fill="var(--color-quiet)">
-          {axisTitle(panel, layout)}
+          {panel.title}
         </text>
       )}
     </g>
@@ -79,11 +79,6 @@ function LevelLabel({ x, y, formattedValue }: TickRendererProps) {
       {formattedValue}
     </text>
   );
-}
-
-function axisTitle(panel: PanelLayout, layout: DrawingLayout): string {
-  if (panel.panel === "transmission") return "Loss S21, dB";
-  return layout.phone ? "Return loss, dB" : "Return loss S11, S22, dB";
 }
 
 /** The one frequency axis, under the lowest panel. */
@@ -136,7 +131,7 @@ export function PassbandSigns({ layout }: { layout: DrawingLayout }) {
   const first = layout.panels[0];
   const last = layout.panels[layout.panels.length - 1];
   if (!first || !last) return null;
-  const bands = passbands(layout.walls).filter(
+  const bands = layout.passbands.filter(
     ([from, to]) => to > from && from >= layout.window[0] && to <= layout.window[1],
   );
   return (
@@ -169,6 +164,27 @@ function hasCentre([from, to]: Band, layout: DrawingLayout): boolean {
   const stopbands = layout.walls.filter((wall) => wall.panel === "transmission" && wall.side === "ceiling");
   if (stopbands.length === 0) return from > 0;
   return stopbands.some((wall) => wall.band[1] <= from) && stopbands.some((wall) => wall.band[0] >= to);
+}
+
+/** Upright chain lines at frequencies that are told over the frame. */
+export function FrequencySigns({ scene }: { scene: PanelScene }) {
+  const { top, bottom, left, right } = scene.layout;
+  return (
+    <g>
+      {(scene.signs ?? []).map(({ x, label }) => {
+        const width = estimateTextWidth(label, 12);
+        const middle = Math.min(Math.max(x, left + width / 2), right - width / 2);
+        return (
+          <g key={label}>
+            <line x1={x} x2={x} y1={top - 6} y2={bottom} stroke="var(--color-edge)" strokeDasharray="14 3 2 3" />
+            <text x={middle} y={top - 10} textAnchor="middle" fill="var(--color-ink)">
+              {label}
+            </text>
+          </g>
+        );
+      })}
+    </g>
+  );
 }
 
 function DimensionLine({ band, layout, y }: { band: Band; layout: DrawingLayout; y: number }) {

@@ -1,7 +1,7 @@
 // One drawing at one size, as SVG: the tolerance scheme with its curves and worst points. Works without script.
 import { memo, useId } from "react";
-import { BreakMarks, Frame, FrequencyAxis, Grid, LevelAxis, PassbandSigns } from "./drawing-frame";
-import { CurveNames, PanelCurves } from "./drawing-curves";
+import { BreakMarks, Frame, FrequencyAxis, FrequencySigns, Grid, LevelAxis, PassbandSigns } from "./drawing-frame";
+import { CurveNames, PanelCurves, UncertaintyAreas } from "./drawing-curves";
 import { PanelMarks } from "./drawing-marks";
 import { HatchPattern, PanelWalls, WallHandles, WallNumbers } from "./drawing-walls";
 import type { DrawingScene, PanelScene } from "./scene";
@@ -11,10 +11,13 @@ interface DrawingSvgProps {
   readonly title: string;
   readonly description: string;
   readonly selectedId?: string | undefined;
+  /** The selected wall can be dragged. @default true */
+  readonly handles?: boolean;
 }
 
 /** A composed drawing. Scales with its box; made at the size of its box, its type is 12 px. Kept while a readout moves over it. */
-export const DrawingSvg = memo(function DrawingSvg({ scene, title, description, selectedId }: DrawingSvgProps) {
+export const DrawingSvg = memo(function DrawingSvg(props: DrawingSvgProps) {
+  const { scene, title, description, selectedId, handles = true } = props;
   const id = useId();
   const { layout, panels } = scene;
   return (
@@ -26,6 +29,7 @@ export const DrawingSvg = memo(function DrawingSvg({ scene, title, description, 
       width="100%"
       height="100%"
       fontSize={12}
+      data-figure=""
       className="block tabular-nums"
     >
       <title id={`${id}-title`}>{title}</title>
@@ -41,6 +45,8 @@ export const DrawingSvg = memo(function DrawingSvg({ scene, title, description, 
           <Grid layout={layout} panel={panel.layout} />
           <Frame panel={panel.layout} />
           <PanelWalls scene={panel} idPrefix={id} selectedId={selectedId} />
+          <UncertaintyAreas scene={panel} clipId={clipId(id, panel)} />
+          <FrequencySigns scene={panel} />
         </g>
       ))}
       <PassbandSigns layout={layout} />
@@ -50,7 +56,7 @@ export const DrawingSvg = memo(function DrawingSvg({ scene, title, description, 
           <LevelAxis layout={layout} panel={panel.layout} />
           <PanelCurves scene={panel} clipId={clipId(id, panel)} />
           <WallNumbers scene={panel} selectedId={selectedId} />
-          <WallHandles scene={panel} selectedId={selectedId} />
+          {handles ? <WallHandles scene={panel} selectedId={selectedId} /> : null}
           <CurveNames scene={panel} />
           <PanelMarks scene={panel} />
         </g>

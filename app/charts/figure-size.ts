@@ -36,3 +36,20 @@ export function useFigureWidths(): MeasuredFigure {
   }, []);
   return { deskRef, phoneRef, widths };
 }
+
+/** Measures one box; undefined before the page runs. */
+export function useBoxWidth(): { readonly ref: RefObject<HTMLDivElement | null>; readonly width: number | undefined } {
+  const ref = useRef<HTMLDivElement>(null);
+  const [width, setWidth] = useState<number>();
+  useEffect(() => {
+    const box = ref.current;
+    if (!box) return;
+    const observer = new ResizeObserver(() => {
+      const measured = drawable(box.clientWidth);
+      if (measured) setWidth(measured);
+    });
+    observer.observe(box);
+    return () => observer.disconnect();
+  }, []);
+  return { ref, width };
+}

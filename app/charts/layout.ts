@@ -4,7 +4,7 @@ import { fullRange, frequencyTicks, type FrequencyTicks } from "./frequency-rang
 import { breakLevelFor, createLevelScale, roundedBottom, stretchesByDefault, type LevelScale } from "./level-scale";
 import { levelOn, limitExtent, type Point } from "./limit-outline";
 import type { DrawingProps, Panel, TraceSeries, Wall } from "./types";
-import { largestLimit, shiftLimit } from "./walls";
+import { largestLimit, passbands, shiftLimit } from "./walls";
 
 export interface Box {
   readonly left: number;
@@ -14,12 +14,16 @@ export interface Box {
 }
 
 export interface PanelLayout extends Box {
-  readonly panel: Panel;
+  /** Of a drawing a `Panel`; plots of other figures name their own. */
+  readonly panel: string;
+  /** Beside the axis, "Loss S21, dB". */
+  readonly title: string;
   readonly level: LevelScale;
 }
 
 /** A wall where it lies on this drawing: a relative limit has moved down by its reference. */
-export interface DrawnWall extends Wall {
+export interface DrawnWall extends Omit<Wall, "panel"> {
+  readonly panel: string;
   /** dB a relative limit counts from; 0 for an absolute one. */
   readonly reference: number;
 }
@@ -35,6 +39,8 @@ export interface DrawingLayout {
   readonly panels: readonly PanelLayout[];
   readonly frequency: FrequencyTicks;
   readonly walls: readonly DrawnWall[];
+  /** Hz; marked above the upper panel where they lie within the window. */
+  readonly passbands: readonly Band[];
   readonly toX: (frequency: number) => number;
   readonly toFrequency: (x: number) => number;
 }
@@ -47,6 +53,8 @@ export const DESK_ASPECT = 0.8;
 
 const DESK_MARGINS = { left: 60, right: 20, top: 40, bottom: 46 };
 const PHONE_MARGINS = { left: 44, right: 12, top: 34, bottom: 46 };
+/** px over a compact drawing, which has no dimension lines. */
+const COMPACT_TOP = { desk: 12, phone: 34 };
 const PANEL_GAP = 26;
 /** Share of the height between the margins that the S21 panel takes. */
 const TRANSMISSION_SHARE = 0.7;
@@ -54,21 +62,24 @@ const TRANSMISSION_SHARE = 0.7;
 const EMPTY_BOTTOM = { transmission: 60, match: 30 };
 const EMPTY_RANGE: Band = [1e9, 2e9];
 
-type LayoutProps = Pick<DrawingProps, "walls" | "traces" | "stretched" | "width" | "height" | "phone" | "window">;
+type LayoutProps = Pick<
+  DrawingProps,
+  "walls" | "traces" | "stretched" | "width" | "height" | "phone" | "window" | "compact"
+>;
 
 /** Lays a drawing out; px with the origin at its upper left corner. */
 export function layoutDrawing(props: LayoutProps): DrawingLayout {
   const phone = props.phone ?? false;
   const width = props.width ?? (phone ? PHONE_WIDTH : DESK_WIDTH);
   const height = props.height ?? (phone ? PHONE_HEIGHT : Math.round(width * DESK_ASPECT));
-  const margins = phone ? PHONE_MARGINS : DESK_MARGINS;
+  const margins = marginsOf(phone, props.compact);
   const traces = props.traces ?? [];
   const walls = props.walls.map((wall) => atReference(wall, traces));
   const full = fullRange(walls, traces) ?? EMPTY_RANGE;
   const window = props.window ?? full;
-  const left = margins.left;
-  const right = width - margins.right;
   const boxes = panelBoxes(margins.top, height - margins.bottom, needsMatch(walls, traces));
+  const axis = frequencyAxis(window, width, margins);
+  const { left, right } = axis;
   return {
     width,
     height,
@@ -76,18 +87,44 @@ export function layoutDrawing(props: LayoutProps): DrawingLayout {
     window,
     full,
     walls,
+    passbands: props.compact ? [] : passbands(props.walls),
     panels: boxes.map(({ panel, top, bottom }) => ({
       panel,
+      title: panelTitle(panel, phone),
       left,
       right,
       top,
       bottom,
       level: panelScale(panel, walls, traces, [top, bottom], props.stretched),
     })),
-    frequency: frequencyTicks(window, right - left),
-    toX: (frequency) => left + ((frequency - window[0]) / (window[1] - window[0])) * (right - left),
-    toFrequency: (x) => window[0] + ((x - left) / (right - left)) * (window[1] - window[0]),
+    frequency: axis.frequency,
+    toX: axis.toX,
+    toFrequency: axis.toFrequency,
   };
+}
+
+/** px around the panels of a figure. */
+export function marginsOf(phone: boolean, compact = false) {
+  const margins = phone ? PHONE_MARGINS : DESK_MARGINS;
+  return compact ? { ...margins, top: phone ? COMPACT_TOP.phone : COMPACT_TOP.desk } : margins;
+}
+
+/** The frequency axis between the side margins of a figure. */
+export function frequencyAxis(window: Band, width: number, margins: { readonly left: number; readonly right: number }) {
+  const left = margins.left;
+  const right = width - margins.right;
+  return {
+    left,
+    right,
+    frequency: frequencyTicks(window, right - left),
+    toX: (frequency: number) => left + ((frequency - window[0]) / (window[1] - window[0])) * (right - left),
+    toFrequency: (x: number) => window[0] + ((x - left) / (right - left)) * (window[1] - window[0]),
+  };
+}
+
+function panelTitle(panel: Panel, phone: boolean): string {
+  if (panel === "transmission") return "Loss S21, dB";
+  return phone ? "Return loss, dB" : "Return loss S11, S22, dB";
 }
 
 /** Points of a curve in Hz and dB. */
@@ -147,7 +184,7 @@ function transmissionReach(largest: number | undefined, traces: readonly TraceSe
 }
 
 /** A relative limit counts from the least loss of the reported curve within its reference band; from 0 without one. */
-function atReference(wall: Wall, traces: readonly TraceSeries[]): DrawnWall {
+function atReference(wall: Wall, traces: readonly TraceSeries[]): Wall & DrawnWall {
   if (!wall.relativeTo) return { ...wall, reference: 0 };
   const reported = traces.filter((trace) => trace.parameter === "s21");
   const trace = reported.find((series) => series.emphasis === "worst") ?? reported[0];

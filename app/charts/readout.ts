@@ -32,9 +32,17 @@ export function readingName(trace: TraceSeries, traces: readonly TraceSeries[]):
   return alike.length > 1 && trace.label !== parameter ? `${trace.label} ${parameter}` : parameter;
 }
 
+/** Of the sweeps of one measurement the first that has data there. */
+function oneOfEach(readings: readonly Reading[]): Reading[] {
+  return [...new Set(readings.map(({ name }) => name))].flatMap((name) => {
+    const alike = readings.filter((reading) => reading.name === name);
+    return alike.find(({ level }) => !Number.isNaN(level)) ?? alike.slice(0, 1);
+  });
+}
+
 /** "1.9800 GHz: S21 1.20 dB, S11 16.4 dB". */
 export function readoutWords(traces: readonly TraceSeries[], frequency: number): string {
-  const readings = readingsAt(traces, frequency).map(({ name, level }) =>
+  const readings = oneOfEach(readingsAt(traces, frequency)).map(({ name, level }) =>
     Number.isNaN(level) ? `${name} no data` : `${name} ${formatLevel(level)} dB`,
   );
   return readings.length > 0 ? `${formatFrequency(frequency)}: ${readings.join(", ")}` : formatFrequency(frequency);

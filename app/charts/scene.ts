@@ -19,7 +19,7 @@ export interface LineStyle {
 }
 
 export interface Curve {
-  readonly series: TraceSeries;
+  readonly series: Pick<TraceSeries, "id" | "label" | "emphasis">;
   readonly points: readonly Pixel[];
   readonly style: LineStyle;
   /** Where its name stands; absent for the thin lines behind, and where there is no room. */
@@ -35,8 +35,17 @@ export interface Mark {
   readonly plate?: Box;
 }
 
+/** An upright line at a frequency, with a word over the frame. */
+export interface FrequencySign {
+  readonly x: number;
+  readonly label: string;
+}
+
 export interface PanelScene {
   readonly layout: PanelLayout;
+  /** Closed outlines of uncertainty bands, under the curves. */
+  readonly areas?: readonly (readonly Pixel[])[];
+  readonly signs?: readonly FrequencySign[];
   readonly walls: readonly WallShape[];
   readonly curves: readonly Curve[];
   readonly stretches: readonly (readonly Pixel[])[];
@@ -51,7 +60,7 @@ export interface DrawingScene {
   readonly listed: readonly WorstPoint[];
 }
 
-const SERIES_STYLES: readonly LineStyle[] = [
+export const SERIES_STYLES: readonly LineStyle[] = [
   { colour: "ink", width: 1.75 },
   { colour: "signal", width: 1.75, dashes: "7 3" },
   { colour: "quiet", width: 1.75, dashes: "14 3 2 3" },
@@ -62,8 +71,9 @@ const OTHER_STYLE: LineStyle = { colour: "edge", width: 1 };
 /** Composes a drawing; pure, the same on the server and in the browser. */
 export function composeDrawing(props: DrawingProps): DrawingScene {
   const layout = layoutDrawing(props);
+  const isPlated = !layout.phone && !props.compact;
   const candidates = (props.worstPoints ?? []).filter((point) => point.panel && isReached(point)).slice(0, MOST_PLATES);
-  const panels = layout.panels.map((panel) => composePanel(panel, layout, props, layout.phone ? [] : candidates));
+  const panels = layout.panels.map((panel) => composePanel(panel, layout, props, isPlated ? candidates : []));
   const plated = new Set(panels.flatMap((panel) => panel.marks.filter((mark) => mark.plate).map((mark) => mark.point)));
   return { layout, panels, listed: (props.worstPoints ?? []).filter((point) => !plated.has(point)) };
 }
@@ -91,11 +101,13 @@ function curvesOf(panel: PanelLayout, layout: DrawingLayout, traces: readonly Tr
   const here = traces.filter((trace) => panelOf(trace.parameter) === panel.panel && trace.frequency.length > 0);
   const many = here.some((trace) => trace.emphasis === "other");
   const reported = here.filter((trace) => trace.emphasis === "worst");
+  // The sweeps of one measurement bear one label, and are drawn as one curve.
+  const labels = [...new Set(reported.map(({ label }) => label))];
   // Thin lines first: the reported ones lie over them.
   return [...here.filter((trace) => trace.emphasis === "other"), ...reported].map((series) => ({
     series,
     points: toPixels(visiblePoints(tracePoints(series), layout), panel, layout),
-    style: series.emphasis === "other" ? OTHER_STYLE : seriesStyle(reported.indexOf(series), many),
+    style: series.emphasis === "other" ? OTHER_STYLE : seriesStyle(labels.indexOf(series.label), many),
   }));
 }
 
@@ -105,7 +117,7 @@ function seriesStyle(index: number, many: boolean): LineStyle {
 }
 
 /** The points within the window, and one beyond on either side. */
-function visiblePoints(points: readonly Point[], { window }: DrawingLayout): Point[] {
+export function visiblePoints(points: readonly Point[], { window }: Pick<DrawingLayout, "window">): Point[] {
   return points.filter((point, index) => {
     const before = points[index - 1]?.[0] ?? point[0];
     const after = points[index + 1]?.[0] ?? point[0];
@@ -155,7 +167,7 @@ function marksOf(panel: PanelLayout, layout: DrawingLayout, points: readonly Wor
     });
 }
 
-function placeMarks(
+export function placeMarks(
   marks: readonly Mark[],
   plated: readonly WorstPoint[],
   panel: PanelLayout,
@@ -174,7 +186,7 @@ function placeMarks(
 }
 
 /** Whether a point has a place on a drawing. */
-function isReached(point: WorstPoint): boolean {
+export function isReached(point: WorstPoint): boolean {
   return Number.isFinite(point.frequency) && Number.isFinite(point.value);
 }
 
@@ -183,19 +195,25 @@ function plateWidth(point: WorstPoint): number {
   return Math.ceil(Math.max(phrase, estimateTextWidth(valuePhrase(point), 12)) + 24);
 }
 
-function nameCurves(
+const isNamedAs = (one: Curve["series"], other: Curve["series"]): boolean =>
+  one.label === other.label && one.emphasis === other.emphasis;
+
+/** Gives the reported curves their names, where there is room. */
+export function nameCurves(
   curves: readonly Curve[],
   envelopes: readonly Envelope[],
   walls: readonly WallShape[],
   taken: readonly Box[],
   panel: PanelLayout,
-  layout: DrawingLayout,
+  layout: Pick<DrawingLayout, "width">,
+  others: readonly Envelope[] = [],
 ): Curve[] {
   const areas = walls.flatMap((wall) => wall.parts.map((part) => envelopeOf(part.area, layout.width)));
   const bounds = { left: panel.left + 4, right: panel.right - 4, top: panel.top + 4, bottom: panel.bottom - 4 };
   const reported = curves.flatMap((curve, index) => {
     const envelope = envelopes[index];
-    return curve.series.emphasis === "worst" && envelope ? [{ curve, envelope }] : [];
+    const isFirst = curves.findIndex(({ series }) => isNamedAs(series, curve.series)) === index;
+    return isFirst && curve.series.emphasis === "worst" && envelope ? [{ curve, envelope }] : [];
   });
   const places = placeNames(
     reported.map(({ curve, envelope }) => ({
@@ -204,7 +222,7 @@ function nameCurves(
       curve: envelope,
       column: ENVELOPE_COLUMN,
     })),
-    { boxes: taken, curves: [...envelopes, ...areas] },
+    { boxes: taken, curves: [...envelopes, ...areas, ...others] },
   );
   return curves.map((curve) => {
     const name = places[reported.findIndex((candidate) => candidate.curve === curve)];

@@ -1,10 +1,10 @@
 // Measured curves over the drawing, to be explored: readout, zoom, even or stretched scale, a table of the values.
-import { useMemo, useState } from "react";
-import { Button } from "~/components/button";
+import { useMemo, useRef, useState } from "react";
 import { formatBand } from "~/components/format";
 import type { Band } from "~/rf/index";
 import { DrawingSvg } from "./drawing-svg";
 import { FigureBox } from "./figure-box";
+import { FigureDownload, FigureSwitch, FigureToolbar } from "./figure-tools";
 import { useFigureWidths } from "./figure-size";
 import { fullRange, passbandWindow } from "./frequency-range";
 import { PHONE_HEIGHT } from "./layout";
@@ -16,10 +16,17 @@ import type { DrawingProps, TraceFigureProps } from "./types";
 import { describeDrawing, scaleWords } from "./words";
 import { WorstPointList } from "./worst-point-list";
 
+/** "Stretched | Even": the level scale of the S21 panel. */
+export const LEVEL_SCALES = [
+  { name: "Stretched", value: true },
+  { name: "Even", value: false },
+] as const;
+
 /** A figure that keeps its height while its curves are on their way, and works as a drawing without script. */
 export function TraceFigure(props: TraceFigureProps) {
   const { walls, traces } = props;
   const { widths, deskRef, phoneRef } = useFigureWidths();
+  const figure = useRef<HTMLElement>(null);
   const all = fullRange(walls, traces);
   const passband = all ? passbandWindow(walls, all) : undefined;
   const [window, setWindow] = useState<Band | undefined>(props.initialView === "passband" ? passband : undefined);
@@ -46,37 +53,27 @@ export function TraceFigure(props: TraceFigureProps) {
   );
   const level = desk.panels[0]?.layout.level;
   return (
-    <figure className="m-0" aria-busy={traces === undefined}>
-      <div className="mb-2 flex flex-wrap items-center gap-x-1 gap-y-2 print-hidden">
-        <output
-          aria-live="polite"
-          className="min-h-11 content-center text-13 tabular-nums max-tablet:w-full tablet:min-w-0 tablet:flex-1"
-        >
-          {readoutLine(props, readout, window)}
-        </output>
-        {passband ? (
-          <Button kind="plain" type="button" disabled={!traces} onClick={() => zoom(passband)}>
-            Passband
-          </Button>
-        ) : null}
-        <Button kind="plain" type="button" disabled={!traces} onClick={() => zoom(undefined)}>
-          Full
-        </Button>
-        <Button
-          kind="plain"
-          type="button"
-          disabled={!traces}
-          aria-expanded={tableOpen}
-          onClick={() => setTableOpen(!tableOpen)}
-        >
-          Table
-        </Button>
-        <ScaleSwitch stretched={level?.breakLevel !== undefined} onChange={setStretched} />
-      </div>
+    <figure ref={figure} className="m-0" aria-busy={traces === undefined}>
+      <FigureToolbar
+        readout={readoutLine(props, readout, window)}
+        waiting={!traces}
+        parts={[...(passband ? [{ name: "Passband", window: passband }] : []), { name: "Full", window: undefined }]}
+        onWindow={zoom}
+        tableOpen={tableOpen}
+        onTable={setTableOpen}
+      >
+        <FigureSwitch
+          label="Level scale"
+          choices={LEVEL_SCALES}
+          value={level?.breakLevel !== undefined}
+          onChange={setStretched}
+        />
+      </FigureToolbar>
       <FigureBox widths={widths} deskRef={deskRef} phoneRef={phoneRef} desk={picture(desk)} phone={picture(phone)} />
       <figcaption className="flex flex-wrap gap-x-6 pt-2 text-13 text-quiet">
         {props.caption ? <span>{props.caption}</span> : null}
         <span>{scaleWords(level?.breakLevel)}</span>
+        <FigureDownload figure={figure} name={props.title} waiting={!traces} />
       </figcaption>
       <WorstPointList points={desk.listed} className="max-tablet:hidden" />
       <WorstPointList points={phone.listed} className="tablet:hidden" />
@@ -108,29 +105,4 @@ function readoutLine({ traces }: TraceFigureProps, readout: number | undefined, 
   if (!traces) return "Loading curves";
   if (readout !== undefined) return readoutWords(traces, readout);
   return window ? formatBand(window) : "Point at a curve, or use the arrow keys";
-}
-
-/** "Stretched | Even": the level scale of the S21 panel. */
-function ScaleSwitch({ stretched, onChange }: { stretched: boolean; onChange: (stretched: boolean) => void }) {
-  const choices = [
-    { name: "Stretched", value: true },
-    { name: "Even", value: false },
-  ];
-  return (
-    <div role="group" aria-label="Level scale" className="inline-flex rounded-field tablet:ms-2 border border-edge">
-      {choices.map(({ name, value }) => (
-        <button
-          key={name}
-          type="button"
-          aria-pressed={stretched === value}
-          onClick={() => onChange(value)}
-          className={`min-h-7 px-3 text-13 pointer-coarse:min-h-11 ${
-            stretched === value ? "bg-ink font-semibold text-leaf" : "text-quiet"
-          }`}
-        >
-          {name}
-        </button>
-      ))}
-    </div>
-  );
 }

@@ -2,6 +2,7 @@
 import { memo } from "react";
 import { formatLevel, formatNumber } from "~/components/format";
 import type { Band } from "~/rf/index";
+import { FigureTable } from "./figure-table";
 import { frequencyUnit } from "./frequency-range";
 import { readingName, readingsAt } from "./readout";
 import type { TraceSeries } from "./types";
@@ -21,44 +22,15 @@ export const TraceTable = memo(function TraceTable({ traces, window }: TraceTabl
   const reported = traces.filter((trace) => trace.emphasis === "worst");
   const rows = tableFrequencies(reported, window);
   return (
-    <div
-      className="mt-3 max-h-[420px] overflow-auto border border-rule bg-leaf px-4"
-      tabIndex={0}
-      role="region"
-      aria-label="Measured values"
-    >
-      <table className="w-full text-13 tabular-nums">
-        <caption className="py-2 text-left text-12 text-quiet">
-          {rows.length} points of the part shown, linear in dB between samples
-        </caption>
-        <thead>
-          <tr className="text-12 text-quiet">
-            <th scope="col" className="sticky top-0 bg-leaf py-2 text-left font-normal">
-              Frequency, {unit.name}
-            </th>
-            {reported.map((trace) => (
-              <th key={trace.id} scope="col" className="sticky top-0 bg-leaf py-2 text-right font-normal">
-                {readingName(trace, reported)}, dB
-              </th>
-            ))}
-          </tr>
-        </thead>
-        <tbody>
-          {rows.map((frequency) => (
-            <tr key={frequency} className="border-t border-rule">
-              <th scope="row" className="py-1 text-left font-normal">
-                {formatNumber(frequency / unit.hertz, unit.name === "GHz" ? 4 : 3)}
-              </th>
-              {readingsAt(reported, frequency).map((reading) => (
-                <td key={reading.id} className="py-1 text-right">
-                  {formatLevel(reading.level)}
-                </td>
-              ))}
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </div>
+    <FigureTable
+      label="Measured values"
+      caption={`${rows.length} points of the part shown, linear in dB between samples`}
+      heads={[`Frequency, ${unit.name}`, ...reported.map((trace) => `${readingName(trace, reported)}, dB`)]}
+      rows={rows.map((frequency) => [
+        formatNumber(frequency / unit.hertz, unit.name === "GHz" ? 4 : 3),
+        ...readingsAt(reported, frequency).map(({ level }) => formatLevel(level)),
+      ])}
+    />
   );
 });
 

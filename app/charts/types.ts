@@ -83,6 +83,8 @@ export interface DrawingProps {
   readonly phone?: boolean | undefined;
   /** Hz, the part of the frequency axis shown; absent: all that walls and traces span. */
   readonly window?: Band | undefined;
+  /** A low drawing beside another: no dimension lines above it and no plates. */
+  readonly compact?: boolean | undefined;
 }
 
 /** One line's margin on a common scale, such as percent of the limit. */

@@ -1,6 +1,6 @@
 // A wall on the sheet: its outline, edge, sides, fade and the place of its number, all in px.
 import { clipOutline, limitOutline, type Point } from "./limit-outline";
-import type { Box, DrawingLayout, PanelLayout } from "./layout";
+import type { Box, DrawingLayout, DrawnWall, PanelLayout } from "./layout";
 import { estimateTextWidth, meetsEnvelope, overlaps, type Envelope } from "./boxes";
 import type { Wall } from "./types";
 
@@ -33,7 +33,7 @@ export interface WallSide {
 }
 
 export interface WallShape {
-  readonly wall: Wall;
+  readonly wall: DrawnWall;
   readonly parts: readonly WallPart[];
   readonly edge: readonly Pixel[];
   readonly sides: readonly WallSide[];
@@ -72,12 +72,12 @@ export function wallShapes(layout: DrawingLayout, panel: PanelLayout, curves: re
   return shapes;
 }
 
-function isCut(wall: Wall, { window }: DrawingLayout): boolean {
+function isCut(wall: DrawnWall, { window }: DrawingLayout): boolean {
   return wall.band[0] < window[0] || wall.band[1] > window[1];
 }
 
 /** The limit in px within the window, with a corner where the level scale bends. */
-function edgeOf(wall: Wall, layout: DrawingLayout, panel: PanelLayout): Pixel[] {
+function edgeOf(wall: DrawnWall, layout: DrawingLayout, panel: PanelLayout): Pixel[] {
   const outline = clipOutline(limitOutline(wall.limit, wall.band), layout.window);
   const bent = panel.level.breakLevel === undefined ? outline : withLevel(outline, panel.level.breakLevel);
   const edge = bent.map(([frequency, level]) => ({
@@ -159,7 +159,7 @@ function sidesOf(
   end: number,
   layout: DrawingLayout,
   panel: PanelLayout,
-  wall: Wall,
+  wall: DrawnWall,
 ): WallSide[] {
   const first = edge[0];
   const last = edge[edge.length - 1];

@@ -1,4 +1,4 @@
-// Draws one scene of the charts, named by the address: ?scene=drawing|many|figure|strips.
+// Draws one scene of the charts, named by the address: ?scene=drawing|many|figure|strips|scales|smith|delay.
 import { createRoot } from "react-dom/client";
 import "~/app.css";
 import { DecisionStrip } from "~/charts/decision-strip";
@@ -6,6 +6,7 @@ import { Drawing } from "~/charts/drawing";
 import { MarginStrip, MarginStripScale } from "~/charts/margin-strip";
 import { TraceFigure } from "~/charts/trace-figure";
 import { wallsFromRequirements } from "~/charts/walls";
+import { DelayScene, ScalesScene, SmithScene } from "./curves";
 import { many, requirements, single, worstPoints } from "./invented";
 
 const walls = wallsFromRequirements(requirements);
@@ -50,6 +51,12 @@ function Scene() {
       return <TraceFigure walls={walls} title="Measured traces" />;
     case "strips":
       return <Strips />;
+    case "scales":
+      return <ScalesScene />;
+    case "smith":
+      return <SmithScene />;
+    case "delay":
+      return <DelayScene />;
     default:
       return (
         <Drawing

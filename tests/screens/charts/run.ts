@@ -14,7 +14,7 @@ const options = {
   resolve: { alias: [{ find: /^~\//, replacement: path.resolve("app") + "/" }] },
   build: { outDir: path.join(output, "build"), emptyOutDir: true, assetsInlineLimit: 0 },
 };
-const scenes = (process.argv[2] ?? "drawing,walls,even,many,figure,strips").split(",");
+const scenes = (process.argv[2] ?? "drawing,walls,even,many,figure,strips,scales,smith,delay").split(",");
 const themes = (process.argv[3] ?? "light,dark").split(",");
 
 await build(options);
