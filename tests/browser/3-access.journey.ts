@@ -178,7 +178,7 @@ function steps(world: JourneyWorld): Step[] {
           if (standing.kind !== "id") continue;
           const { rule } = standing;
           const owner = standing.for === "buyer" ? owners.buyer : owners.supplier;
-          const actor = address.pattern.endsWith("/traces") ? owners.buyer : owner;
+          const actor = /^\/api\/.*\/(traces|curves)$/.test(address.pattern) ? owners.buyer : owner;
           const attempt: Try = rule.postOnly ? { method: "POST", post: rule.post ?? {} } : { method: "GET" };
           const { status } = await walk.ask(actor, addressOf(address.pattern, walk.realId(rule.id)), attempt);
           const what = `${address.pattern} for ${actor.name}: ${status}`;

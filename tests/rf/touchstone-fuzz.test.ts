@@ -28,7 +28,7 @@ test("20,000 mutated example files are read to finite numbers or refused with a 
   // The mutations are neither all harmless nor all fatal.
   expect(totals.read).toBeGreaterThanOrEqual(FILES / 5);
   expect(totals.refused).toBeGreaterThanOrEqual(FILES / 5);
-});
+}, 180_000);
 
 test("long runs of one byte, the worst case of a careless scanner, are dealt with at once", () => {
   const started = performance.now();
