@@ -3,8 +3,8 @@ import { adviseMargin } from "./advice.ts";
 import { withAdvice } from "./assess-levels.ts";
 import { unreached, type Assessment, type Frame } from "./assessment.ts";
 import type { Requirement } from "./contract.ts";
-import { coverageOf, segmentsWithin } from "./coverage.ts";
-import { crossingsAt, peakIndex, type Crossings } from "./crossings.ts";
+import { coverageOf } from "./coverage.ts";
+import type { Crossings } from "./crossings.ts";
 import { formatFigure, formatLevel } from "./describe.ts";
 import { bandOf } from "./frequency.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
@@ -101,22 +101,21 @@ function assessCrossings(
   assess: (frame: Frame, first: MovedCrossings, second: MovedCrossings) => Assessment,
 ): Assessment {
   const { curves, setup } = sweeping;
-  const { frequency } = curves;
-  const sweep = bandOf(frequency);
+  const sweep = bandOf(curves.frequency);
   const within = line.within === undefined ? sweep : sweeping.testBand(line.within);
   const searched = within ?? line.within ?? sweep;
   const common = { band: searched, standing: false, tolerance: 0 };
   const nothing: Frame = { ...common, covered: [], missing: [searched] };
   if (!curves.isMeasured("s21")) return unreached(limit, nothing, notMeasuredReason("S21"));
-  const loss = curves.loss("s21");
   const searchStep = line.within === undefined ? undefined : line.maxStep;
-  const frame: Frame = { ...common, ...coverageOf(segmentsWithin(frequency, loss, searched, searchStep), searched) };
+  const frame: Frame = { ...common, ...coverageOf(curves.segments(searched, searchStep), searched) };
   if (within === undefined || frame.missing.length > 0) return unreached(limit, frame);
 
-  const peak = peakIndex(frequency, loss, searched);
-  if (peak < 0 || loss[peak] === Infinity) return unreached(limit, frame, "There is no peak within the search band.");
+  const peak = curves.peakIndex(searched);
+  if (peak < 0 || curves.lossWithin("s21", peak, peak)[peak] === Infinity)
+    return unreached(limit, frame, "There is no peak within the search band.");
   const shift = levelUncertainty(setup);
-  const at = (level: number) => crossingsAt(frequency, loss, peak, level, line.maxStep);
+  const at = (level: number) => curves.crossings(peak, level, line.maxStep);
   const crossingsOf = (level: number): MovedCrossings => {
     const read = at(level);
     return shift === 0

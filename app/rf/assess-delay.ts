@@ -5,10 +5,11 @@ import { assessSpread, statedEnds } from "./assess-spread.ts";
 import { withAdvice } from "./assess-levels.ts";
 import { unreached, type Assessment, type Frame } from "./assessment.ts";
 import type { Band, Requirement, Series } from "./contract.ts";
-import { segmentsWithin, valueBetween, type Segment } from "./coverage.ts";
-import { readingsOf, type Readings } from "./curves.ts";
+import type { Curves } from "./curves.ts";
+import { isHole, samplesAround, segmentsWithin, valueBetween } from "./coverage.ts";
 import { formatFigure } from "./describe.ts";
 import { bandOf, locate } from "./frequency.ts";
+import { readingsOf, type Readings } from "./readings.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 
 type Line<K extends Requirement["kind"]> = Extract<Requirement, { readonly kind: K }>;
@@ -49,13 +50,10 @@ function delayReadings(
 ): Readings | undefined {
   if (!curves.isMeasured("s21")) return undefined;
   const { frequency } = curves;
-  const phase = curves.phase();
-  const sweep = bandOf(frequency);
-  const runs = segmentsWithin(frequency, phase, sweep, line.maxStep);
   const delay =
     line.aperture === undefined
-      ? { frequency, value: delayOfNeighbours(frequency, phase, runs) }
-      : delayOverAperture(frequency, phase, runs, band, line.aperture);
+      ? { frequency, value: delayOfNeighbours(curves, band, line.maxStep) }
+      : delayOverAperture(frequency, curves.phase(), band, line.aperture, line.maxStep);
   return readingsOf(
     delay.frequency,
     delay.value,
@@ -64,17 +62,21 @@ function delayReadings(
   );
 }
 
-/** Central differences over the neighbours, one-sided at the ends of a run; s, NaN where a run is a lone sample. */
-function delayOfNeighbours(frequency: Series, phase: Series, runs: readonly Segment[]): Series {
-  const delay = new Float64Array(frequency.length).fill(NaN);
-  for (const { first, last } of runs) {
-    if (last === first) continue;
-    for (let index = first; index <= last; index += 1) {
-      const below = Math.max(first, index - 1);
-      const above = Math.min(last, index + 1);
-      const turns = ((phase[above] as number) - (phase[below] as number)) / DEGREES_PER_TURN;
-      delay[index] = -turns / ((frequency[above] as number) - (frequency[below] as number));
-    }
+/**
+ * Central differences over the neighbours, one-sided beside a hole and at the ends of the sweep; s, NaN at a lone sample.
+ * Only the samples that the band is read from are computed, the others are NaN.
+ */
+function delayOfNeighbours(curves: Curves, band: Band, maxStep = Infinity): Series {
+  const { frequency, points } = curves;
+  const [first, last] = samplesAround(frequency, band);
+  const phase = curves.phaseWithin(first - 1, last + 1);
+  const delay = new Float64Array(points).fill(NaN);
+  for (let index = first; index <= last; index += 1) {
+    const below = index === 0 || isHole(frequency, phase, index - 1, maxStep) ? index : index - 1;
+    const above = index === points - 1 || isHole(frequency, phase, index, maxStep) ? index : index + 1;
+    if (below === above) continue;
+    const turns = ((phase[above] as number) - (phase[below] as number)) / DEGREES_PER_TURN;
+    delay[index] = -turns / ((frequency[above] as number) - (frequency[below] as number));
   }
   return delay;
 }
@@ -83,10 +85,11 @@ function delayOfNeighbours(frequency: Series, phase: Series, runs: readonly Segm
 function delayOverAperture(
   frequency: Series,
   phase: Series,
-  runs: readonly Segment[],
   band: Band,
   aperture: number,
+  maxStep: number | undefined,
 ): { readonly frequency: Series; readonly value: Series } {
+  const runs = segmentsWithin(frequency, phase, bandOf(frequency), maxStep);
   const edges = band.filter((hz, index) => band.indexOf(hz) === index && !locate(frequency, hz).exact);
   const grid = Float64Array.from([...frequency, ...edges]).sort();
   const value = new Float64Array(grid.length).fill(NaN);

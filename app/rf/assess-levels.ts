@@ -3,9 +3,9 @@ import { adviseLargestLoss, adviseLeastLoss, adviseMargin, adviseReturnLoss, typ
 import { assessPoints, leastReading, type PointwiseLine } from "./assess-points.ts";
 import { isReached, unreached, type Assessment, type Frame } from "./assessment.ts";
 import type { Band, Limit, Requirement } from "./contract.ts";
-import { readingsOf, type Readings } from "./curves.ts";
 import { formatLevel } from "./describe.ts";
 import { limitAt } from "./limits.ts";
+import { readingsOf, type Readings } from "./readings.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 import {
   isAtFloor,

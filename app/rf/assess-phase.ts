@@ -3,7 +3,7 @@ import { adviseMargin } from "./advice.ts";
 import { LEVEL_TOLERANCE, withAdvice } from "./assess-levels.ts";
 import { unreached, type Assessment, type Frame } from "./assessment.ts";
 import type { Band, Requirement, Series } from "./contract.ts";
-import { coverageOf, segmentsWithin } from "./coverage.ts";
+import { coverageOf, samplesAround, segmentsWithin } from "./coverage.ts";
 import { formatFigure } from "./describe.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 import { WorstPoint } from "./worst-point.ts";
@@ -18,7 +18,7 @@ export function assessPhaseLinearity(
   const common = { band, standing: false, tolerance: LEVEL_TOLERANCE };
   const nothing: Frame = { ...common, covered: [], missing: [band] };
   if (!curves.isMeasured("s21")) return unreached(line.max, nothing, notMeasuredReason("S21"));
-  const phase = curves.phase();
+  const phase = curves.phaseWithin(...samplesAround(curves.frequency, band));
   const segments = segmentsWithin(curves.frequency, phase, band, line.maxStep);
   const frame: Frame = { ...common, ...coverageOf(segments, band) };
   const part = segments[0];

@@ -1,11 +1,12 @@
 // Assessments of a spread: ripple, and the variation of the group delay.
 import { adviseMargin } from "./advice.ts";
+import { FAR } from "./assess-points.ts";
 import { unreached, type Assessment, type Frame } from "./assessment.ts";
 import { LEVEL_TOLERANCE, differenceReadings, withAdvice } from "./assess-levels.ts";
 import type { Band, Requirement } from "./contract.ts";
-import { coverageOf, segmentsWithin, type Segment } from "./coverage.ts";
-import type { Readings } from "./curves.ts";
+import { coverageOf, type Segment } from "./coverage.ts";
 import { formatFigure } from "./describe.ts";
+import type { Readings } from "./readings.ts";
 import { extentOf, forEachWindow, spreadOf } from "./spread.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 import { isAtFloor, peakNoiseFloor, transmissionEnds, transmissionTerms, type Ends } from "./uncertainty.ts";
@@ -61,7 +62,7 @@ export function statedEnds(spread: number, uncertainty: number): Ends {
 /** The worst spread of readings over a band or its windows, and the largest value that has part in it. */
 export function assessSpread(readings: Readings, line: SpreadLine): { assessment: Assessment; largest: number } {
   const { band, max, tolerance } = line;
-  const segments = segmentsWithin(readings.frequency, readings.value, band, line.maxStep);
+  const segments = readings.segments(band, line.maxStep);
   const frame: Frame = { band, standing: true, tolerance, ...coverageOf(segments, band) };
   const whole = extentOf(readings, segments, tolerance);
   if (whole === undefined) return { assessment: unreached(max, frame), largest: NaN };
@@ -77,8 +78,11 @@ export function assessSpread(readings: Readings, line: SpreadLine): { assessment
 }
 
 /**
- * Adds the windows that can matter. The ends of a spread lie above and below it by amounts that grow with both of its
- * values, so the amounts at the band's extremes bound those of every window, and most windows need no ends.
+ * Adds the windows that can matter, by themselves or by their ends.
+ *
+ * An end lies the further from a value the larger the value is. So the higher end of a window's spread lies above it by no
+ * more than the distances of both ends at the band's largest value, and the lower one below it by no less than those at the
+ * band's least: what the ends of a spread from a value to itself are.
  */
 function addWindows(
   worst: WorstPoint,
@@ -88,15 +92,20 @@ function addWindows(
   whole: { readonly largest: number; readonly least: number },
 ): void {
   const { band, max, window, tolerance, endsOf } = line;
-  const widening = endsOf(whole.largest, whole.least)[1] - spreadOf(whole);
-  const isBounded = Number.isFinite(widening);
-  const slack = (isBounded ? 2 * widening : Infinity) + 2 * tolerance;
+  const mostAbove = endsOf(whole.largest, whole.largest)[1];
+  const leastBelow = endsOf(whole.least, whole.least)[1];
+  const far = FAR * tolerance;
   let widest = -Infinity;
+  let lowest = -Infinity;
+  let highest = -Infinity;
   forEachWindow(readings, segments, band, window, (extent) => {
     const spread = spreadOf(extent);
-    if (spread < widest - slack) return;
-    widest = Math.max(widest, spread);
+    const isNarrow = spread < widest - far && spread + mostAbove < highest - far;
+    if (isNarrow && Math.max(0, spread - leastBelow) < lowest - far) return;
     const [low, high] = endsOf(extent.largest, extent.least);
+    widest = Math.max(widest, spread);
+    lowest = Math.max(lowest, low);
+    highest = Math.max(highest, high);
     worst.add(extent.frequency, spread, max, low, high);
   });
 }

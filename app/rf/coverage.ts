@@ -23,17 +23,11 @@ export interface Coverage {
  * The stretches of a band that a sweep reaches. A step wider than `maxStep` is a hole, and a sample whose value is NaN
  * is no sample; nothing is extrapolated. A lone sample between holes is a segment of no width.
  *
- * @param values one per sample
+ * @param values one per sample; the frequencies themselves where every sample has a value
  * @param maxStep Hz; without it only the ends of the sweep and absent samples are holes
  */
 export function segmentsWithin(frequency: Series, values: Series, band: Band, maxStep = Infinity): Segment[] {
-  const lower = locate(frequency, band[0]);
-  const upper = locate(frequency, band[1]);
-  const firstInside = lower.index;
-  const lastInside = upper.exact ? upper.index : upper.index - 1;
-  const begin = Math.max(0, lower.exact ? firstInside : firstInside - 1);
-  const end = Math.min(frequency.length - 1, upper.index);
-
+  const { begin, end, firstInside, lastInside } = samplesOf(frequency, band);
   const segments: Segment[] = [];
   for (let start = begin; start <= end;) {
     const stop = endOfRun(frequency, values, start, end, maxStep);
@@ -50,16 +44,48 @@ export function segmentsWithin(frequency: Series, values: Series, band: Band, ma
   return segments;
 }
 
+interface SamplesOfBand {
+  readonly firstInside: number;
+  readonly lastInside: number;
+  /** The same with the neighbours that an edge between two samples is interpolated from. */
+  readonly begin: number;
+  readonly end: number;
+}
+
+function samplesOf(frequency: Series, band: Band): SamplesOfBand {
+  const lower = locate(frequency, band[0]);
+  const upper = locate(frequency, band[1]);
+  return {
+    firstInside: lower.index,
+    lastInside: upper.exact ? upper.index : upper.index - 1,
+    begin: Math.max(0, lower.exact ? lower.index : lower.index - 1),
+    end: Math.min(frequency.length - 1, upper.index),
+  };
+}
+
+/** First and last sample that a band is read from: those inside and those its edges lie beside. */
+export function samplesAround(frequency: Series, band: Band): readonly [first: number, last: number] {
+  const { begin, end } = samplesOf(frequency, band);
+  return [begin, end];
+}
+
 /** Last index of the unbroken run of samples that begins at `start`. */
 function endOfRun(frequency: Series, values: Series, start: number, end: number, maxStep: number): number {
   if (Number.isNaN(values[start])) return start;
+  // The frequencies stand for values where none is absent.
+  if (values === frequency && maxStep === Infinity) return end;
   let stop = start;
-  while (stop < end && !Number.isNaN(values[stop + 1])) {
-    const reach = (frequency[stop] as number) + maxStep;
-    if ((frequency[stop + 1] as number) > reach && !sameFrequency(frequency[stop + 1] as number, reach)) break;
-    stop += 1;
-  }
+  if (maxStep === Infinity) while (stop < end && !Number.isNaN(values[stop + 1])) stop += 1;
+  else while (stop < end && !isHole(frequency, values, stop, maxStep)) stop += 1;
   return stop;
+}
+
+/** True where the step from the sample `below` to the next is a hole: that one has no value, or lies too far. */
+export function isHole(frequency: Series, values: Series, below: number, maxStep: number): boolean {
+  if (Number.isNaN(values[below]) || Number.isNaN(values[below + 1])) return true;
+  if (maxStep === Infinity) return false;
+  const reach = (frequency[below] as number) + maxStep;
+  return (frequency[below + 1] as number) > reach && !sameFrequency(frequency[below + 1] as number, reach);
 }
 
 /** What a list of segments covers of a band. A lone sample covers nothing, unless the band is that one frequency. */

@@ -1,64 +1,50 @@
-// The peak of a passband and the frequencies where it has fallen by a level, searched outwards.
-import type { Band, Series } from "./contract.ts";
-import { segmentsWithin } from "./coverage.ts";
-import { bandOf } from "./frequency.ts";
+// The frequencies where a passband has fallen by a level from its peak, searched outwards.
+import { isHole } from "./coverage.ts";
+import type { Series } from "./contract.ts";
 
 /** Hz, below and above the peak; NaN on a side that never crosses, or not before a hole. */
 export type Crossings = readonly [lower: number, upper: number];
 
-/** Index of the sample with the least loss within a band, the lowest of equals; -1 where the band holds no sample. */
-export function peakIndex(frequency: Series, loss: Series, within: Band): number {
-  let peak = -1;
-  for (const { first, last } of segmentsWithin(frequency, loss, within)) {
-    for (let index = first; index <= last; index += 1) {
-      if (peak < 0 || (loss[index] as number) < (loss[peak] as number)) peak = index;
-    }
-  }
-  return peak;
+/** Losses of a sweep's S21, computed where they are asked for. */
+interface Losses {
+  readonly frequency: Series;
+  readonly points: number;
+  readonly lossWithin: (parameter: "s21", first: number, last: number) => Series;
 }
 
+/** Samples whose losses are computed at once on the way outwards. */
+const STRIDE = 64;
+
 /**
- * First crossings outwards from the peak, linear in dB between samples. Beside a null, where the loss is infinite at
+ * First crossings of |S21| outwards from the peak, linear in dB between samples. Beside a null, where the loss is infinite at
  * once, the crossing lies at the last finite sample.
  *
+ * @param peak index of the sample with the least loss
  * @param level dB below the peak
  * @param maxStep Hz; a wider step is a hole that no search passes
  */
-export function crossingsAt(
-  frequency: Series,
-  loss: Series,
-  peak: number,
-  level: number,
-  maxStep = Infinity,
-): Crossings {
+export function crossingsAt(curves: Losses, peak: number, level: number, maxStep = Infinity): Crossings {
   if (level <= 0) return [NaN, NaN];
-  const sweep = bandOf(frequency);
-  const run = segmentsWithin(frequency, loss, sweep, maxStep).find(({ first, last }) => first <= peak && peak <= last);
-  if (run === undefined) return [NaN, NaN];
-  const target = (loss[peak] as number) + level;
-  return [
-    crossingTowards(frequency, loss, peak, target, -1, run.first),
-    crossingTowards(frequency, loss, peak, target, 1, run.last),
-  ];
+  return [crossingTowards(curves, peak, level, -1, maxStep), crossingTowards(curves, peak, level, 1, maxStep)];
 }
 
-function crossingTowards(
-  frequency: Series,
-  loss: Series,
-  peak: number,
-  target: number,
-  direction: 1 | -1,
-  end: number,
-): number {
-  for (let index = peak; index !== end; index += direction) {
+function crossingTowards(curves: Losses, peak: number, level: number, direction: 1 | -1, maxStep: number): number {
+  const { frequency, points } = curves;
+  const loss = curves.lossWithin("s21", peak, peak);
+  const target = (loss[peak] as number) + level;
+  for (let index = peak; index + direction >= 0 && index + direction < points; index += direction) {
+    const next = index + direction;
+    if ((index - peak) % STRIDE === 0) {
+      const farthest = index + direction * STRIDE;
+      curves.lossWithin("s21", Math.min(next, farthest), Math.max(next, farthest));
+    }
     const inner = loss[index] as number;
-    const outer = loss[index + direction] as number;
+    const outer = loss[next] as number;
+    if (outer < target && maxStep === Infinity) continue;
+    if (isHole(frequency, loss, Math.min(index, next), maxStep)) return NaN;
     if (outer < target) continue;
     const fraction = outer === Infinity ? 0 : (target - inner) / (outer - inner);
-    return (
-      (frequency[index] as number) +
-      ((frequency[index + direction] as number) - (frequency[index] as number)) * fraction
-    );
+    return (frequency[index] as number) + ((frequency[next] as number) - (frequency[index] as number)) * fraction;
   }
   return NaN;
 }

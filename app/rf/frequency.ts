@@ -10,7 +10,7 @@ export function sameFrequency(a: number, b: number): boolean {
 
 /** True where a lies below b by more than the tolerance. */
 export function isBelow(a: number, b: number): boolean {
-  return a < b && !sameFrequency(a, b);
+  return b - a > RELATIVE_TOLERANCE * Math.max(Math.abs(a), Math.abs(b));
 }
 
 /** Index of the first sample at or above a frequency; the number of samples if none is. */
@@ -32,13 +32,12 @@ export function firstAtOrAbove(frequency: Series, hz: number): number {
  */
 export function locate(frequency: Series, hz: number): { readonly index: number; readonly exact: boolean } {
   const above = firstAtOrAbove(frequency, hz);
-  const candidates = [above - 1, above].filter(
-    (index) => index >= 0 && index < frequency.length && sameFrequency(frequency[index] as number, hz),
-  );
-  if (candidates.length === 0) return { index: above, exact: false };
-  const distance = (index: number) => Math.abs((frequency[index] as number) - hz);
-  const nearest = candidates.reduce((best, index) => (distance(index) < distance(best) ? index : best));
-  return { index: nearest, exact: true };
+  const isAbove = above < frequency.length && sameFrequency(frequency[above] as number, hz);
+  const isBelowIt = above > 0 && sameFrequency(frequency[above - 1] as number, hz);
+  if (!isAbove && !isBelowIt) return { index: above, exact: false };
+  if (!isBelowIt) return { index: above, exact: true };
+  const isNearer = isAbove && (frequency[above] as number) - hz < hz - (frequency[above - 1] as number);
+  return { index: isNearer ? above : above - 1, exact: true };
 }
 
 /** The band from the first to the last sample, Hz. */

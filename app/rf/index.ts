@@ -32,3 +32,31 @@ export { MAX_POINTS, parseTouchstone } from "./touchstone.ts";
 export { TouchstoneError, type TouchstoneErrorCode } from "./touchstone-error.ts";
 export { complies, verdictRank, worstVerdict } from "./verdict.ts";
 export { CORE_VERSION } from "./version.ts";
+export { driftBetween, observedDrift, passbandCentre, type ObservedDrift } from "./observed-drift.ts";
+export {
+  jointShare,
+  LEAST_UNITS,
+  OUTLOOK_CONFIDENCE,
+  productionOutlook,
+  toleranceFactor,
+  type NoOutlookReason,
+  type ProductionOutlook,
+  type UnitMargin,
+} from "./production-outlook.ts";
+export {
+  placeOf,
+  placesOf,
+  temperatureOutlook,
+  type PlaceOutlook,
+  type TemperaturePlace,
+} from "./temperature-outlook.ts";
+export { matchUnits, type MatchedUnit, type Spread, type UnitMatching } from "./unit-matching.ts";
+export { delayCurve, type DelayCurve } from "./delay-curve.ts";
+export { impedanceOf, openImpedance, standingWaveRatio, terminatedImpedance } from "./input-impedance.ts";
+export {
+  isPointwise,
+  marginCurve,
+  type MarginCurve,
+  type MarginStretch,
+  type PointwiseRequirement,
+} from "./margin-curve.ts";

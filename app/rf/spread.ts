@@ -1,9 +1,9 @@
 // Largest spread (maximum minus minimum) over a band, or over windows sliding continuously within it.
-import type { Band } from "./contract.ts";
+import type { Band, Series } from "./contract.ts";
 import { valueBetween, type Segment } from "./coverage.ts";
-import { firstAtOrAbove, sameFrequency } from "./frequency.ts";
-import type { Readings } from "./curves.ts";
+import { firstAtOrAbove, isBelow } from "./frequency.ts";
 import { forEachReading } from "./assess-points.ts";
+import type { Readings } from "./readings.ts";
 
 /** The largest and the least value of one window, and where the window or the largest value lies. */
 export interface Extent {
@@ -38,7 +38,8 @@ export function spreadOf({ largest, least }: { readonly largest: number; readonl
 /**
  * Visits the extent of every window that can be the worst: those with an edge on a sample or on an edge of the band.
  * Between such windows each end changes linearly, so no other can exceed both neighbours. Linear cost: two monotone
- * queues of sample indices. What lies in a hole is left out of a window.
+ * queues of sample indices, whose front is the largest or the least of the window. What lies in a hole is left out of a
+ * window.
  *
  * @param window Hz, not wider than the band
  * @param visit is handed one object, changed from call to call
@@ -50,116 +51,96 @@ export function forEachWindow(
   window: number,
   visit: (extent: Extent) => void,
 ): void {
-  const { frequency, value } = readings;
-  const highest = new MonotoneQueue(value, (later, earlier) => later >= earlier);
-  const lowest = new MonotoneQueue(value, (later, earlier) => later <= earlier);
-  const startReader = new EdgeReader(readings, segments);
-  const endReader = new EdgeReader(readings, segments);
+  const { frequency } = readings;
+  const first = segments[0]?.first ?? frequency.length;
+  const last = segments.at(-1)?.last ?? -1;
+  const values = readings.valuesWithin(first - 1, last + 1);
+  const highest = new Int32Array(Math.max(0, last - first + 1));
+  const lowest = new Int32Array(highest.length);
+  const atStart = new EdgeReader(frequency, values, segments);
+  const atEnd = new EdgeReader(frequency, values, segments);
+  const starts = startsOfWindows(frequency, first, last, band, window);
   const extent: Extent = { largest: NaN, least: NaN, frequency: NaN };
 
-  let incoming = segments[0]?.first ?? frequency.length;
-  const beyond = segments.at(-1)?.last ?? -1;
-  for (const start of windowStarts(readings, segments, band, window)) {
+  let incoming = first;
+  let highestFront = 0;
+  let highestEnd = 0;
+  let lowestFront = 0;
+  let lowestEnd = 0;
+  for (let place = 0; place < starts.length; place += 1) {
+    const start = starts[place] as number;
     const end = start + window;
-    while (
-      incoming <= beyond &&
-      !((frequency[incoming] as number) > end && !sameFrequency(frequency[incoming] as number, end))
-    ) {
-      if (!Number.isNaN(value[incoming])) {
-        highest.push(incoming);
-        lowest.push(incoming);
-      }
-      incoming += 1;
+    for (; incoming <= last && !isBelow(end, frequency[incoming] as number); incoming += 1) {
+      const value = values[incoming] as number;
+      if (Number.isNaN(value)) continue;
+      while (highestEnd > highestFront && value >= (values[highest[highestEnd - 1] as number] as number))
+        highestEnd -= 1;
+      while (lowestEnd > lowestFront && value <= (values[lowest[lowestEnd - 1] as number] as number)) lowestEnd -= 1;
+      highest[highestEnd++] = incoming;
+      lowest[lowestEnd++] = incoming;
     }
-    const isGone = (index: number) =>
-      (frequency[index] as number) < start && !sameFrequency(frequency[index] as number, start);
-    const startValue = startReader.at(start);
-    const endValue = endReader.at(end);
-    extent.largest = greaterOf(greaterOf(highest.best(isGone), startValue), endValue);
-    extent.least = lesserOf(lesserOf(lowest.best(isGone), startValue), endValue);
+    while (highestFront < highestEnd && isBelow(frequency[highest[highestFront] as number] as number, start)) {
+      highestFront += 1;
+    }
+    while (lowestFront < lowestEnd && isBelow(frequency[lowest[lowestFront] as number] as number, start)) {
+      lowestFront += 1;
+    }
+    const startValue = atStart.at(start);
+    const endValue = atEnd.at(end);
+    const largest = highestFront < highestEnd ? (values[highest[highestFront] as number] as number) : NaN;
+    const least = lowestFront < lowestEnd ? (values[lowest[lowestFront] as number] as number) : NaN;
+    extent.largest = greaterOf(greaterOf(largest, startValue), endValue);
+    extent.least = lesserOf(lesserOf(least, startValue), endValue);
     extent.frequency = start;
     if (!Number.isNaN(extent.largest)) visit(extent);
   }
 }
 
 /** Starts of the windows to look at, ascending: edges of the band, and windows with a sample at either end. */
-function* windowStarts(
-  readings: Readings,
-  segments: readonly Segment[],
-  band: Band,
-  window: number,
-): Generator<number> {
-  const { frequency } = readings;
+function startsOfWindows(frequency: Series, first: number, last: number, band: Band, window: number): Float64Array {
   const lastStart = band[1] - window;
-  const stop = segments.at(-1)?.last ?? -1;
-  let atStart = segments[0]?.first ?? frequency.length;
-  let atEnd = firstAtOrAbove(frequency, band[0] + window);
-  yield band[0];
+  let byStart = first;
+  let byEnd = firstAtOrAbove(frequency, band[0] + window);
+  const starts = new Float64Array(Math.max(0, last - byStart + 1) + Math.max(0, last - byEnd + 1) + 2);
+  starts[0] = band[0];
+  let count = 1;
   for (;;) {
-    const byStart = atStart <= stop ? (frequency[atStart] as number) : Infinity;
-    const byEnd = atEnd <= stop ? (frequency[atEnd] as number) - window : Infinity;
-    const next = Math.min(byStart, byEnd);
+    const sample = byStart <= last ? (frequency[byStart] as number) : Infinity;
+    const before = byEnd <= last ? (frequency[byEnd] as number) - window : Infinity;
+    const next = Math.min(sample, before);
     if (!(next < lastStart)) break;
-    if (next > band[0]) yield next;
-    if (byStart === next) atStart += 1;
-    if (byEnd === next) atEnd += 1;
+    if (next > band[0]) starts[count++] = next;
+    if (sample === next) byStart += 1;
+    if (before === next) byEnd += 1;
   }
-  if (lastStart > band[0]) yield lastStart;
+  if (lastStart > band[0]) starts[count++] = lastStart;
+  return starts.subarray(0, count);
 }
 
 /** Reads values at ascending frequencies; NaN in a hole. */
 class EdgeReader {
-  readonly #readings: Readings;
-  readonly #segments: readonly Segment[];
-  #segment = 0;
-  #above = 0;
+  private readonly frequency: Series;
+  private readonly values: Series;
+  private readonly segments: readonly Segment[];
+  private segment = 0;
+  private above: number;
 
-  constructor(readings: Readings, segments: readonly Segment[]) {
-    this.#readings = readings;
-    this.#segments = segments;
-    this.#above = Math.max(0, segments[0]?.first ?? 0);
+  constructor(frequency: Series, values: Series, segments: readonly Segment[]) {
+    this.frequency = frequency;
+    this.values = values;
+    this.segments = segments;
+    this.above = Math.max(0, segments[0]?.first ?? 0);
   }
 
   at(hz: number): number {
-    const { frequency, value } = this.#readings;
-    while (this.#segment < this.#segments.length - 1 && hz > (this.#segments[this.#segment]?.to ?? Infinity))
-      this.#segment += 1;
-    const part = this.#segments[this.#segment];
+    const { frequency, values, segments } = this;
+    while (this.segment < segments.length - 1 && hz > (segments[this.segment]?.to ?? Infinity)) this.segment += 1;
+    const part = segments[this.segment];
     if (part === undefined || hz < part.from || hz > part.to) return NaN;
-    while (this.#above < frequency.length && (frequency[this.#above] as number) < hz) this.#above += 1;
-    return frequency[this.#above] === hz
-      ? (value[this.#above] as number)
-      : valueBetween(frequency, value, this.#above - 1, hz);
-  }
-}
-
-/** Indices whose values fall (or rise) from front to back: the front is the extreme of a sliding window. */
-class MonotoneQueue {
-  readonly #values: Float64Array;
-  readonly #replaces: (later: number, earlier: number) => boolean;
-  readonly #indices: number[] = [];
-  #head = 0;
-
-  constructor(values: Float64Array, replaces: (later: number, earlier: number) => boolean) {
-    this.#values = values;
-    this.#replaces = replaces;
-  }
-
-  push(index: number): void {
-    const indices = this.#indices;
-    while (
-      indices.length > this.#head &&
-      this.#replaces(this.#values[index] as number, this.#values[indices.at(-1) as number] as number)
-    )
-      indices.pop();
-    indices.push(index);
-  }
-
-  /** The extreme value of what is not gone, NaN where nothing is left. */
-  best(isGone: (index: number) => boolean): number {
-    while (this.#head < this.#indices.length && isGone(this.#indices[this.#head] as number)) this.#head += 1;
-    const index = this.#indices[this.#head];
-    return index === undefined ? NaN : (this.#values[index] as number);
+    let { above } = this;
+    while (above < frequency.length && (frequency[above] as number) < hz) above += 1;
+    this.above = above;
+    return frequency[above] === hz ? (values[above] as number) : valueBetween(frequency, values, above - 1, hz);
   }
 }
 

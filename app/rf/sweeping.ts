@@ -1,7 +1,8 @@
 // One sweep as the assessments read it: its curves, its setup, and where a band from DC starts.
 import type { Band, Setup } from "./contract.ts";
-import { readingsOf, type Curves, type Readings } from "./curves.ts";
+import type { Curves } from "./curves.ts";
 import { isBelow } from "./frequency.ts";
+import { readingsOf, type Readings } from "./readings.ts";
 import { transmissionEnds, transmissionTerms } from "./uncertainty.ts";
 
 export function notMeasuredReason(parameter: string): string {

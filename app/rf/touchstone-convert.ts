@@ -4,7 +4,6 @@ import type { Series, Trace } from "./contract.ts";
 import { turnIntoParts } from "./touchstone-angle.ts";
 import { TouchstoneError } from "./touchstone-error.ts";
 import type { NumberFormat, Parameter } from "./touchstone-option-line.ts";
-import { SET_STRIDE } from "./touchstone-sets.ts";
 
 /** Four traces in the order 11, 21, 12, 22. */
 export type Matrix = readonly [Trace, Trace, Trace, Trace];
@@ -17,34 +16,24 @@ export function newTrace(length: number): Trace {
 }
 
 /**
- * One column of pairs as complex numbers.
+ * Real and imaginary parts in place of the numbers as written, from the sample `from` up to `to`.
  *
- * @param rows SET_STRIDE numbers a point
- * @param pair 0 to 3: which pair of the row
+ * @param first real parts, magnitudes or decibels
+ * @param second imaginary parts or angles in degrees
  */
-export function readPairs(rows: Float64Array, count: number, pair: number, format: NumberFormat): Trace {
-  const { re, im } = newTrace(count);
-  const offset = 1 + 2 * pair;
-  fillFromParts(rows, offset, re, im);
-  if (format === "DB") for (let k = 0; k < count; k += 1) re[k] = 10 ** ((re[k] as number) / 20);
-  if (format !== "RI") turnIntoParts(re, im);
-  return { re, im };
-}
-
-function fillFromParts(rows: Float64Array, offset: number, re: Series, im: Series): void {
-  for (let k = 0, at = offset; k < re.length; k += 1, at += SET_STRIDE) {
-    re[k] = rows[at] as number;
-    im[k] = rows[at + 1] as number;
-  }
+export function toParts(first: Series, second: Series, from: number, to: number, format: NumberFormat): void {
+  if (format === "RI") return;
+  if (format === "DB") for (let k = from; k < to; k += 1) first[k] = 10 ** ((first[k] as number) / 20);
+  turnIntoParts(first, second, from, to);
 }
 
 /** Refuses a number that overflowed on the way from decibels. */
-export function checkFinite(matrix: Matrix, lines: Uint32Array): void {
+export function checkFinite(matrix: Matrix, lineOf: (index: number) => number): void {
   for (const { re, im } of matrix) {
     for (let k = 0; k < re.length; k += 1) {
       if (Number.isFinite((re[k] as number) + (im[k] as number))) continue;
       const message = "A level too high for any number a computer keeps. Measure or export the point again.";
-      throw new TouchstoneError("not-finite", lines[k] as number, message);
+      throw new TouchstoneError("not-finite", lineOf(k), message);
     }
   }
 }
@@ -90,7 +79,11 @@ const SIGNS = {
  * @param matrix normalised, in the order 11, 21, 12, 22; overwritten
  * @throws TouchstoneError no-scattering where D is zero: an active network at its own resonance, or a wrong number
  */
-export function toScattering(matrix: Matrix, parameter: Exclude<Parameter, "S">, lines: Uint32Array): void {
+export function toScattering(
+  matrix: Matrix,
+  parameter: Exclude<Parameter, "S">,
+  lineOf: (index: number) => number,
+): void {
   const [n11, n21, n12, n22] = matrix;
   const signs = SIGNS[parameter];
   for (let k = 0; k < n11.re.length; k += 1) {
@@ -110,7 +103,7 @@ export function toScattering(matrix: Matrix, parameter: Exclude<Parameter, "S">,
     const denominatorIm = productIm - loopIm;
     const size = Math.hypot(denominatorRe, denominatorIm);
     const terms = Math.hypot(productRe, productIm) + Math.hypot(loopRe, loopIm);
-    if (!(size > SINGULAR * terms) || !Number.isFinite(terms)) throw noScattering(parameter, lines[k] as number);
+    if (!(size > SINGULAR * terms) || !Number.isFinite(terms)) throw noScattering(parameter, lineOf(k));
     const inverseRe = denominatorRe / size / size;
     const inverseIm = -denominatorIm / size / size;
     const put = (trace: Trace, sign: number, re: number, im: number) => {

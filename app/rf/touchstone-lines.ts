@@ -3,7 +3,7 @@
 import { TouchstoneError, type TouchstoneErrorCode } from "./touchstone-error.ts";
 import type { ReaderNotes } from "./touchstone-notes.ts";
 import { NumberScanner, OUT_OF_RANGE } from "./touchstone-number.ts";
-import { RowScanner } from "./touchstone-rows.ts";
+import { takeRows, type RowBlock, type RowSource } from "./touchstone-rows.ts";
 
 const TAB = 9;
 const NEWLINE = 10;
@@ -26,7 +26,7 @@ export class LineCursor {
   private lineStart = 0;
   private readonly bytes: Uint8Array;
   private readonly numbers: NumberScanner;
-  private readonly rows: RowScanner;
+  private readonly rows: RowSource;
   private readonly utf8 = new TextDecoder("utf-8", { fatal: true });
   private readonly latin1 = new TextDecoder("latin1");
 
@@ -34,7 +34,8 @@ export class LineCursor {
   constructor(bytes: Uint8Array, notes: ReaderNotes) {
     this.bytes = bytes;
     this.numbers = new NumberScanner(bytes);
-    this.rows = new RowScanner(bytes, this.numbers);
+    const words = new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength);
+    this.rows = { bytes: words, scanner: this.numbers, at: 0 };
     this.notes = notes;
   }
 
@@ -138,23 +139,14 @@ export class LineCursor {
   /**
    * Takes whole plain rows, one a line, from the cursor on; stops at the first line that needs care.
    *
-   * @param size numbers a row
+   * @param block filled from the place `first` up to `end`
    * @param firstShift power of ten that multiplies the first number of each row
    * @param last what the first number of the first row must exceed
-   * @param rows `stride` places a row, the first row at `base`
-   * @param room how many rows at most
    * @returns how many rows were taken
    */
-  readPlainRows(
-    size: number,
-    firstShift: number,
-    last: number,
-    rows: Float64Array,
-    base: number,
-    stride: number,
-    room: number,
-  ): number {
-    const taken = this.rows.take(this.at, size, firstShift, last, rows, base, stride, room);
+  readPlainRows(block: RowBlock, first: number, end: number, firstShift: number, last: number): number {
+    this.rows.at = this.at;
+    const taken = takeRows(this.rows, block, first, end, firstShift, last);
     if (taken === 0) return 0;
     this.at = this.rows.at;
     this.line += taken;

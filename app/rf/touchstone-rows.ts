@@ -1,182 +1,218 @@
 // The quick way through plain rows: whole sets on one line of plain decimals, which nearly all files consist of.
 
 import type { NumberScanner } from "./touchstone-number.ts";
-import { POWERS_OF_TEN } from "./touchstone-quotient.ts";
 
 const TAB = 9;
 const NEWLINE = 10;
 const RETURN = 13;
 const SPACE = 32;
 const PLUS = 43;
-const MINUS = 45;
+const COMMA = 44;
 const POINT = 46;
 const ZERO = 48;
+const MINUS = 45;
 const LOWER_CASE = 32;
 const LETTER_E = 101;
-/** Digits that always fit in the 53 bits of a double, so that one operation with a power of ten rounds once. */
-const EXACT_DIGITS = 15;
+const TWO_POW_53 = 9007199254740992;
 const LARGEST_EXACT_POWER = 22;
 /** Bytes that one quick number looks at, at most: below this many before the end the careful scanner reads. */
 const LOOK_AHEAD = 64;
+const MOST_EXPONENT_DIGITS = 4;
 /** Four bytes at once: what is left of "0000", and what shows a byte above 9. */
 const FOUR_ZEROS = 0x30303030;
 const FOUR_SIXES = 0x06060606;
 const HIGH_NIBBLES = 0xf0f0f0f0 | 0;
 
-/** By first byte: whether it is a sign, and what it multiplies the number with. */
-const SIGN_LENGTH = new Uint8Array(256);
-SIGN_LENGTH[PLUS] = 1;
-SIGN_LENGTH[MINUS] = 1;
-const SIGN_FACTOR = new Float64Array(256).fill(1);
-SIGN_FACTOR[MINUS] = -1;
+/** The exact powers of ten, and from place 32 on their negatives. Here and not imported: a constant of one's own is quicker. */
+const NEGATIVE = 32;
+const POWERS = new Float64Array(2 * NEGATIVE);
+for (let power = 0; power <= LARGEST_EXACT_POWER; power += 1) {
+  POWERS[power] = Number(`1e${power}`);
+  POWERS[NEGATIVE + power] = -Number(`1e${power}`);
+}
 
 /** The value of four digits less "0000", the first one in the lowest byte. */
-function valueOf(word: number): number {
+const valueOf = (word: number): number => {
   const pairs = word * 10 + (word >>> 8);
   return (pairs & 255) * 100 + ((pairs >>> 16) & 255);
+};
+
+const areDigits = (word: number): boolean => ((word | (word + FOUR_SIXES)) & HIGH_NIBBLES) === 0;
+
+/** Rows as they are taken, column after column. */
+export interface RowBlock {
+  /** Numbers a row. */
+  readonly size: number;
+  /** Rows that have room. */
+  readonly capacity: number;
+  /** `capacity` numbers a column. */
+  readonly numbers: Float64Array;
 }
 
-/** Which of four bytes less "0000" are above 9: right up to the first of them, 0 if all are digits. */
-function othersIn(word: number): number {
-  return (word | (word + FOUR_SIXES)) & HIGH_NIBBLES;
+/** Where rows are read from. */
+export interface RowSource {
+  readonly bytes: DataView;
+  /** Reads what the quick way does not. */
+  readonly scanner: NumberScanner;
+  at: number;
 }
 
-/** How many digits stand before the first other byte. */
-function digitsBefore(others: number): number {
-  return (31 - Math.clz32(others & -others)) >> 3;
-}
-
-export class RowScanner {
-  /** Position after the last row taken. */
-  at = 0;
-  private readonly bytes: Uint8Array;
-  private readonly words: DataView;
-  private readonly numbers: NumberScanner;
-
-  /** @param bytes must end with a line end */
-  constructor(bytes: Uint8Array, numbers: NumberScanner) {
-    this.bytes = bytes;
-    this.words = new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength);
-    this.numbers = numbers;
-  }
-
-  /**
-   * Takes rows of `size` numbers, blanks between them, with rising frequency. Stops before the first row that has
-   * anything else: a comment, a separator, another count, a wrong number; the caller reads that one with care.
-   *
-   * Four digits are read at once (D. Lemire, "Number parsing at a gigabyte per second", 2021, section 4, with words of
-   * 32 bits); up to 15 digits over or times an exact power of ten give the nearest double, all else goes through `scan`.
-   *
-   * @param start of the first row
-   * @param shift power of ten that multiplies the frequency
-   * @param last frequency before the first row, Hz
-   * @param rows `stride` places a row, the first row at `base`
-   * @param room how many rows at most
-   * @returns how many rows were taken
-   */
-  take(
-    start: number,
-    size: number,
-    shift: number,
-    last: number,
-    rows: Float64Array,
-    base: number,
-    stride: number,
-    room: number,
-  ): number {
-    const { bytes, words, numbers } = this;
-    const quickEnd = bytes.length - LOOK_AHEAD;
-    let at = start;
-    let rowStart = start;
-    let previous = last;
-    let taken = 0;
-    rows: while (taken < room && at < bytes.length) {
-      const rowBase = base + taken * stride;
-      for (let column = 0; column < size; column += 1) {
-        let byte = bytes[at] as number;
-        while (byte === SPACE || byte === TAB) byte = bytes[++at] as number;
-        const power = column === 0 ? shift : 0;
-        const numberStart = at;
-        if (at < quickEnd) {
-          const factor = SIGN_FACTOR[byte] as number;
-          at += SIGN_LENGTH[byte] as number;
-          const wholeStart = at;
-          // Digits before the point, then behind it; a full word goes on, the last one is shifted so that zeros lead.
-          let word = words.getInt32(at, true) ^ FOUR_ZEROS;
-          let others = othersIn(word);
-          let mantissa = 0;
-          while (others === 0 && at - wholeStart < EXACT_DIGITS) {
-            mantissa = mantissa * 10000 + valueOf(word);
-            at += 4;
-            word = words.getInt32(at, true) ^ FOUR_ZEROS;
-            others = othersIn(word);
-          }
-          let rest = digitsBefore(others);
-          word = (word << 8) << (24 - 8 * rest);
-          mantissa = mantissa * (POWERS_OF_TEN[rest & 3] as number) + valueOf(word);
-          at += rest;
-          let digits = at - wholeStart;
-          let scale = power;
-          byte = bytes[at] as number;
-          if (byte === POINT) {
-            const fractionStart = ++at;
-            word = words.getInt32(at, true) ^ FOUR_ZEROS;
-            others = othersIn(word);
-            while (others === 0 && at - fractionStart < EXACT_DIGITS) {
-              mantissa = mantissa * 10000 + valueOf(word);
-              at += 4;
-              word = words.getInt32(at, true) ^ FOUR_ZEROS;
-              others = othersIn(word);
-            }
-            rest = digitsBefore(others);
-            word = (word << 8) << (24 - 8 * rest);
-            mantissa = mantissa * (POWERS_OF_TEN[rest & 3] as number) + valueOf(word);
-            at += rest;
-            scale -= at - fractionStart;
-            digits += at - fractionStart;
-            byte = bytes[at] as number;
-          }
-          if ((byte | LOWER_CASE) === LETTER_E) {
-            const exponentSign = bytes[++at] as number;
-            at += SIGN_LENGTH[exponentSign] as number;
-            const exponentStart = at;
-            let exponent = 0;
-            let digit = (bytes[at] as number) - ZERO;
-            while (digit >= 0 && digit <= 9 && at - exponentStart < 4) {
-              exponent = exponent * 10 + digit;
-              digit = (bytes[++at] as number) - ZERO;
-            }
-            if (at === exponentStart) break rows;
-            scale += exponentSign === MINUS ? -exponent : exponent;
-            byte = bytes[at] as number;
-          }
-          if (
-            (byte === SPACE || byte === NEWLINE || byte === RETURN || byte === TAB) &&
-            digits > 0 &&
-            digits <= EXACT_DIGITS &&
-            scale >= -LARGEST_EXACT_POWER &&
-            scale <= LARGEST_EXACT_POWER
-          ) {
-            rows[rowBase + column] =
-              factor *
-              (scale < 0 ? mantissa / (POWERS_OF_TEN[-scale] as number) : mantissa * (POWERS_OF_TEN[scale] as number));
-            continue;
+/**
+ * Takes rows of numbers, blanks between them, with rising frequency, as far as the block has room. Stops before the first
+ * row that has anything else: a comment, a separator, another count, a wrong number; the caller reads that one with care.
+ *
+ * Four digits are read at once (D. Lemire, "Number parsing at a gigabyte per second", 2021, section 4, with words of
+ * 32 bits). A whole number below 2^53 over or times an exact power of ten gives the nearest double (W. D. Clinger, PLDI
+ * 1990), and digits that add up to more never round to less than 2^53. All else goes through `scan`: more than three digits
+ * before the point, more than fifteen behind it, D exponents, the last bytes of the file.
+ *
+ * What makes it quick: within a number hardly anything is repeated and nothing is called, for behind each loop the engine
+ * looks again at what it reads from; the sign, which follows no pattern, is arithmetic and no branch; `| 0` tells that a
+ * number has 32 bits, which would be checked otherwise; and this is a function of the module, for within a method the
+ * module's constants are none to the engine.
+ *
+ * @param source its `at`, where the first row starts, is moved behind the last one taken
+ * @param first place in the block of the first row
+ * @param end place behind the last one that may be filled
+ * @param shift power of ten that multiplies the frequency
+ * @param last frequency before the first row, Hz
+ * @returns how many rows were taken
+ */
+export function takeRows(
+  source: RowSource,
+  block: RowBlock,
+  first: number,
+  end: number,
+  shift: number,
+  last: number,
+): number {
+  const { bytes, scanner } = source;
+  const { numbers, size } = block;
+  const capacity = block.capacity | 0;
+  const length = bytes.byteLength | 0;
+  const quickEnd = length - LOOK_AHEAD;
+  const width = (size * capacity) | 0;
+  let at = source.at | 0;
+  let rowStart = at;
+  let previous = last;
+  let row = first | 0;
+  rows: while (row < end && at < length) {
+    let power = shift | 0;
+    for (let slot = row; slot < width; slot += capacity) {
+      let byte = bytes.getUint8(at);
+      if (byte === SPACE || byte === TAB) {
+        at = (at + 1) | 0;
+        byte = bytes.getUint8(at);
+        while (byte === SPACE || byte === TAB) byte = bytes.getUint8(++at);
+      }
+      const numberStart = at;
+      quick: if (at < quickEnd && byte >= PLUS && byte !== COMMA) {
+        const signed = (byte - POINT) >>> 31;
+        const negative = signed & (byte >> 2);
+        at = (at + signed) | 0;
+        let word = bytes.getInt32(at, true) ^ FOUR_ZEROS;
+        let mantissa = word & 255;
+        if (mantissa > 9) break quick;
+        // Up to three digits before the point, all from this word.
+        let next = (word >>> 8) & 255;
+        at = (at + 1) | 0;
+        if (next <= 9) {
+          mantissa = mantissa * 10 + next;
+          next = (word >>> 16) & 255;
+          at = (at + 1) | 0;
+          if (next <= 9) {
+            mantissa = mantissa * 10 + next;
+            next = word >>> 24;
+            at = (at + 1) | 0;
+            if (next <= 9) break quick;
           }
         }
-        at = numbers.scan(numberStart, power, rows, rowBase + column);
-        if (at < 0) break rows;
+        let scale = power;
+        if (next === (POINT ^ ZERO)) {
+          const fractionStart = (at + 1) | 0;
+          at = fractionStart;
+          word = bytes.getInt32(at, true) ^ FOUR_ZEROS;
+          if (areDigits(word)) {
+            mantissa = (Math.imul(mantissa, 10000) + valueOf(word)) | 0;
+            at = (at + 4) | 0;
+            word = bytes.getInt32(at, true) ^ FOUR_ZEROS;
+            if (areDigits(word)) {
+              mantissa = mantissa * 10000 + valueOf(word);
+              at = (at + 4) | 0;
+              word = bytes.getInt32(at, true) ^ FOUR_ZEROS;
+              if (areDigits(word)) {
+                mantissa = mantissa * 10000 + valueOf(word);
+                at = (at + 4) | 0;
+                word = bytes.getInt32(at, true) ^ FOUR_ZEROS;
+              }
+            }
+          }
+          // Up to three more.
+          next = word & 255;
+          if (next <= 9) {
+            let tail = next;
+            let tens = 10;
+            next = (word >>> 8) & 255;
+            at = (at + 1) | 0;
+            if (next <= 9) {
+              tail = tail * 10 + next;
+              tens = 100;
+              next = (word >>> 16) & 255;
+              at = (at + 1) | 0;
+              if (next <= 9) {
+                tail = tail * 10 + next;
+                tens = 1000;
+                next = word >>> 24;
+                at = (at + 1) | 0;
+              }
+            }
+            mantissa = mantissa * tens + tail;
+          }
+          scale = (scale + fractionStart - at) | 0;
+        }
+        byte = next ^ ZERO;
+        if ((byte | LOWER_CASE) === LETTER_E) {
+          const exponentSign = bytes.getUint8(++at);
+          if (exponentSign === MINUS || exponentSign === PLUS) at = (at + 1) | 0;
+          const exponentStart = at;
+          let exponent = 0;
+          next = bytes.getUint8(at) ^ ZERO;
+          while (next <= 9 && at - exponentStart < MOST_EXPONENT_DIGITS) {
+            exponent = exponent * 10 + next;
+            next = bytes.getUint8(++at) ^ ZERO;
+          }
+          if (at === exponentStart) break rows;
+          scale += exponentSign === MINUS ? -exponent : exponent;
+          byte = next ^ ZERO;
+        }
+        if (
+          (byte === SPACE || byte === NEWLINE || byte === RETURN || byte === TAB) &&
+          mantissa < TWO_POW_53 &&
+          scale >= -LARGEST_EXACT_POWER &&
+          scale <= LARGEST_EXACT_POWER
+        ) {
+          const sign = negative * NEGATIVE;
+          numbers[slot] =
+            scale < 0 ? mantissa / (POWERS[sign - scale] as number) : mantissa * (POWERS[sign + scale] as number);
+          power = 0;
+          continue;
+        }
       }
-      while (bytes[at] === SPACE || bytes[at] === TAB) at += 1;
-      if (bytes[at] === RETURN) at += 1;
-      const frequency = rows[rowBase] as number;
-      if (bytes[at] !== NEWLINE || numbers.fortranExponents > 0 || !(frequency > previous && frequency >= 0)) break;
-      previous = frequency;
-      at += 1;
-      rowStart = at;
-      taken += 1;
+      at = scanner.scan(numberStart, power, numbers, slot) | 0;
+      if (at < 0) break rows;
+      power = 0;
     }
-    numbers.fortranExponents = 0;
-    this.at = rowStart;
-    return taken;
+    while (bytes.getUint8(at) === SPACE || bytes.getUint8(at) === TAB) at = (at + 1) | 0;
+    if (bytes.getUint8(at) === RETURN) at = (at + 1) | 0;
+    if (at >= length || bytes.getUint8(at) !== NEWLINE || scanner.fortranExponents > 0) break;
+    const frequency = numbers[row] as number;
+    if (!(frequency > previous && frequency >= 0)) break;
+    previous = frequency;
+    at = (at + 1) | 0;
+    rowStart = at;
+    row += 1;
   }
+  scanner.fortranExponents = 0;
+  source.at = rowStart;
+  return row - first;
 }

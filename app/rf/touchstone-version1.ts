@@ -29,7 +29,8 @@ export function readVersion1(cursor: LineCursor, maxPoints: number, portsByName:
 
 class Version1Reader {
   private readonly cursor: LineCursor;
-  private readonly sets: SetStore;
+  private readonly maxPoints: number;
+  private sets: SetStore;
   private readonly portsByName: number | undefined;
   private options: Options | undefined;
   private assumedAt = 0;
@@ -42,7 +43,8 @@ class Version1Reader {
 
   constructor(cursor: LineCursor, maxPoints: number, portsByName: number | undefined) {
     this.cursor = cursor;
-    this.sets = new SetStore(cursor, SET_SIZE, maxPoints);
+    this.maxPoints = maxPoints;
+    this.sets = new SetStore(cursor, SET_SIZE, DEFAULT_OPTIONS, maxPoints);
     this.portsByName = portsByName;
   }
 
@@ -76,6 +78,7 @@ class Version1Reader {
       throw cursor.fail("reference-impedance", message, line);
     }
     this.options = options;
+    this.sets = new SetStore(cursor, SET_SIZE, options, this.maxPoints);
   }
 
   private assumeOptions(): Options {
@@ -88,15 +91,14 @@ class Version1Reader {
   private readSetLine(): void {
     const { cursor, sets, filled } = this;
     const options = this.options ?? this.assumeOptions();
-    if (filled === 0 && sets.takePlain(options.frequencyExponent)) {
+    if (filled === 0 && sets.takePlain()) {
       this.singleLine = true;
       return;
     }
     const start = cursor.position();
-    const base = sets.reserve();
     const first = filled === 0;
     const room = SET_SIZE - filled;
-    const count = cursor.readNumbers(sets.rows, base + filled, room, first ? options.frequencyExponent : 0);
+    const count = cursor.readNumbers(sets.set, filled, room, first ? options.frequencyExponent : 0);
     if (first) {
       if (count > SET_SIZE || count % 2 === 0) throw this.badFirstLine(count, start.line);
       this.setLine = start.line;
@@ -114,7 +116,7 @@ class Version1Reader {
   /** An odd row, or the end of the file, after an unfinished set: noise data, or an error. */
   private endUnfinished(nextCount: number, next?: LinePosition): void {
     const { cursor, sets } = this;
-    const frequency = sets.rows[sets.reserve()] as number;
+    const frequency = sets.set[0] as number;
     const isNoise = this.filled === NOISE_SIZE && this.singleLine && frequency <= sets.lastFrequency();
     if (!isNoise) throw this.unfinished(nextCount, frequency);
     this.filled = 0;

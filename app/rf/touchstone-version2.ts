@@ -49,7 +49,7 @@ class Version2Reader {
   constructor(cursor: LineCursor, maxPoints: number) {
     this.cursor = cursor;
     this.maxPoints = maxPoints;
-    this.sets = new SetStore(cursor, 9, maxPoints);
+    this.sets = new SetStore(cursor, 9, DEFAULT_OPTIONS, maxPoints);
   }
 
   read(): Body2 {
@@ -175,7 +175,8 @@ class Version2Reader {
       );
     }
     if (!this.seen.has("two port data order")) this.cursor.notes.add("default-data-order", line);
-    this.sets = new SetStore(this.cursor, this.symmetric ? 7 : 9, this.maxPoints);
+    const options = this.options ?? DEFAULT_OPTIONS;
+    this.sets = new SetStore(this.cursor, this.symmetric ? 7 : 9, options, this.maxPoints);
     this.place = "network";
   }
 
@@ -202,13 +203,12 @@ class Version2Reader {
   /** A set may go over any number of lines, but begins on its own (Touchstone 2.1, p. 14). */
   private readSetLine(): void {
     const { cursor, sets, filled } = this;
-    if (filled === 0 && sets.takePlain((this.options ?? DEFAULT_OPTIONS).frequencyExponent)) return;
+    if (filled === 0 && sets.takePlain()) return;
     const { line } = cursor;
     const size = this.symmetric ? 7 : 9;
     const room = size - filled;
-    const base = sets.reserve();
     const shift = filled === 0 ? (this.options ?? DEFAULT_OPTIONS).frequencyExponent : 0;
-    const count = cursor.readNumbers(sets.rows, base + filled, room, shift);
+    const count = cursor.readNumbers(sets.set, filled, room, shift);
     if (filled === 0) this.setLine = line;
     if (count > room) {
       const message = `${filled + count} numbers where a set has ${size}. Start each frequency on its own line.`;

@@ -1,11 +1,9 @@
 // Reads a two-port Touchstone file, version 1.0, 1.1, 2.0 or 2.1 (IBIS Open Forum), from its bytes.
 
-import type { Series, TwoPort } from "./contract.ts";
-import { checkFinite, normalise, readPairs, toScattering, type Matrix } from "./touchstone-convert.ts";
+import type { Trace, TwoPort } from "./contract.ts";
+import { checkFinite, normalise, toScattering, type Matrix } from "./touchstone-convert.ts";
 import { LineCursor } from "./touchstone-lines.ts";
 import { ReaderNotes } from "./touchstone-notes.ts";
-import type { Options } from "./touchstone-option-line.ts";
-import { SET_STRIDE } from "./touchstone-sets.ts";
 import { readSource } from "./touchstone-source.ts";
 import { readVersion1, type Body } from "./touchstone-version1.ts";
 import { readVersion2, type Body2 } from "./touchstone-version2.ts";
@@ -35,9 +33,10 @@ export function parseTouchstone(
     throw cursor.fail("no-data", "The file has no data. Export it again.", Math.max(1, cursor.line - 1));
   }
   const references = referencesOf(body);
-  const [s11, s21, s12, s22] = readMatrix(body, references);
+  const { frequency, pairs } = body.sets.series();
+  const [s11, s21, s12, s22] = readMatrix(body, pairs, references);
   return {
-    frequency: readFrequency(body),
+    frequency,
     s11,
     s21,
     s12,
@@ -76,34 +75,25 @@ function referencesOf(body: AnyBody): readonly [number, number] {
   return [first, second];
 }
 
-function readMatrix(body: AnyBody, references: readonly [number, number]): Matrix {
+function readMatrix(body: AnyBody, pairs: readonly Trace[], references: readonly [number, number]): Matrix {
   const { sets, options } = body;
-  const pairs = (pair: number) => readPairs(sets.rows, sets.count, pair, options.format);
+  const lineOf = (index: number) => sets.lineOf(index);
   const matrix = orderPairs(body, pairs);
-  checkFinite(matrix, sets.lines);
-  convert(matrix, options, references, body);
+  // Finite as written, and no other format makes a number larger.
+  if (options.format === "DB") checkFinite(matrix, lineOf);
+  if (options.parameter === "S") return matrix;
+  // Version 1 states Y, Z, G and H normalised to R, version 2 in ohm and siemens (Touchstone 2.1, pp. 8 and 29).
+  if (body.version !== "1") normalise(matrix, options.parameter, references);
+  toScattering(matrix, options.parameter, lineOf);
+  checkFinite(matrix, lineOf);
   return matrix;
 }
 
-function orderPairs(body: AnyBody, pairs: (pair: number) => Matrix[number]): Matrix {
-  if (body.version === "1") return [pairs(0), pairs(1), pairs(2), pairs(3)];
-  if (body.symmetric) return [pairs(0), pairs(1), pairs(1), pairs(2)];
-  if (body.order === "12_21") return [pairs(0), pairs(2), pairs(1), pairs(3)];
-  return [pairs(0), pairs(1), pairs(2), pairs(3)];
+function orderPairs(body: AnyBody, pairs: readonly Trace[]): Matrix {
+  const [first, second, third, fourth] = pairs as Matrix;
+  if (body.version === "1") return [first, second, third, fourth];
+  if (body.symmetric) return [first, second, copyOf(second), third];
+  return body.order === "12_21" ? [first, third, second, fourth] : [first, second, third, fourth];
 }
 
-/** Version 1 states Y, Z, G and H normalised to R, version 2 in ohm and siemens (Touchstone 2.1, pp. 8 and 29). */
-function convert(matrix: Matrix, options: Options, references: readonly [number, number], body: AnyBody): void {
-  const { parameter } = options;
-  if (parameter === "S") return;
-  if (body.version !== "1") normalise(matrix, parameter, references);
-  toScattering(matrix, parameter, body.sets.lines);
-  checkFinite(matrix, body.sets.lines);
-}
-
-function readFrequency({ sets }: AnyBody): Series {
-  const frequency = new Float64Array(sets.count);
-  // "-0" is legal to write; adding zero makes it plain.
-  for (let k = 0; k < sets.count; k += 1) frequency[k] = (sets.rows[k * SET_STRIDE] as number) + 0;
-  return frequency;
-}
+const copyOf = ({ re, im }: Trace): Trace => ({ re: re.slice(), im: im.slice() });

@@ -17,8 +17,8 @@ export class WorstPoint {
   lowerFrequency = NaN;
   upperFrequency = NaN;
   isEmpty = true;
-  private readonly isUpperLimit: boolean;
-  private readonly tolerance: number;
+  readonly isUpperLimit: boolean;
+  readonly tolerance: number;
   private reportedMargin = Infinity;
   private reportedLowerEnd = Infinity;
   private reportedUpperEnd = Infinity;

@@ -1,85 +1,36 @@
-// Times the core: reading 10,001 points against a plain split and against scikit-rf, scoring, checks, renormalising.
+// Times the core: reading beside a plain split and scikit-rf, its memory, scoring and its growth, a frame of live rescoring.
 import { execFileSync } from "node:child_process";
 import { mkdtempSync, readFileSync, rmSync, writeFileSync } from "node:fs";
-import { tmpdir } from "node:os";
+import { cpus, tmpdir } from "node:os";
 import path from "node:path";
 import { performance } from "node:perf_hooks";
-import { checkNetwork, evaluate, parseTouchstone, type Requirement, type Setup } from "../../app/rf/index";
-import type { Series, Trace, TwoPort } from "../../app/rf/contract";
+import type { TwoPort } from "../../app/rf/contract";
+import { checkNetwork, evaluate, parseTouchstone, prepare } from "../../app/rf/index";
 import { renormalise } from "../../app/rf/network";
+import { fresh, movedRequirements, refined, REQUIREMENTS, SETUP, splitOnly, writeSample } from "./samples";
+import { print, writeTable, type Row } from "./table";
 
 const POINTS = 10_001;
+const MANY_POINTS = 100_001;
 const WARM_UPS = 100;
+/** For what takes ten times as long: the code is warm from the small ones. */
+const FEW_WARM_UPS = 10;
 const RUNS = 9;
 /** Not the first python3 of the PATH: that one may have no scikit-rf. */
 const PYTHON = "/usr/bin/python3";
-const SPLIT_TIMES = 7;
-const SCIKIT_RF_TIMES = 10;
 const SCORED_FILE = "tests/reference/journey/wide-10001.s2p";
-const PASSBAND = [1.92e9, 1.98e9] as const;
-const ABOVE = [2.02e9, 2.2e9] as const;
-
-const REQUIREMENTS: readonly Requirement[] = [
-  { id: "1", kind: "insertion-loss", band: PASSBAND, max: 1.2 },
-  { id: "2", kind: "ripple", band: PASSBAND, max: 0.8 },
-  { id: "3", kind: "ripple", band: PASSBAND, max: 0.5, window: 5e6 },
-  { id: "4", kind: "rejection", band: [1.7e9, 1.88e9], min: 50 },
-  {
-    id: "5",
-    kind: "rejection",
-    band: ABOVE,
-    min: {
-      points: [
-        [2.02e9, 40],
-        [2.2e9, 60],
-      ],
-      scale: "linear",
-    },
-  },
-  { id: "6", kind: "return-loss", port: 1, band: PASSBAND, min: 15 },
-  { id: "7", kind: "return-loss", port: 2, band: PASSBAND, min: 15 },
-  { id: "8", kind: "reverse-isolation", band: ABOVE, min: 40 },
-  { id: "9", kind: "group-delay-variation", band: PASSBAND, max: 40e-9, window: 10e6 },
-  { id: "10", kind: "bandwidth", level: 3, min: 60e6 },
-  { id: "11", kind: "centre-frequency", level: 3, nominal: 1.95e9, tolerance: 2e6 },
-  { id: "12", kind: "shape-factor", levels: [3, 30], max: 2 },
-];
-const SETUP: Setup = {
-  transmission: 0.05,
-  noiseFloor: 110,
-  directivity: 40,
-  sourceMatch: 38,
-  loadMatch: 40,
-  tracking: 0.03,
-  groupDelay: 0.3e-9,
-};
-
-/** About 1 MB: GHz, magnitude and angle, with the digits analysers write. */
-function writeSample(): Uint8Array {
-  let state = 1;
-  const random = () => (state = (state * 16807) % 2147483647) / 2147483647;
-  const pair = () => `${random().toFixed(9)} ${(random() * 360 - 180).toFixed(6)}`;
-  const rows = Array.from(
-    { length: POINTS },
-    (_, k) => `${(1.7 + k * 0.00005).toFixed(9)} ${pair()} ${pair()} ${pair()} ${pair()}`,
-  );
-  return new TextEncoder().encode(["# GHz S MA R 50", ...rows, ""].join("\n"));
-}
-
-/** What the reading is measured against: lines, white space and `Number`, and nothing else. */
-function splitOnly(bytes: Uint8Array): number {
-  let sum = 0;
-  for (const line of new TextDecoder().decode(bytes).split("\n")) {
-    for (const word of line.split(/\s+/)) sum += Number(word);
-  }
-  return sum;
-}
+const DOUBLES_A_POINT = 9;
+const TRACES = 20;
+const FRAME_MS = 16;
+const MEGABYTE = 1e6;
 
 const median = (values: readonly number[]): number => [...values].sort((a, b) => a - b)[values.length >> 1] ?? NaN;
+const milliseconds = (value: number) => `${value.toFixed(value < 10 ? 2 : 1)} ms`;
+const megabytes = (bytes: number) => `${(bytes / MEGABYTE).toFixed(1)} MB`;
 
 /** Median milliseconds, once warm; each run gets an input of its own, made outside the clock. */
-function time<Input>(make: () => Input, run: (input: Input) => unknown): number {
-  for (let k = 0; k < WARM_UPS; k += 1) run(make());
+function time<Input>(make: () => Input, run: (input: Input) => unknown, warmUps = WARM_UPS): number {
+  for (let k = 0; k < warmUps; k += 1) run(make());
   return median(
     Array.from({ length: RUNS }, () => {
       const input = make();
@@ -90,85 +41,144 @@ function time<Input>(make: () => Input, run: (input: Input) => unknown): number 
   );
 }
 
-/** The same network in new memory, so that nothing kept of an earlier run can answer. */
-function fresh(network: TwoPort): TwoPort {
-  const copy = (series: Series) => series.slice();
-  const trace = ({ re, im }: Trace): Trace => ({ re: copy(re), im: copy(im) });
-  const { frequency, s11, s21, s12, s22 } = network;
-  return {
-    ...network,
-    frequency: copy(frequency),
-    s11: trace(s11),
-    s21: trace(s21),
-    s12: trace(s12),
-    s22: trace(s22),
-  };
-}
-
-function timeScikitRf(bytes: Uint8Array): number {
+/** What a program in another process prints about a file that holds these bytes, as JSON. */
+function askAbout(bytes: Uint8Array, program: string, parameters: (file: string) => readonly string[]): unknown {
   const folder = mkdtempSync(path.join(tmpdir(), "core-bench-"));
   try {
     const file = path.join(folder, "sample.s2p");
     writeFileSync(file, bytes);
-    const script = path.resolve("tests/bench/read_with_scikit_rf.py");
-    const printed = execFileSync(PYTHON, [script, file, String(RUNS)], {
-      encoding: "utf8",
-      stdio: ["ignore", "pipe", "ignore"],
-    });
-    return median(JSON.parse(printed) as number[]);
+    const printed = execFileSync(program, parameters(file), { encoding: "utf8", stdio: ["ignore", "pipe", "ignore"] });
+    return JSON.parse(printed) as unknown;
   } finally {
     rmSync(folder, { recursive: true, force: true });
   }
 }
 
-interface Row {
-  readonly name: string;
-  readonly milliseconds: number;
-  /** What is asked for, in words, and whether it is reached; left out where nothing is asked. */
-  readonly target?: string;
-  readonly reached?: boolean;
+function timeScikitRf(bytes: Uint8Array): number {
+  const script = path.resolve("tests/bench/read_with_scikit_rf.py");
+  return median(askAbout(bytes, PYTHON, (file) => [script, file, String(RUNS)]) as number[]);
 }
 
-function readingRows(): Row[] {
-  const bytes = writeSample();
+/** @param times how many times as long a plain split and scikit-rf are to take */
+function readingRows(points: number, times: readonly [split: number, scikitRf: number], warmUps: number): Row[] {
+  const bytes = writeSample(points);
+  const read = time(() => bytes, parseTouchstone, warmUps);
+  const against = (name: string, other: number, least: number): Row => ({
+    name: `the same by ${name}, ${milliseconds(other)}`,
+    figure: `${(other / read).toFixed(1)} times`,
+    target: `at least ${least} times`,
+    reached: other >= least * read,
+  });
+  return [
+    { name: `read ${points.toLocaleString("en-GB")} points, ${megabytes(bytes.length)}`, figure: milliseconds(read) },
+    against(
+      "split and Number",
+      time(() => bytes, splitOnly, Math.min(warmUps, FEW_WARM_UPS)),
+      times[0],
+    ),
+    against("scikit-rf", timeScikitRf(bytes), times[1]),
+  ];
+}
+
+/** The first reading of a process: nothing is compiled yet. */
+function coldRow(): Row {
+  const bytes = writeSample(POINTS);
   const begun = performance.now();
   parseTouchstone(bytes);
   const cold = performance.now() - begun;
-  const read = time(() => bytes, parseTouchstone);
-  const split = time(() => bytes, splitOnly);
-  const scikitRf = timeScikitRf(bytes);
-  const against = (name: string, other: number, times: number): Row => ({
-    name: `${name}, ${(other / read).toFixed(1)} times as long`,
-    milliseconds: other,
-    target: `${times} times as long`,
-    reached: other >= times * read,
-  });
-  return [
-    { name: `read ${(bytes.length / 1e6).toFixed(2)} MB, first time`, milliseconds: cold },
-    { name: "read, warm", milliseconds: read },
-    against("split and Number", split, SPLIT_TIMES),
-    against("scikit-rf", scikitRf, SCIKIT_RF_TIMES),
-  ];
+  return { name: `read ${POINTS.toLocaleString("en-GB")} points, first time`, figure: milliseconds(cold) };
 }
 
-function scoringRows(): Row[] {
-  const network = parseTouchstone(readFileSync(SCORED_FILE));
-  const make = () => fresh(network);
-  const bounded = (name: string, most: number, run: (input: TwoPort) => unknown): Row => {
-    const milliseconds = time(make, run);
-    return { name, milliseconds, target: `under ${most} ms`, reached: milliseconds < most };
+/** In a process of its own: what the resident set rises to while a file is read that is in memory already. */
+function memoryRow(): Row {
+  const script = path.resolve("tests/bench/memory.ts");
+  const asked = askAbout(writeSample(MANY_POINTS), process.execPath, (file) => [
+    "--expose-gc",
+    "--import",
+    "tsx",
+    script,
+    file,
+  ]);
+  const { points, fileBytes, extraBytes } = asked as { points: number; fileBytes: number; extraBytes: number };
+  const times = extraBytes / (points * DOUBLES_A_POINT * Float64Array.BYTES_PER_ELEMENT);
+  return {
+    name: `peak of extra memory, reading ${megabytes(fileBytes)}: ${megabytes(extraBytes)}`,
+    figure: `${times.toFixed(2)} series`,
+    target: "under 3 times its series",
+    reached: times < 3,
   };
-  const requirements = REQUIREMENTS;
+}
+
+function bounded(name: string, most: number, value: number): Row {
+  return { name, figure: milliseconds(value), target: `under ${most} ms`, reached: value < most };
+}
+
+function scoringRows(network: TwoPort): Row[] {
+  const make = () => fresh(network);
+  const plain = time(make, (input) => evaluate(input, REQUIREMENTS));
+  const withSetup = time(make, (input) => evaluate(input, REQUIREMENTS, { setup: SETUP }));
+  const context = { requirements: REQUIREMENTS, setup: SETUP };
   return [
-    bounded("score 12 requirements", 0.8, (input) => evaluate(input, requirements)),
-    bounded("score 12 requirements, setup", 1.5, (input) => evaluate(input, requirements, { setup: SETUP })),
-    { name: "checkNetwork", milliseconds: time(make, (input) => checkNetwork(input, { requirements, setup: SETUP })) },
-    { name: "renormalise to 75 ohm", milliseconds: time(make, (input) => renormalise(input, [75, 75])) },
+    bounded("score 12 requirements, 10,001 points", 0.8, plain),
+    bounded("the same with a setup's uncertainty", 1.5, withSetup),
+    {
+      name: "checks of the data, 10,001 points",
+      figure: milliseconds(time(make, (input) => checkNetwork(input, context))),
+    },
+    {
+      name: "renormalise to 75 Ω, 10,001 points",
+      figure: milliseconds(time(make, (input) => renormalise(input, [75, 75]))),
+    },
   ];
 }
 
-console.log(`${POINTS} points; medians of ${RUNS} runs after ${WARM_UPS}, milliseconds`);
-for (const { name, milliseconds, target, reached } of [...readingRows(), ...scoringRows()]) {
-  const verdict = target === undefined ? "" : `  ${target}: ${reached ? "reached" : "not reached"}`;
-  console.log(`${name.padEnd(42)}${milliseconds.toFixed(3).padStart(10)}${verdict}`);
+/** Scoring finer sweeps over the same range: the cost a point is to stay what it is. */
+function growthRows(network: TwoPort): Row[] {
+  return [10, 100].map((steps) => {
+    const fine = refined(network, steps);
+    const taken = time(
+      () => fresh(fine),
+      (input) => evaluate(input, REQUIREMENTS, { setup: SETUP }),
+      FEW_WARM_UPS,
+    );
+    const points = fine.frequency.length;
+    const nanoseconds = (taken * 1e6) / points;
+    return {
+      name: `score with a setup, ${points.toLocaleString("en-GB")} points: ${nanoseconds.toFixed(0)} ns a point`,
+      figure: milliseconds(taken),
+    };
+  });
 }
+
+/** Limits move, the curves stay: what a page does while a limit is dragged. */
+function frameRow(network: TwoPort): Row {
+  const traces = Array.from({ length: TRACES }, () => prepare(fresh(network)));
+  let frame = 0;
+  const rescore = () => {
+    frame += 1;
+    const requirements = movedRequirements(0.01 * (frame % 100));
+    for (const trace of traces) evaluate(trace, requirements, { setup: SETUP });
+  };
+  return bounded(
+    `rescore ${TRACES} prepared traces, 12 moved limits each`,
+    FRAME_MS,
+    time(() => undefined, rescore),
+  );
+}
+
+const cold = coldRow();
+const network = parseTouchstone(readFileSync(SCORED_FILE));
+const rows: Row[] = [
+  ...readingRows(POINTS, [7, 10], WARM_UPS),
+  cold,
+  ...readingRows(MANY_POINTS, [7, 12], FEW_WARM_UPS),
+  memoryRow(),
+  ...scoringRows(network),
+  ...growthRows(network),
+  frameRow(network),
+];
+const processor = cpus()[0]?.model.trim() ?? "unknown processor";
+const heading = `Medians of ${RUNS} runs after ${WARM_UPS} (${FEW_WARM_UPS} from 100,001 points on), Node ${process.versions.node}, ${processor}.`;
+console.log(heading);
+print(rows);
+writeTable("README.md", heading, rows);
