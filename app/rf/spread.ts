@@ -132,11 +132,15 @@ class EdgeReader {
     this.above = Math.max(0, segments[0]?.first ?? 0);
   }
 
-  at(hz: number): number {
+  /** A start and its window add up to the band's end but for a rounding: what lies that near to a segment lies in it. */
+  at(edge: number): number {
     const { frequency, values, segments } = this;
-    while (this.segment < segments.length - 1 && hz > (segments[this.segment]?.to ?? Infinity)) this.segment += 1;
+    while (this.segment < segments.length - 1 && isBelow(segments[this.segment]?.to ?? Infinity, edge)) {
+      this.segment += 1;
+    }
     const part = segments[this.segment];
-    if (part === undefined || hz < part.from || hz > part.to) return NaN;
+    if (part === undefined || isBelow(edge, part.from) || isBelow(part.to, edge)) return NaN;
+    const hz = Math.min(Math.max(edge, part.from), part.to);
     let { above } = this;
     while (above < frequency.length && (frequency[above] as number) < hz) above += 1;
     this.above = above;

@@ -241,6 +241,8 @@ async function checkCorner(world: JourneyWorld): Promise<void> {
   await figure.getByText("1.9800 GHz").filter({ visible: true }).first().waitFor({ timeout: 30_000 });
   await page.waitForLoadState("networkidle");
   await world.pictures(ENGINEER, "lot-results");
+  const clip = { x: 0, y: 0, width: 1440, height: 1540 };
+  await page.screenshot({ path: path.join("tests", "output", "journeys", "lot.png"), fullPage: true, clip });
 }
 
 async function checkHole(world: JourneyWorld): Promise<void> {

@@ -75,6 +75,21 @@ test("the widest window visited is the widest of all, with holes wherever they l
   expect(compared).toBeGreaterThan(5_000);
 });
 
+test("a window that ends with the band reads its end, though start and width add up to a rounding more", () => {
+  const frequency = Float64Array.of(1001, 1140, 1158, 1162, 1239);
+  const values = Float64Array.of(NaN, 0, 1, NaN, NaN);
+  const band: Band = [1001, 1001 + 238 * 0.645];
+  const window = (band[1] - band[0]) * 0.453;
+  expect(band[1] - window + window).toBeGreaterThan(band[1]);
+  let widest = -Infinity;
+  const readings = readingsOf(frequency, values, (value) => [value, value], true);
+  forEachWindow(readings, segmentsWithin(frequency, values, band), band, window, (extent) => {
+    widest = Math.max(widest, spreadOf(extent));
+  });
+  // By hand: (1154.51 - 1140) / 18 of the way from 0 to 1 dB.
+  expect(widest).toBeCloseTo((band[1] - 1140) / 18, 9);
+});
+
 test("a window behind a long hole is visited, though the band begins many samples before it", () => {
   const frequency = Float64Array.from({ length: 40 }, (_, k) => 1000 + k);
   const values = Float64Array.from({ length: 40 }, (_, k) => (k < 38 ? NaN : k - 37));
