@@ -22,6 +22,7 @@ const NO_PAGES = ["/health", "/theme", "/sign-out"];
 /** What a page shows only when it is asked for. */
 const FURTHER: Readonly<Record<string, readonly string[]>> = {
   "/rfqs/:rfqId": ["?step=close"],
+  "/quotes/:quoteId/curves": ["?view=margin", "?view=smith", "?view=delay", "?view=impedance&values=1"],
   "/supplier/quotes/:quoteId": ["?check=1"],
   "/supplier/quotes/:quoteId/terms": ["?check=1"],
   "/supplier/quotes/:quoteId/declarations": ["?check=1"],
