@@ -16,7 +16,8 @@ interface Totals {
 const OUTPUT = path.join("tests", "output");
 const VITEST_REPORT = path.join(OUTPUT, "vitest.json");
 const JOURNEYS = path.join("tests", "browser", "run.ts");
-const ALL_WITHIN_MS = 15 * 60_000;
+/** A guard, not the aim: a shared machine may be three times as slow as a quiet one. */
+const ALL_WITHIN_MS = 30 * 60_000;
 const STOP_WITHIN_MS = 10_000;
 
 const environment = plainEnvironment();
@@ -116,7 +117,7 @@ if (!taken.ok) {
   process.exit(1);
 }
 for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"] as const) process.on(signal, () => endEarly(`ended by ${signal}`));
-setTimeout(() => endEarly("the tests took longer than 15 minutes"), ALL_WITHIN_MS).unref();
+setTimeout(() => endEarly("the tests took longer than 30 minutes"), ALL_WITHIN_MS).unref();
 await runAll();
 await taken.lock.release();
 console.log(`\n${times.join(", ")}`);

@@ -13,7 +13,7 @@ import { print, writeTable, type Row } from "./table";
 const POINTS = 10_001;
 const MANY_POINTS = 100_001;
 const WARM_UPS = 100;
-/** For what takes ten times as long: the code is warm from the small ones. */
+/** For what takes long and is warm soon: the plain split, and scoring of what the small sweeps have warmed. */
 const FEW_WARM_UPS = 10;
 const RUNS = 9;
 /** Not the first python3 of the PATH: that one may have no scikit-rf. */
@@ -60,9 +60,9 @@ function timeScikitRf(bytes: Uint8Array): number {
 }
 
 /** @param times how many times as long a plain split and scikit-rf are to take */
-function readingRows(points: number, times: readonly [split: number, scikitRf: number], warmUps: number): Row[] {
+function readingRows(points: number, times: readonly [split: number, scikitRf: number]): Row[] {
   const bytes = writeSample(points);
-  const read = time(() => bytes, parseTouchstone, warmUps);
+  const read = time(() => bytes, parseTouchstone);
   const against = (name: string, other: number, least: number): Row => ({
     name: `the same by ${name}, ${milliseconds(other)}`,
     figure: `${(other / read).toFixed(1)} times`,
@@ -73,7 +73,7 @@ function readingRows(points: number, times: readonly [split: number, scikitRf: n
     { name: `read ${points.toLocaleString("en-GB")} points, ${megabytes(bytes.length)}`, figure: milliseconds(read) },
     against(
       "split and Number",
-      time(() => bytes, splitOnly, Math.min(warmUps, FEW_WARM_UPS)),
+      time(() => bytes, splitOnly, FEW_WARM_UPS),
       times[0],
     ),
     against("scikit-rf", timeScikitRf(bytes), times[1]),
@@ -169,16 +169,16 @@ function frameRow(network: TwoPort): Row {
 const cold = coldRow();
 const network = parseTouchstone(readFileSync(SCORED_FILE));
 const rows: Row[] = [
-  ...readingRows(POINTS, [7, 10], WARM_UPS),
+  ...readingRows(POINTS, [7, 10]),
   cold,
-  ...readingRows(MANY_POINTS, [7, 12], FEW_WARM_UPS),
+  ...readingRows(MANY_POINTS, [7, 12]),
   memoryRow(),
   ...scoringRows(network),
   ...growthRows(network),
   frameRow(network),
 ];
 const processor = cpus()[0]?.model.trim() ?? "unknown processor";
-const heading = `Medians of ${RUNS} runs after ${WARM_UPS} (${FEW_WARM_UPS} from 100,001 points on), Node ${process.versions.node}, ${processor}.`;
+const heading = `Medians of ${RUNS} runs after ${WARM_UPS} (${FEW_WARM_UPS} of the plain split and of the sweeps finer than 10,001 points), Node ${process.versions.node}, ${processor}.`;
 console.log(heading);
 print(rows);
 writeTable("README.md", heading, rows);
