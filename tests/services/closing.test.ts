@@ -6,7 +6,7 @@ import { cancelRfq, closeDueRfqs, closeRfq } from "~/services/closing.server";
 import { readHistory } from "~/services/history.server";
 import { listRfqs } from "~/services/rfq-list.server";
 import { DEFAULT_RFQ_LIST } from "~/forms/rfq-list";
-import { readRfqOverview } from "~/services/rfqs.server";
+import { readRfqOverview } from "~/services/rfq-overview.server";
 import { buildInvitation, buildOrganisation, buildPerson, buildRfq } from "../support/factories";
 import { useDatabase } from "../support/database";
 

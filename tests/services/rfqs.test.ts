@@ -5,6 +5,7 @@ import { databaseNow } from "~/db/queries/clock";
 import { SYSTEM } from "~/db/scoping";
 import { parseRfqForm } from "~/forms/rfq";
 import { readRfqHead } from "~/services/rfq-head.server";
+import { readRfqOverview } from "~/services/rfq-overview.server";
 import { newIdempotencyKey } from "~/services/identifiers.server";
 import { addInvitations } from "~/services/invitations.server";
 import type { Person } from "~/services/person.server";
@@ -15,7 +16,6 @@ import {
   openRfq,
   proposeRfq,
   readRfqDraft,
-  readRfqOverview,
   type RfqFields,
 } from "~/services/rfqs.server";
 import { readSupplierInvitation } from "~/services/supplier-invitation.server";
