@@ -6,9 +6,10 @@ import { withAdvice } from "./assess-levels.ts";
 import { unreached, type Assessment, type Frame } from "./assessment.ts";
 import type { Band, Requirement, Series } from "./contract.ts";
 import type { Curves } from "./curves.ts";
-import { isHole, samplesAround, segmentsWithin, valueBetween } from "./coverage.ts";
+import { isHole, samplesAround, segmentsWithin } from "./coverage.ts";
+import { delayOverAperture } from "./delay-curve.ts";
 import { formatFigure } from "./describe.ts";
-import { bandOf, locate } from "./frequency.ts";
+import { bandOf } from "./frequency.ts";
 import { readingsOf, type Readings } from "./readings.ts";
 import { notMeasuredReason, type Sweeping } from "./sweeping.ts";
 
@@ -52,13 +53,28 @@ function delayReadings(
   const { frequency } = curves;
   const delay =
     line.aperture === undefined
-      ? { frequency, value: delayOfNeighbours(curves, band, line.maxStep) }
-      : delayOverAperture(frequency, curves.phase(), band, line.aperture, line.maxStep);
+      ? { frequency, delay: delayOfNeighbours(curves, band, line.maxStep) }
+      : apertureDelay({ frequency, phase: curves.phase() }, band, line.aperture, line.maxStep);
   return readingsOf(
     delay.frequency,
-    delay.value,
+    delay.delay,
     (value) => [value - uncertainty, value + uncertainty],
     uncertainty === 0,
+  );
+}
+
+function apertureDelay(
+  { frequency, phase }: { frequency: Series; phase: Series },
+  band: Band,
+  aperture: number,
+  maxStep: number | undefined,
+) {
+  return delayOverAperture(
+    frequency,
+    phase,
+    segmentsWithin(frequency, phase, bandOf(frequency), maxStep),
+    band,
+    aperture,
   );
 }
 
@@ -79,38 +95,4 @@ function delayOfNeighbours(curves: Curves, band: Band, maxStep = Infinity): Seri
     delay[index] = -turns / ((frequency[above] as number) - (frequency[below] as number));
   }
   return delay;
-}
-
-/** Delay over a fixed aperture, phase linear between samples, at the samples and at the edges of the band. */
-function delayOverAperture(
-  frequency: Series,
-  phase: Series,
-  band: Band,
-  aperture: number,
-  maxStep: number | undefined,
-): { readonly frequency: Series; readonly value: Series } {
-  const runs = segmentsWithin(frequency, phase, bandOf(frequency), maxStep);
-  const edges = band.filter((hz, index) => band.indexOf(hz) === index && !locate(frequency, hz).exact);
-  const grid = Float64Array.from([...frequency, ...edges]).sort();
-  const value = new Float64Array(grid.length).fill(NaN);
-  let run = 0;
-  grid.forEach((hz, index) => {
-    while (run < runs.length - 1 && hz > (runs[run]?.to ?? Infinity)) run += 1;
-    const { from, to } = runs[run] ?? { from: Infinity, to: -Infinity };
-    const low = hz - aperture / 2;
-    const high = hz + aperture / 2;
-    if (low < from * (1 - RELATIVE_TOLERANCE) || high > to * (1 + RELATIVE_TOLERANCE)) return;
-    const turns =
-      (phaseAt(frequency, phase, Math.min(high, to)) - phaseAt(frequency, phase, Math.max(low, from))) /
-      DEGREES_PER_TURN;
-    value[index] = -turns / aperture;
-  });
-  return { frequency: grid, value };
-}
-
-function phaseAt(frequency: Series, phase: Series, hz: number): number {
-  const { index, exact } = locate(frequency, hz);
-  if (frequency[index] === hz) return phase[index] as number;
-  const below = exact && (frequency[index] as number) < hz ? index : index - 1;
-  return valueBetween(frequency, phase, Math.min(Math.max(below, 0), frequency.length - 2), hz);
 }

@@ -38,7 +38,7 @@ export function delayCurve(curves: Curves, { aperture, maxStep, band }: DelayOpt
   const runs = segmentsWithin(frequency, phase, bandOf(frequency), maxStep);
   return aperture === undefined
     ? delayOfNeighbours(frequency, phase, runs)
-    : delayOverAperture(frequency, phase, runs, { aperture, band: band ?? bandOf(frequency) });
+    : withAperture(delayOverAperture(frequency, phase, runs, band ?? bandOf(frequency), aperture), aperture);
 }
 
 /** Least and largest aperture in use within a band, Hz; undefined where there is no delay. */
@@ -73,12 +73,29 @@ function delayOfNeighbours(frequency: Series, phase: Series, runs: readonly Segm
   return { frequency, delay, aperture };
 }
 
-function delayOverAperture(
+type DelayValues = Pick<DelayCurve, "frequency" | "delay">;
+
+const withAperture = ({ frequency, delay }: DelayValues, aperture: number): DelayCurve => ({
+  frequency,
+  delay,
+  aperture: delay.map((seconds) => (Number.isNaN(seconds) ? NaN : aperture)),
+});
+
+/**
+ * Delay over a fixed aperture, phase linear between samples, at the samples and at the edges of a band; s, NaN where the
+ * aperture reaches beyond its run.
+ *
+ * @param phase degree, unwrapped
+ * @param runs stretches without holes
+ * @param aperture Hz
+ */
+export function delayOverAperture(
   frequency: Series,
   phase: Series,
   runs: readonly Segment[],
-  { aperture, band }: { readonly aperture: number; readonly band: Band },
-): DelayCurve {
+  band: Band,
+  aperture: number,
+): DelayValues {
   const edges = band.filter((hz, index) => band.indexOf(hz) === index && !locate(frequency, hz).exact);
   const grid = Float64Array.from([...frequency, ...edges]).sort();
   const delay = new Float64Array(grid.length).fill(NaN);
@@ -92,7 +109,7 @@ function delayOverAperture(
     const difference = phaseAt(frequency, phase, Math.min(high, to)) - phaseAt(frequency, phase, Math.max(low, from));
     delay[index] = -difference / DEGREES_PER_TURN / aperture;
   });
-  return { frequency: grid, delay, aperture: delay.map((seconds) => (Number.isNaN(seconds) ? NaN : aperture)) };
+  return { frequency: grid, delay };
 }
 
 function phaseAt(frequency: Series, phase: Series, hz: number): number {
