@@ -38,3 +38,19 @@ export function fullCredit({ kind, limit }: CreditedLine): number {
 
 /** Margin in parts of full credit; not capped, so that margins beyond it still differ. */
 export const creditedMargin = (margin: number, line: CreditedLine): number => margin / fullCredit(line);
+
+/** The same, null where a limit of nothing earns no credit: there is no share of it. */
+export function creditedMarginOrNull(margin: number, line: CreditedLine): number | null {
+  try {
+    return creditedMargin(margin, line);
+  } catch (error) {
+    if (error instanceof RangeError) return null;
+    throw error;
+  }
+}
+
+/** Places lines of one verdict, least first: the credited margin, infinite where the margin is; +Infinity without one or without credit. */
+export function creditOrder(margin: number, line: CreditedLine): number {
+  if (!Number.isFinite(margin)) return margin === -Infinity ? -Infinity : Infinity;
+  return creditedMarginOrNull(margin, line) ?? Infinity;
+}

@@ -1,6 +1,7 @@
 // All lines of one checked file: value with its uncertainty, margin, place and verdict.
 import { complies } from "~/rf/verdict";
-import type { CheckedSweep, CheckFrame } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { CheckedSweep } from "~/workers/check-messages";
 import { lineFigures } from "./check-words";
 import { Cell, HeadCell, Row, RowHead, Table, TwoLines } from "./data-table";
 import { describeDefinition } from "./requirement-words";

@@ -2,12 +2,15 @@
 import { useId, useState, type ReactNode } from "react";
 import { Button } from "./button";
 import { CheckLines } from "./check-lines";
-import type { CheckedSweep, CheckFrame } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
+import { standingOfSweep } from "~/rf/score-sweep";
+import type { CheckedSweep } from "~/workers/check-messages";
 import { isPending, isSendable, type CheckItem } from "./check-queue";
 import { counted, lineFigures, sweepWords, temperatureWords, worstOf } from "./check-words";
+import { CoveredVerdict } from "./measurement-cells";
 import { TwoLines } from "./data-table";
 import { describeDefinition } from "./requirement-words";
-import { Verdict, VerdictMark, verdictColour } from "./verdict-mark";
+import { VerdictMark, verdictColour } from "./verdict-mark";
 
 interface CheckBarProps {
   items: readonly CheckItem[];
@@ -143,6 +146,7 @@ function CheckedRow({ item, checked, frame, onRemove }: CheckedRowProps) {
   const [isOpen, setIsOpen] = useState(false);
   const id = useId();
   const { name } = item;
+  const standing = standingOfSweep(checked.results);
   return (
     <>
       <div className={ROW}>
@@ -152,10 +156,10 @@ function CheckedRow({ item, checked, frame, onRemove }: CheckedRowProps) {
           <Notes checked={checked} />
         </div>
         <span className="justify-self-end max-tablet:self-start tablet:max-desktop:col-start-3 tablet:max-desktop:row-start-1 desktop:order-5 desktop:justify-self-start">
-          <Verdict verdict={checked.verdict} />
+          <CoveredVerdict verdict={standing.verdict} coverage={{ lines: standing.linesCovered, of: standing.lines }} />
         </span>
         <Labels checked={checked} />
-        <WorstLine checked={checked} frame={frame} />
+        <WorstLine checked={checked} frame={frame} verdict={standing.verdict} />
         <span className="-ml-2 flex items-center gap-1 max-desktop:col-span-full desktop:order-6 desktop:ml-0 desktop:justify-end">
           <Button
             type="button"
@@ -188,12 +192,19 @@ function Labels({ checked: { serial, temperature } }: { checked: CheckedSweep })
   );
 }
 
-function WorstLine({ checked, frame }: { checked: CheckedSweep; frame: CheckFrame }) {
+interface WorstLineProps {
+  checked: CheckedSweep;
+  frame: CheckFrame;
+  /** Of the file, for the colour. */
+  verdict: CheckedSweep["verdict"];
+}
+
+function WorstLine({ checked, frame, verdict }: WorstLineProps) {
   const worst = worstOf(checked, frame);
   if (!worst) return null;
   const { requirement, limit } = describeDefinition(worst.line.definition, frame.lowestTestFrequency);
   const { value, margin, place } = lineFigures(worst.line, worst.result);
-  const colour = checked.verdict === "pass" ? "" : `font-semibold ${verdictColour(checked.verdict)}`;
+  const colour = verdict === "pass" ? "" : `font-semibold ${verdictColour(verdict)}`;
   return (
     <>
       <TwoLineCell

@@ -1,6 +1,7 @@
 // Checked files together: line by line the verdict a quote of them would get, and what the lot leaves out.
 import { complies } from "~/rf/verdict";
-import type { CheckedLot, CheckFrame } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { CheckedLot } from "~/workers/check-messages";
 import type { CheckState } from "./check-queue";
 import { complianceWords, counted, leftOutWords, lotResultLines, setupWords, unitsWords } from "./check-words";
 import { QuoteResultTable } from "./quote-result-table";

@@ -1,5 +1,6 @@
 // Files checked on this machine before any is sent: one at a time in a worker that is ended when one takes too long, then all together.
-import type { CheckedLot, CheckedSweep, CheckFrame, CheckReply, CheckRequest } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { CheckedLot, CheckedSweep, CheckReply, CheckRequest } from "~/workers/check-messages";
 import { MOST_BYTES, TOO_LARGE } from "./upload-queue";
 
 export interface CheckItem {

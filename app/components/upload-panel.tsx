@@ -4,7 +4,7 @@ import { useEffect, useEffectEvent, useId, useRef, useState, useSyncExternalStor
 import { Button } from "./button";
 import { CheckBar, CheckedFiles, RefusedFiles } from "./check-list";
 import { CheckLot } from "./check-lot";
-import type { CheckFrame } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
 import { CheckQueue, isPending, startCheckWorker, type CheckState } from "./check-queue";
 import { counted } from "./check-words";
 import { PostForm } from "./form";

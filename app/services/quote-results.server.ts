@@ -19,8 +19,7 @@ import {
   type Setup,
   type SpecificationLine,
 } from "~/rf/index";
-import type { LotNote } from "~/rf/lot-notes";
-import { unitsCountedAs } from "~/rf/same-data";
+import { unitsAlike, type LotNote } from "~/rf/lot-notes";
 import { statedOf } from "~/rf/score-sweep";
 import type { Person } from "./person.server";
 import { lineVerdict, readScores, type QuoteScore } from "./quote-scores.server";
@@ -262,7 +261,7 @@ function quoteEvidenceOf(
   return {
     units: summary.units,
     temperatures: summary.temperatures,
-    grid: evidenceOf(asked, sweeps.map(deliveredSweep), sameUnits(summary.notes)),
+    grid: evidenceOf(asked, sweeps.map(deliveredSweep), unitsAlike(summary.notes)),
     assumed: [...new Set(assumed)],
   };
 }
@@ -276,7 +275,3 @@ export const deliveredSweep = ({ serial, temperature, frequencyFrom, frequencyTo
   points,
   steps,
 });
-
-/** Units that the lot's notes found to be another one by their data, each with the unit it counts as. */
-const sameUnits = (notes: readonly LotNote[]): Map<string, string> =>
-  unitsCountedAs(notes.flatMap(({ code, units }) => (code === "identical-data" && units ? [units] : [])));

@@ -1,5 +1,5 @@
 // The line a quote or a file stands worst on: by verdict, among equals by margin in parts of full credit.
-import { creditedMargin } from "~/commerce/full-credit";
+import { creditedMarginOrNull, creditOrder } from "~/commerce/full-credit";
 import { readNumber, verdictRank, type SpecificationLine, type StoredResult, type Verdict } from "~/rf/index";
 
 export interface LineStanding {
@@ -20,19 +20,14 @@ export function standingOf(line: SpecificationLine, verdict: Verdict, result: St
   const read = result === undefined ? NaN : readNumber(result.margin);
   const margin = finite(read);
   const limit = result === undefined ? null : finite(readNumber(result.limit));
-  const credited = margin === null ? null : creditOf(margin, line.definition.kind, limit);
-  const order = credited ?? (read === -Infinity ? -Infinity : Infinity);
-  return { lineKey: line.lineKey, verdict, margin, creditedMargin: credited, order };
-}
-
-/** A limit of nothing earns no credit: there is no share of it. */
-function creditOf(margin: number, kind: string, limit: number | null): number | null {
-  try {
-    return creditedMargin(margin, limit === null ? { kind } : { kind, limit });
-  } catch (error) {
-    if (error instanceof RangeError) return null;
-    throw error;
-  }
+  const credit = { kind: line.definition.kind, ...(limit === null ? {} : { limit }) };
+  return {
+    lineKey: line.lineKey,
+    verdict,
+    margin,
+    creditedMargin: margin === null ? null : creditedMarginOrNull(margin, credit),
+    order: creditOrder(read, credit),
+  };
 }
 
 /** The worst verdict; among equals the least credited margin, one without a margin last; undefined for no lines. */

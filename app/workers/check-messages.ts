@@ -1,26 +1,8 @@
 // What the upload panel and the worker that checks files say to each other: plain data, which can be posted.
-import type { Note, Setup, StoredCell, StoredResult, Verdict } from "~/rf/index";
-import type { SpecificationLine } from "~/rf/line-definition";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { Note, StoredCell, StoredResult, Verdict } from "~/rf/index";
 import type { LotNote } from "~/rf/lot-notes";
-import type { EvaluationFrame } from "~/rf/score-sweep";
-import type { StatedDrift } from "~/rf/stated-measurement";
 import type { TouchstoneErrorCode } from "~/rf/touchstone-error";
-
-/** What files are checked against, as `readCheckFrame` answers it. */
-export interface CheckFrame extends EvaluationFrame {
-  /** The measured lines in their order, `lineKey` being the requirement's id. */
-  readonly lines: readonly SpecificationLine[];
-  readonly assumedSetup: Setup;
-  /** As the quote's draft states it now; {} where it states nothing. */
-  readonly statedSetup: Setup;
-  readonly statedDrift: StatedDrift | null;
-  readonly basis: "measured" | "similar" | "simulated";
-  readonly decisionRule: "simple" | "guarded";
-  readonly unitsAsked: number;
-  readonly unitsOverRange: number;
-  /** Points of all files of a quote together. */
-  readonly mostPoints: number;
-}
 
 export type CheckRequest =
   | { readonly kind: "open"; readonly frame: CheckFrame }

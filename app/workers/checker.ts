@@ -1,6 +1,7 @@
 // Files checked against a specification: each by itself, and all together as a quote of them would score. Keeps their networks.
-import { creditedMargin } from "~/commerce/full-credit";
-import type { CheckedLot, CheckedSweep, CheckFrame, CheckRefusal } from "./check-messages";
+import { creditOrder } from "~/commerce/full-credit";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { CheckedLot, CheckedSweep, CheckRefusal } from "./check-messages";
 import {
   evaluateLot,
   parseTouchstone,
@@ -18,7 +19,7 @@ import {
 import { checkLot } from "~/rf/lot-notes";
 import { coversRange } from "~/rf/lot-temperature";
 import { identicalUnits } from "~/rf/same-data";
-import { lotOptionsOf, scoreSweep, setupInUse, sweepNotes } from "~/rf/score-sweep";
+import { lotOptionsOf, scoreSweep, setupInUse, standingOfSweep, sweepNotes } from "~/rf/score-sweep";
 import { readSweepLabels } from "~/rf/sweep-labels";
 import { refusalSentence } from "~/rf/touchstone-refusal";
 
@@ -55,7 +56,7 @@ export class Checker {
       notes: sweepNotes(network, this.#frame, setupInUse(statedSetup, assumedSetup)),
       results,
       verdict,
-      worstLineKey: worstLineOf(this.#frame, results),
+      worstLineKey: worstLineOf(this.#frame, standingOfSweep(results).results),
     };
     return { ok: true, checked };
   }
@@ -140,15 +141,7 @@ function worstLineOf({ lines }: CheckFrame, results: readonly StoredResult[]): s
   return worst?.id ?? null;
 }
 
-/** Least first; a line without a margin last. */
 function orderOf(result: StoredResult, kind: string): number {
-  const margin = readNumber(result.margin);
-  if (!Number.isFinite(margin)) return margin === -Infinity ? -Infinity : Infinity;
   const limit = readNumber(result.limit);
-  try {
-    return creditedMargin(margin, Number.isFinite(limit) ? { kind, limit } : { kind });
-  } catch (error) {
-    if (error instanceof RangeError) return Infinity; // a limit of nothing earns no credit
-    throw error;
-  }
+  return creditOrder(readNumber(result.margin), Number.isFinite(limit) ? { kind, limit } : { kind });
 }

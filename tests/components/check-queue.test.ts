@@ -1,6 +1,7 @@
 // Files checked one at a time in a worker that is ended when one takes too long, cancelled, removed, and handed over to be sent.
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
-import type { CheckedLot, CheckedSweep, CheckFrame, CheckReply, CheckRequest } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { CheckedLot, CheckedSweep, CheckReply, CheckRequest } from "~/workers/check-messages";
 import { CheckQueue } from "~/components/check-queue";
 
 beforeEach(() => void vi.useFakeTimers());

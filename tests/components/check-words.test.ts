@@ -1,6 +1,7 @@
 // Checked files in words: figures with their uncertainty, what the lot leaves out, what is asked and what is there.
 import { expect, test } from "vitest";
-import type { CheckedLot, CheckedSweep, CheckFrame } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
+import type { CheckedLot, CheckedSweep } from "~/workers/check-messages";
 import type { CheckItem } from "~/components/check-queue";
 import {
   complianceWords,

@@ -5,24 +5,14 @@ import { readNumber } from "~/rf/index";
 import { parseTouchstone } from "~/rf/touchstone";
 import { readCurvePlaces, readQuoteCurves, type QuoteCurves } from "~/services/quote-curves.server";
 import { readQuoteResults } from "~/services/quote-results.server";
-import { buildOrganisation, buildPerson, buildRfq } from "../support/factories";
-import { JOURNEY_LINES, JOURNEY_SETUP } from "../support/journey";
-import { buildSubmittedQuote, measureAndScore } from "../support/scored-quote";
+import { buildOrganisation, buildPerson } from "../support/factories";
+import { buildKestrelQuote } from "../support/scored-quote";
 import { useDatabase } from "../support/database";
 
 useDatabase();
 
 const UNIT = "KCF-0207";
 const PLACE = { unit: UNIT, temperature: 70 } as const;
-
-async function kestrel() {
-  const buyer = await buildOrganisation("buyer");
-  const engineer = await buildPerson(buyer);
-  const { rfq } = await buildRfq(engineer, { assumedSetup: JOURNEY_SETUP }, JOURNEY_LINES);
-  const submitted = await buildSubmittedQuote(rfq, JOURNEY_LINES, { name: "Kestrel Cavity Filters" });
-  await measureAndScore(submitted.quote, submitted.version, "kestrel-cavity-filters");
-  return { engineer, ...submitted };
-}
 
 function marginOf(curves: QuoteCurves | null) {
   if (curves?.view !== "margin" || !curves.margin) throw new Error("no margin");
@@ -33,7 +23,7 @@ test(
   "every drawn margin has the least margin, ends and frequency that were scored; other views answer for the measurement",
   { timeout: 90_000 },
   async () => {
-    const { engineer, quote, person } = await kestrel();
+    const { engineer, quote, person } = await buildKestrelQuote();
     const results = await readQuoteResults(engineer, quote.publicId);
     let drawn = 0;
     for (const { lineNumber, definition, cells } of results?.lines ?? []) {

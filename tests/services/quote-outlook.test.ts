@@ -19,24 +19,15 @@ import { readQuoteOutlook, type OutlookFigures } from "~/services/quote-outlook.
 import { rescoreVersion, scoreVersion } from "~/services/scoring.server";
 import { buildOrganisation, buildPerson, buildRfq } from "../support/factories";
 import { useDatabase } from "../support/database";
-import { expectedSupplier, JOURNEY_LINES, JOURNEY_SETUP, journeyKey } from "../support/journey";
+import { expectedSupplier, JOURNEY_LINES, journeyKey } from "../support/journey";
 import { runPython } from "../support/python";
 import { moveToRevision } from "../support/rescoring";
-import { buildSubmittedQuote, measureAndScore } from "../support/scored-quote";
+import { buildKestrelQuote, buildSubmittedQuote } from "../support/scored-quote";
 
 useDatabase();
 
 const FOLDER = "db/seeds/demo-data/kestrel-cavity-filters";
 const UNITS = ["KCF-0205", "KCF-0206", "KCF-0207"];
-
-async function kestrel() {
-  const buyer = await buildOrganisation("buyer");
-  const engineer = await buildPerson(buyer);
-  const { rfq } = await buildRfq(engineer, { assumedSetup: JOURNEY_SETUP }, JOURNEY_LINES);
-  const submitted = await buildSubmittedQuote(rfq, JOURNEY_LINES, { name: "Kestrel Cavity Filters" });
-  await measureAndScore(submitted.quote, submitted.version, "kestrel-cavity-filters");
-  return { engineer, rfq, ...submitted };
-}
 
 const read = async (person: Person, quotePublicId: string, search = ""): Promise<OutlookFigures> => {
   const found = await readQuoteOutlook(person, quotePublicId, readOutlookQuery(new URLSearchParams(search)));
@@ -59,7 +50,7 @@ test(
   "shares are scipy's for the stored margins, matching is numpy's and scikit-rf's for the files, the drift is the one they were made with",
   { timeout: 120_000 },
   async () => {
-    const { engineer, quote, person } = await kestrel();
+    const { engineer, quote, person } = await buildKestrelQuote();
     const outlook = await read(engineer, quote.publicId);
 
     // Production: ten measured lines at three temperatures, three units each.
@@ -138,7 +129,7 @@ test(
   "a unit's data under a second serial, in a file that differs by a comment, counts once and is named",
   { timeout: 60_000 },
   async () => {
-    const { engineer, quote, version } = await kestrel();
+    const { engineer, quote, version } = await buildKestrelQuote();
     const before = await read(engineer, quote.publicId);
     await addCopy(version, "KCF-0206_+25C.s2p", "KCF-0299", "25.0");
     await scoreVersion(version.id);
@@ -153,7 +144,7 @@ test(
   "a unit that holds another one's data in one of its sweeps alone counts as that one, though their figures differ",
   { timeout: 60_000 },
   async () => {
-    const { engineer, quote, version } = await kestrel();
+    const { engineer, quote, version } = await buildKestrelQuote();
     // Unit KCF-0299: a sweep of its own, which decides its figures, and one that is another unit's.
     await addCopy(version, "HR2-0411_25C.s2p", "KCF-0299", "25.0", "db/seeds/demo-data/halden-resonator-works");
     await addCopy(version, "KCF-0206_+25C.s2p", "KCF-0299", "25.0");
@@ -168,7 +159,7 @@ test(
   "after an amendment the outlook speaks of the revision that its figures were scored against",
   { timeout: 60_000 },
   async () => {
-    const { engineer, quote, version, rfq } = await kestrel();
+    const { engineer, quote, version, rfq } = await buildKestrelQuote();
     const amended = JOURNEY_LINES.map((line) => ({ ...line, lineNumber: `9${line.lineNumber}` }));
     const revisionId = await moveToRevision(rfq, "B", amended);
     await SpecificationRevision.update({ temperatureFrom: -31 }, { where: { id: revisionId }, actor: SYSTEM });
@@ -226,7 +217,7 @@ test(
   "predicted cells are shown as predicted and are no sample; data of a similar part has no production outlook",
   { timeout: 60_000 },
   async () => {
-    const { engineer, quote, version } = await kestrel();
+    const { engineer, quote, version } = await buildKestrelQuote();
     const row = await QuoteLineResult.findOne({
       where: { versionId: version.id, lineKey: journeyKey("2.1") },
       actor: SYSTEM,

@@ -10,25 +10,16 @@ import { readQuoteFiles, readQuoteTerms } from "~/services/quote-terms-view.serv
 import { readQuoteTraces } from "~/services/quote-traces.server";
 import { buildOrganisation, buildPerson, buildRfq } from "../support/factories";
 import { expectedSupplier, JOURNEY_LINES, JOURNEY_SETUP, journeyKey } from "../support/journey";
-import { buildSubmittedQuote, measureAndScore, storeScore } from "../support/scored-quote";
+import { buildKestrelQuote, buildSubmittedQuote, storeScore } from "../support/scored-quote";
 import { useDatabase } from "../support/database";
 
 useDatabase();
-
-async function kestrel() {
-  const buyer = await buildOrganisation("buyer");
-  const engineer = await buildPerson(buyer);
-  const { rfq } = await buildRfq(engineer, { assumedSetup: JOURNEY_SETUP }, JOURNEY_LINES);
-  const submitted = await buildSubmittedQuote(rfq, JOURNEY_LINES, { name: "Kestrel Cavity Filters" });
-  await measureAndScore(submitted.quote, submitted.version, "kestrel-cavity-filters");
-  return { engineer, rfq, ...submitted };
-}
 
 test(
   "the matrix of a measured quote has every line's worst value, place, margin and verdict of the independent figures",
   { timeout: 60_000 },
   async () => {
-    const { engineer, quote, person } = await kestrel();
+    const { engineer, quote, person } = await buildKestrelQuote();
     const results = await readQuoteResults(engineer, quote.publicId);
     const expected = expectedSupplier("Kestrel Cavity Filters");
     expect(results?.head).toMatchObject({ supplierName: "Kestrel Cavity Filters", verdict: "fail", conforming: false });

@@ -26,7 +26,8 @@ import {
 import { packChunks, storeChunks } from "~/services/file-bytes.server";
 import { newPublicId, sha256 } from "~/services/identifiers.server";
 import { scoreVersion } from "~/services/scoring.server";
-import { buildInvitation, buildOrganisation, buildPerson, buildQuote } from "./factories";
+import { buildInvitation, buildOrganisation, buildPerson, buildQuote, buildRfq } from "./factories";
+import { JOURNEY_LINES, JOURNEY_SETUP } from "./journey";
 
 const at = new Date("2026-11-10T09:00:00.000Z");
 
@@ -204,4 +205,14 @@ export async function measureAndScore(quote: Quote, version: QuoteVersion, folde
     await VersionMeasurement.create({ ...tenants, versionId: version.id, measurementId: measurement.id });
   }
   await scoreVersion(version.id);
+}
+
+/** Kestrel's nine files of the demo, submitted and scored on the scenario's specification. */
+export async function buildKestrelQuote() {
+  const buyer = await buildOrganisation("buyer");
+  const engineer = await buildPerson(buyer);
+  const { rfq } = await buildRfq(engineer, { assumedSetup: JOURNEY_SETUP }, JOURNEY_LINES);
+  const submitted = await buildSubmittedQuote(rfq, JOURNEY_LINES, { name: "Kestrel Cavity Filters" });
+  await measureAndScore(submitted.quote, submitted.version, "kestrel-cavity-filters");
+  return { engineer, rfq, ...submitted };
 }

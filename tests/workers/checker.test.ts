@@ -1,7 +1,7 @@
 // Files checked in the supplier's browser: the same figures, words and worst line as the server's, by itself and as a lot.
 import { readFileSync } from "node:fs";
 import { expect, test } from "vitest";
-import type { CheckFrame } from "~/workers/check-messages";
+import type { CheckFrame } from "~/rf/check-frame";
 import { measuredRequirements, readNumber, type StoredResult, type Verdict } from "~/rf/index";
 import { isMeasured } from "~/rf/line-definition";
 import { standingOf, worstStanding } from "~/services/worst-line.server";
