@@ -52,7 +52,9 @@ async function furtherShots(world: JourneyWorld): Promise<Shot[]> {
     return rows[0]?.id ?? "";
   });
   const of = (visitor: Visitor, address: string, name: string): Shot => ({ visitor, address, name });
+  const { specification } = await demoIds(world);
   return [
+    of("engineer", `/rfqs/new?specification=${specification}`, "rfq-form"),
     of("engineer", `/specifications/${draft}`, "specification-draft"),
     of("engineer", `/specifications/${draft}/edit`, "specification-draft-edit"),
     of("engineer", `/rfqs/${rfq}`, "rfq-open"),
