@@ -62,7 +62,10 @@ export function SpecificationEditor(props: SpecificationEditorProps) {
       )}
       <BlockFields values={values} set={set} />
       <div className="grid grid-cols-1 gap-x-8 desktop:grid-cols-[minmax(0,1fr)_minmax(400px,0.72fr)]">
-        <Section title="Requirements" note="Bare figures are MHz, dB and, of delays, ns. 1.92G, DC, 1.5:1 and ±0.25 dB are read too.">
+        <Section
+          title="Requirements"
+          note="Bare figures are MHz, dB and, of delays, ns. 1.92G, DC, 1.5:1 and ±0.25 dB are read too."
+        >
           <LineHeads />
           {rows.map((row) => (
             <LineFields
